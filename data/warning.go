@@ -1,0 +1,81 @@
+package data
+
+// Code names a kind of warning; [WarningCodes] says what each means.
+type Code string
+
+// Warning is doubt that travels with a result until a screen or a note shows
+// it. Every warning says what would cure it.
+type Warning struct {
+	Code    Code
+	Channel Text   // the channel it speaks of; empty where it is none in particular
+	Text    string // what is the matter, with the number that shows it
+	Cure    string // what to do about it
+}
+
+// The codes of warnings.
+const (
+	CodeMissing       Code = "missing-samples"
+	CodeHole          Code = "hole"
+	CodeRepeatedTimes Code = "repeated-times"
+	CodeUnevenClock   Code = "uneven-clock"
+	CodeNoUnit        Code = "no-unit"
+	CodeUncalibrated  Code = "uncalibrated"
+	CodeUnlikely      Code = "unlikely-value"
+	CodeGuessedRole   Code = "guessed-role"
+	CodeStandIn       Code = "stand-in-pressure"
+	CodeRegional      Code = "regional"
+	CodeSiteUnknown   Code = "site-unknown"
+	CodePerArea       Code = "per-unit-area"
+	CodeProfile       Code = "profile-assumed"
+	CodeSteepAngle    Code = "steep-angle"
+	CodeManyRejected  Code = "many-rejected"
+	CodeIrregular     Code = "irregular-rhythm"
+	CodeFewBeats      Code = "few-beats"
+	CodeOpenBeat      Code = "beat-not-closed"
+	CodeDelay         Code = "delay-unknown"
+	CodeOutflow       Code = "outflow-pressure-assumed"
+	CodeNotIdentified Code = "not-identified"
+	CodeMisfit        Code = "misfit"
+	CodeNotConverged  Code = "not-converged"
+	CodeBalance       Code = "balance"
+	CodeNegativeFlow  Code = "reversed-flow"
+	CodeNoSupport     Code = "no-comparison"
+)
+
+// WarningCode is a row of the table that `afterbeat help warnings` prints.
+type WarningCode struct {
+	Code    Code
+	Meaning string
+}
+
+// WarningCodes is the table of all codes, in the order of the work.
+func WarningCodes() []WarningCode {
+	return []WarningCode{
+		{CodeMissing, "samples of a channel have no value"},
+		{CodeHole, "the clock jumps over a stretch of time"},
+		{CodeRepeatedTimes, "rows carry the same time as the row before"},
+		{CodeUnevenClock, "steps of the clock differ; values were resampled to an even one"},
+		{CodeNoUnit, "the header names no unit that fits the quantity"},
+		{CodeUncalibrated, "the channel is in a unit that is none of its quantity, such as volts"},
+		{CodeUnlikely, "values lie outside what the quantity has in people"},
+		{CodeGuessedRole, "a channel was chosen from its name"},
+		{CodeStandIn, "pressure of a limb, or of an unnamed artery, stands in for the root's"},
+		{CodeRegional, "the fit is the load of one vascular bed, not of the body"},
+		{CodeSiteUnknown, "where a channel was measured is not known"},
+		{CodePerArea, "velocity without a diameter: the fit is per unit area"},
+		{CodeProfile, "the ratio of mean to measured velocity is an assumption"},
+		{CodeSteepAngle, "the Doppler angle is above 60 degrees"},
+		{CodeManyRejected, "a large part of the beats was not used"},
+		{CodeIrregular, "the intervals between beats vary"},
+		{CodeFewBeats, "few beats carry the average and its intervals"},
+		{CodeOpenBeat, "the average beat does not end where it began"},
+		{CodeDelay, "the delay between pressure and flow was not measured"},
+		{CodeOutflow, "the outflow pressure is an assumption"},
+		{CodeNotIdentified, "the data do not determine a parameter"},
+		{CodeMisfit, "the model leaves a residual that is large beside the pulse"},
+		{CodeNotConverged, "the search for the best fit gave up"},
+		{CodeBalance, "the balance of power does not close"},
+		{CodeNegativeFlow, "mean flow is not positive; the channel may be inverted"},
+		{CodeNoSupport, "native and supported state could not be compared"},
+	}
+}
