@@ -1,0 +1,97 @@
+package support
+
+import (
+	"fmt"
+	"math"
+
+	"afterbeat/data"
+)
+
+// Posing names the rule by which the pump takes its share of the flow.
+type Posing string
+
+const (
+	// NativePosing is no posing: the flow as it was measured.
+	NativePosing Posing = "native"
+	// ScaledPosing is the native flow scaled down, on a steady one.
+	ScaledPosing Posing = "scaled"
+	// LateValvePosing is what the native flow has above a threshold, on a steady one.
+	LateValvePosing Posing = "late-valve"
+)
+
+// Posings lists the posings that take a share, in the order of help texts.
+func Posings() []Posing { return []Posing{ScaledPosing, LateValvePosing} }
+
+// ByConstruction tells whether the retained pulse follows from the posing alone,
+// on any linear load.
+func (p Posing) ByConstruction() bool { return p == ScaledPosing }
+
+// Scaled is (1-s) Q + s mean Q, mL/s, of a native flow q and a share s. It
+// panics where s is not in 0..1.
+func Scaled(q data.Period, share float64) data.Period {
+	mustBeShare(share)
+	root := data.Period{Samples: make([]float64, len(q.Samples)), Rate: q.Rate}
+	mean := q.Mean()
+	for j, x := range q.Samples {
+		root.Samples[j] = (1-share)*x + share*mean
+	}
+	return root
+}
+
+// LateValve is max(0, Q+ - q0) + (1-s) Q- + s mean Q, mL/s, of a native flow q
+// with a positive mean and a share s, and the threshold q0, mL/s. The mean of q
+// is kept to rounding. It panics where s is not in 0..1 or mean flow is not
+// positive.
+func LateValve(q data.Period, share float64) (root data.Period, threshold float64) {
+	mustBeShare(share)
+	var e ejection
+	e.of(q.Samples)
+	if !(e.mean > 0) {
+		panic(fmt.Sprintf("support: mean flow %v is not positive", e.mean))
+	}
+	root = data.Period{Samples: make([]float64, len(q.Samples)), Rate: q.Rate}
+	threshold = e.threshold(share)
+	e.root(root.Samples, share, threshold)
+	return root, threshold
+}
+
+// posed is the flow into the arteries under a posing.
+func posed(q data.Period, posing Posing, share float64) (root data.Period, threshold float64) {
+	switch posing {
+	case NativePosing:
+		return q, 0
+	case ScaledPosing:
+		return Scaled(q, share), 0
+	case LateValvePosing:
+		return LateValve(q, share)
+	}
+	panic("support: no posing " + string(posing))
+}
+
+func isShare(s float64) bool { return s >= 0 && s <= 1 }
+
+func mustBeShare(s float64) {
+	if !isShare(s) {
+		panic(fmt.Sprintf("support: share %v is not in 0..1", s))
+	}
+}
+
+// check tells why a flow cannot be posed about: an error for a person to read.
+func check(q data.Period, posing Posing, shares []float64) error {
+	if posing != ScaledPosing && posing != LateValvePosing {
+		return fmt.Errorf("no posing %q with a share: known are %v", posing, Posings())
+	}
+	for _, s := range shares {
+		if !isShare(s) {
+			return fmt.Errorf("share %v of the pump is not between 0 and 1", s)
+		}
+	}
+	mean := q.Mean()
+	switch {
+	case math.IsNaN(mean) || math.IsInf(mean, 0):
+		return fmt.Errorf("flow has samples without a value: nothing to compare")
+	case mean <= 0:
+		return fmt.Errorf("mean flow %.4g is not positive: a share of it means nothing; the channel may be inverted", mean)
+	}
+	return nil
+}
