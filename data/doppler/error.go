@@ -28,13 +28,13 @@ func (c Conversion) RelativeError(e Errors) float64 {
 }
 
 // AngleError is the exact relative error of the flow if the angle is too large
-// by error degrees: cos(angle)/cos(angle+error) - 1. It is +Inf where the wrong
+// by excess degrees: cos(angle)/cos(angle+excess) - 1. It is +Inf where the wrong
 // angle reaches 90 degrees.
-func AngleError(angle, error float64) float64 {
-	if angle+error >= 90 {
+func AngleError(angle, excess float64) float64 {
+	if angle+excess >= 90 {
 		return math.Inf(1)
 	}
-	return math.Cos(radians(angle))/math.Cos(radians(angle+error)) - 1
+	return math.Cos(radians(angle))/math.Cos(radians(angle+excess)) - 1
 }
 
 func radians(degrees float64) float64 { return degrees * math.Pi / 180 }
