@@ -30,18 +30,31 @@ func PercentPulsatility(p, q data.Period) float64 {
 }
 
 // surplus is EEP - mean P = mean((P - mean P)(Q - mean Q))/mean Q, mmHg. Written
-// so, no digits are lost where little of the pulse is left.
+// so, no digits are lost where little of the pulse is left, and steady signals
+// have none exactly.
 func surplus(p, q data.Period) float64 {
 	mustMatch(p, q)
-	meanP, meanQ := p.Mean(), q.Mean()
+	meanQ := q.Mean()
 	if !(meanQ > 0) {
 		return math.NaN()
 	}
+	p, q = pulse(p), pulse(q)
+	pulseP, pulseQ := p.Mean(), q.Mean()
 	sum := 0.0
 	for j := range p.Samples {
-		sum += (p.Samples[j] - meanP) * (q.Samples[j] - meanQ)
+		sum += (p.Samples[j] - pulseP) * (q.Samples[j] - pulseQ)
 	}
 	return sum / float64(len(p.Samples)) / meanQ
+}
+
+// pulse is p less its first sample: the same harmonics on a smaller mean, and
+// exactly zero where p is steady.
+func pulse(p data.Period) data.Period {
+	d := data.Period{Samples: make([]float64, len(p.Samples)), Rate: p.Rate}
+	for j, x := range p.Samples {
+		d.Samples[j] = x - p.Samples[0]
+	}
+	return d
 }
 
 // mustMatch panics unless p and q are samples of the same instants.

@@ -44,10 +44,14 @@ func TestEquivalentPressureOfSines(t *testing.T) {
 	}
 }
 
-// A steady pressure or a steady flow carries no surplus, whatever the other does.
+// A steady pressure or a steady flow carries no surplus and no pulsatile power,
+// whatever the other does; and none means 0, not a rounding error.
 func TestSteadySignalsHaveNoSurplus(t *testing.T) {
-	near(t, "SHE of steady flow", SHE(sine(90, 93, 20, 0), sine(90, 90, 0, 0)), 0, 1e-9)
-	near(t, "SHE of steady pressure", SHE(sine(90, 93, 0, 0), sine(90, 90, 80, 0)), 0, 1e-9)
+	beating, steady := sine(90, 93, 20, 0), sine(90, 91.8751234567, 0, 0)
+	near(t, "SHE of steady flow", SHE(beating, steady), 0, 0)
+	near(t, "SHE of steady pressure", SHE(steady, beating), 0, 0)
+	near(t, "pulsatile power of steady flow", PowerOf(beating, steady).Pulsatile, 0, 0)
+	near(t, "pulsatile power of steady pressure", PowerOf(steady, beating).Pulsatile, 0, 0)
 }
 
 func TestNothingDeliveredHasNoEquivalentPressure(t *testing.T) {

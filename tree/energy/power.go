@@ -26,7 +26,7 @@ func PowerOf(p, q data.Period) Power {
 		w.Input += p.Samples[j] * q.Samples[j] / float64(n)
 	}
 	w.Steady = p.Mean() * q.Mean()
-	pk, qk := p.Spectrum(), q.Spectrum()
+	pk, qk := pulse(p).Spectrum(), pulse(q).Spectrum()
 	for k := 1; k < len(pk); k++ {
 		w.Pulsatile += data.Weight(k, n) * real(pk[k]*cmplx.Conj(qk[k]))
 	}
