@@ -12,10 +12,10 @@ import "math"
 // column only the sample furthest from the mean is left.) A column without
 // samples lies in a hole, or between two samples of a window that has fewer
 // samples than columns: it is interpolated linearly if at most gap samples are
-// missing there, else it is NaN. A hole that leaves samples in every column it
+// missing there (gap below 0 counts as 0), else it is NaN. A hole that leaves samples in every column it
 // touches cannot be seen.
 //
-// Samples that are not finite, and indices outside the trace, are missing. An
+// NaN, values beyond ±1e300 and indices outside the trace are missing. An
 // empty window gives NaN only, a width below 1 an empty result.
 func Columns(trace []float64, from, to, width, gap int) []float64 {
 	out := make([]float64, max(width, 0))
@@ -30,7 +30,7 @@ func Columns(trace []float64, from, to, width, gap int) []float64 {
 		first, end := b.samples(c, len(trace))
 		out[c] = outlier(trace[first:end])
 	}
-	bridge(out, trace, b, gap)
+	bridge(out, trace, b, max(gap, 0))
 	first, end := b.window(len(trace))
 	if low, high, ok := extremes(trace[first:end]); ok && width > 1 {
 		pin(out, trace, b, first+low, first+high)
@@ -78,38 +78,37 @@ func (b bins) position(c int) float64 {
 	return float64(b.from) + float64(c)*float64(b.n-1)/float64(max(b.width-1, 1))
 }
 
-// finite says whether x is neither NaN nor infinite.
-func finite(x float64) bool { return x-x == 0 }
+// Beyond largest, the difference of two numbers could overflow.
+const largest = 1e300
 
-// outlier is the finite sample furthest from the mean of all of them, the first
+// present says whether x is a value, and one that can be drawn.
+func present(x float64) bool { return math.Abs(x) <= largest }
+
+// outlier is the sample furthest from the mean of all of them, the first
 // of equals; NaN where there is none.
 func outlier(s []float64) float64 {
-	mean, n := 0.0, 0
-	weight := 1 / float64(len(s)) // summing shares, not values: the sum cannot overflow
+	sum, n := 0.0, 0
 	for _, x := range s {
-		if finite(x) {
-			mean += x * weight
+		if present(x) {
+			sum += x
 			n++
 		}
 	}
-	if n == 0 {
-		return math.NaN()
-	}
-	mean *= float64(len(s)) / float64(n)
+	mean := sum / float64(n)
 	far, best := math.NaN(), -1.0
 	for _, x := range s {
-		if d := math.Abs(x - mean); finite(x) && d > best {
+		if d := math.Abs(x - mean); present(x) && d > best {
 			far, best = x, d
 		}
 	}
 	return far
 }
 
-// extremes finds the first smallest and the first largest finite sample.
+// extremes finds the first smallest and the first largest sample.
 func extremes(s []float64) (low, high int, ok bool) {
 	low, high = -1, -1
 	for i, x := range s {
-		if !finite(x) {
+		if !present(x) {
 			continue
 		}
 		if low < 0 || x < s[low] {
@@ -136,7 +135,7 @@ func bridge(out, trace []float64, b bins, gap int) {
 		if c > 0 && end < len(out) {
 			left := lastBefore(trace, b, c)
 			right := firstFrom(trace, b, end)
-			if right-left-1 <= gap || right-left == 1 {
+			if right-left-1 <= gap {
 				for k := c; k < end; k++ {
 					out[k] = between(trace, left, right, b.position(k))
 				}
@@ -146,19 +145,19 @@ func bridge(out, trace []float64, b bins, gap int) {
 	}
 }
 
-// lastBefore is the last finite sample left of column c, whose left neighbour
+// lastBefore is the last sample left of column c, whose left neighbour
 // has one.
 func lastBefore(trace []float64, b bins, c int) int {
 	_, i := b.samples(c-1, len(trace))
-	for i--; !finite(trace[i]); i-- {
+	for i--; !present(trace[i]); i-- {
 	}
 	return i
 }
 
-// firstFrom is the first finite sample of column c, which has one.
+// firstFrom is the first sample of column c, which has one.
 func firstFrom(trace []float64, b bins, c int) int {
 	i, _ := b.samples(c, len(trace))
-	for ; !finite(trace[i]); i++ {
+	for ; !present(trace[i]); i++ {
 	}
 	return i
 }

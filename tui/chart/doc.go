@@ -29,9 +29,9 @@
 //
 // # Characters
 //
-// The first curve is a line, the second is made of *. Where two curves share a
-// cell, even columns show the later one and odd columns the earlier, so that a
-// model that lies on its data hides nothing. A ^ on the top line or a v on the
+// The first curve is a line, the second is made of *. Where two curves share
+// cells, four columns show the later one and four the earlier, in turns, so that
+// a model that lies on its data does not hide them. A ^ on the top line or a v on the
 // bottom line is a value beyond the bounds of y. Every drawing has exactly the
 // height asked for and at most the width; trailing spaces are not written.
 // All strings handed in are cleaned ([data.Clean]) before they are shown.
