@@ -1,0 +1,56 @@
+package casefile
+
+// Case is a recording with the choices made about it. Strings, lists and tables
+// that are empty and numbers that are nil were not chosen; numbers are finite.
+//
+// A field is a key of the file and a flag: key is its name in the file, value
+// what stands for it in help texts, an amount takes numbers and text alike.
+type Case struct {
+	Recording string `key:"recording" value:"FILE" help:"the recording, relative to the case file"`
+	Label     string `key:"label" value:"LABEL" help:"research label, such as pilot-07; never the name of a patient"`
+
+	Time     string `key:"time" value:"NAME" help:"column of the time"`
+	Pressure string `key:"pressure" value:"NAME" help:"column of the pressure"`
+	Flow     string `key:"flow" value:"NAME" help:"column of the flow"`
+	Velocity string `key:"velocity" value:"NAME" help:"column of the velocity"`
+
+	Site   map[string]string  `key:"site" value:"NAME=SITE" help:"where on the body a column was measured"`
+	Unit   map[string]string  `key:"unit" value:"NAME=UNIT" help:"unit of a column"`
+	Scale  map[string]float64 `key:"scale" value:"NAME=FACTOR" help:"factor on a column"`
+	Offset map[string]float64 `key:"offset" value:"NAME=VALUE" help:"added to a column after scaling, in its own unit"`
+	Invert []string           `key:"invert" value:"NAME" help:"change the sign of a column"`
+
+	Rate    *float64 `key:"rate" value:"HZ" help:"sampling rate, where there is no time column"`
+	From    *float64 `key:"from" value:"S" help:"begin of the span used, on the file's own clock"`
+	To      *float64 `key:"to" value:"S" help:"end of the span used, on the file's own clock"`
+	Exclude string   `key:"exclude" value:"FILE" help:"file of intervals to leave out, relative to the case file"`
+
+	DiameterCM *float64 `key:"diameter_cm" value:"D" help:"inner diameter where the velocity was measured"`
+	AngleDeg   *float64 `key:"angle_deg" value:"A" help:"Doppler angle that the velocity is not yet corrected for"`
+	Profile    string   `key:"profile" value:"FACTOR|womersley" amount:"true" help:"mean velocity over measured velocity"`
+
+	OutflowPressure *float64          `key:"outflow_pressure" value:"MMHG" help:"pressure that the outflow goes to"`
+	Delay           string            `key:"delay" value:"auto|S" amount:"true" help:"delay of the pressure against the flow"`
+	Error           map[string]string `key:"error" value:"WHAT=HALFWIDTH[%]" amount:"true" help:"95 % half-width of a systematic error"`
+
+	OneBeat    bool      `key:"one_beat" help:"the recording is exactly one period"`
+	Model      string    `key:"model" value:"NAME|all" help:"model to fit"`
+	Replicates *int      `key:"replicates" value:"N" help:"replicates of the uncertainty"`
+	Seed       *int      `key:"seed" value:"N" help:"seed of the replicates"`
+	Share      []float64 `key:"share" value:"0..1" help:"share of the flow that the pump takes"`
+
+	lines map[string]int
+}
+
+// Line is the line of the case file that sets key, such as "rate" or, for an
+// entry of a table, "site.abp"; 0 where none does, which [data.FileError] takes
+// for the whole file.
+func (c Case) Line(key string) int { return c.lines[key] }
+
+// Errors are the names that the table of systematic errors knows.
+func Errors() []string {
+	return []string{
+		"cardiac-output", "flow", "pressure-scale", "pressure-offset",
+		"diameter", "angle", "delay", "outflow-pressure", "filling-slope",
+	}
+}

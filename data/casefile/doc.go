@@ -1,0 +1,24 @@
+// Package casefile reads and writes a case: a recording with the choices made
+// about it, kept as NAME.afterbeat.toml, in TOML 1.0.
+//
+//	recording = "pilot-07.csv"
+//	label = "pilot-07"
+//	pressure = "abp_mmHg"
+//	flow = "q_mL_s"
+//	outflow_pressure = 5
+//
+//	[site]
+//	abp_mmHg = "root"
+//
+//	[error]
+//	flow = "10 %"
+//
+// A case holds choices, never results, and as plain strings and numbers: those
+// who use a choice check it, and [Case.Line] tells them which line to name.
+// What is checked here is what belongs to the file: that the keys exist, that
+// numbers are numbers, that the label is none of a patient.
+//
+// Every key of the file but recording is a flag of the command line too, with -
+// for _. One field of [Case] with its tags makes both: [Keys] lists them,
+// [Case.Set] takes a flag, [Case.Arguments] gives the flags back.
+package casefile
