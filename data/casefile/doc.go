@@ -16,7 +16,7 @@
 // A case holds choices, never results, and as plain strings and numbers: those
 // who use a choice check it, and [Case.Line] tells them which line to name.
 // What is checked here is what belongs to the file: that the keys exist, that
-// numbers are numbers, that the label is none of a patient.
+// numbers are numbers, that the label looks like one of research ([CheckLabel]).
 //
 // Every key of the file but recording is a flag of the command line too, with -
 // for _. One field of [Case] with its tags makes both: [Keys] lists them,

@@ -10,8 +10,10 @@
 // unit, its 95 % interval (or the reason why there is none) and one of the
 // words measured, estimated, assumed. A number that the data do not identify is
 // shown as its range only; one that does not exist is "undefined", with the
-// reason. Every warning is there, counted, with its cure. The text depends on
-// the [Note] alone: no date, no machine, no path.
+// reason. The cells of a table have their unit in the header, their total
+// interval in brackets, and their origin and reasons below the table; the
+// interval of random error stands in rows only. Every warning is there, counted,
+// with its cure. The text depends on the [Note] alone: no date, no machine.
 //
 // # Numbers
 //
