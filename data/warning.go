@@ -39,7 +39,9 @@ const (
 	CodeNotConverged  Code = "not-converged"
 	CodeBalance       Code = "balance"
 	CodeNegativeFlow  Code = "reversed-flow"
+	CodeNoFlow        Code = "no-flow"
 	CodeNoSupport     Code = "no-comparison"
+	CodeGivenRate     Code = "given-rate"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -55,6 +57,7 @@ func WarningCodes() []WarningCode {
 		{CodeHole, "the clock jumps over a stretch of time"},
 		{CodeRepeatedTimes, "rows carry the same time as the row before"},
 		{CodeUnevenClock, "steps of the clock differ; values were resampled to an even one"},
+		{CodeGivenRate, "a given rate rules over times in the file that say another"},
 		{CodeNoUnit, "the header names no unit that fits the quantity"},
 		{CodeUncalibrated, "the channel is in a unit that is none of its quantity, such as volts"},
 		{CodeUnlikely, "values lie outside what the quantity has in people"},
@@ -76,6 +79,7 @@ func WarningCodes() []WarningCode {
 		{CodeNotConverged, "the search for the best fit gave up"},
 		{CodeBalance, "the balance of power does not close"},
 		{CodeNegativeFlow, "mean flow is not positive; the channel may be inverted"},
+		{CodeNoFlow, "no flow was recorded: a fit is not possible"},
 		{CodeNoSupport, "native and supported state could not be compared"},
 	}
 }

@@ -9,7 +9,7 @@ import (
 
 // Factors are those of NIST SP 811, appendix B, and of the litre (1000 cm³).
 func TestParseSpellings(t *testing.T) {
-	const kPa = 7.50061682704170 // mmHg; 1/0.133322387415
+	const kPa = 7.50061575846 // mmHg; 1/0.133322387415
 	for _, c := range []struct {
 		spellings []string
 		quantity  Quantity
