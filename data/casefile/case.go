@@ -33,11 +33,16 @@ type Case struct {
 	Delay           string            `key:"delay" value:"auto|S" amount:"true" help:"delay of the pressure against the flow"`
 	Error           map[string]string `key:"error" value:"WHAT=HALFWIDTH[%]" amount:"true" help:"95 % half-width of a systematic error"`
 
+	Drop []float64 `key:"drop" value:"S" help:"a time inside a beat to leave out, on the file's own clock"`
+	Keep []float64 `key:"keep" value:"S" help:"a time inside a beat to use although a rule rejects it"`
+
 	OneBeat    bool      `key:"one_beat" help:"the recording is exactly one period"`
 	Model      string    `key:"model" value:"NAME|all" help:"model to fit"`
 	Replicates *int      `key:"replicates" value:"N" help:"replicates of the uncertainty"`
 	Seed       *int      `key:"seed" value:"N" help:"seed of the replicates"`
 	Share      []float64 `key:"share" value:"0..1" help:"share of the flow that the pump takes"`
+
+	Remark string `key:"remark" value:"TEXT" help:"a remark at the end of the note"`
 
 	lines map[string]int
 }

@@ -47,6 +47,9 @@ model = "wk3"
 replicates = 2000
 seed = -7
 share = [0, 0.25, 1.0]
+drop = [3.5]
+keep = [7, 8.25]
+remark = "worth a second look"
 
 error.flow = "10 %"
 error.cardiac-output = 0.5
@@ -77,6 +80,7 @@ func fullCase() Case {
 		OutflowPressure: ptr(0.0), Delay: "0.0125",
 		Error:   map[string]string{"flow": "10%", "cardiac-output": "0.5"},
 		OneBeat: true, Model: "wk3", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
+		Drop: []float64{3.5}, Keep: []float64{7, 8.25}, Remark: "worth a second look",
 	}
 }
 
@@ -97,8 +101,8 @@ func TestReadEveryKey(t *testing.T) {
 		}
 	}
 	for key, line := range map[string]int{
-		"recording": 2, "invert": 8, "rate": 10, "share": 23, "error.flow": 25, "error.cardiac-output": 26,
-		"site": 28, "site.abp": 29, "site.q.1": 30, "unit.na=me": 33, "offset.abp": 37, "site.other": 0, "": 0,
+		"recording": 2, "invert": 8, "rate": 10, "share": 23, "error.flow": 28, "error.cardiac-output": 29,
+		"site": 31, "site.abp": 32, "site.q.1": 33, "unit.na=me": 36, "offset.abp": 40, "site.other": 0, "": 0,
 	} {
 		if got := c.Line(key); got != line {
 			t.Errorf("line of %q is %d, want %d", key, got, line)

@@ -89,13 +89,14 @@ func (c Case) Arguments() []string {
 	return args
 }
 
-// Command is the command line that studies the recording in its own folder,
-// where it is called base, with the choices of the case.
-func (c Case) Command(base string) []string {
-	if strings.HasPrefix(base, "-") {
+// Command is the command line that does name ("study") to the recording in its
+// own folder, where it is called base, or - for standard input, with the
+// choices of the case.
+func (c Case) Command(name, base string) []string {
+	if strings.HasPrefix(base, "-") && base != "-" {
 		base = "./" + base
 	}
-	return append([]string{"afterbeat", "study", base}, c.Arguments()...)
+	return append([]string{"afterbeat", name, base}, c.Arguments()...)
 }
 
 // texts gives the texts that set the field as it is in c; none where it was

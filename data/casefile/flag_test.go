@@ -1,6 +1,7 @@
 package casefile
 
 import (
+	"slices"
 	"strings"
 	"testing"
 
@@ -11,13 +12,17 @@ func TestArguments(t *testing.T) {
 	want := strings.Split("afterbeat study ./-a.csv --label pilot-07 --time t --pressure abp --flow q --velocity v "+
 		"--site abp=root --site q.1=lvot --unit na=me=mL/s --scale abp=1.05 --offset abp=-3 --invert q --invert v "+
 		"--rate 125 --from -1.5 --to 0 --exclude artefacts.csv --diameter-cm 2.1 --angle-deg 20 --profile 1 "+
-		"--outflow-pressure 0 --delay 0.0125 --error cardiac-output=0.5 --error flow=10% --one-beat --model wk3 "+
+		"--outflow-pressure 0 --delay 0.0125 --error cardiac-output=0.5 --error flow=10% --drop 3.5 --keep 7 --keep 8.25 --one-beat --model wk3 "+
 		"--replicates 2000 --seed -7 --share 0 --share 0.25 --share 1", " ")
-	if d := cmp.Diff(want, fullCase().Command("-a.csv")); d != "" {
+	want = append(want, "--remark", "worth a second look")
+	if d := cmp.Diff(want, fullCase().Command("study", "-a.csv")); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
 	if got := (Case{Recording: "a.csv"}).Arguments(); len(got) != 0 {
 		t.Errorf("a case without choices has the arguments %q", got)
+	}
+	if got, want := (Case{}).Command("check", "-"), []string{"afterbeat", "check", "-"}; !slices.Equal(got, want) {
+		t.Errorf("standard input: %q, want %q", got, want)
 	}
 }
 
@@ -77,12 +82,12 @@ func TestOver(t *testing.T) {
 	if d := diff(want, got); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
-	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 30} {
+	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 33} {
 		if got.Line(key) != line {
 			t.Errorf("line of %q is %d, want %d", key, got.Line(key), line)
 		}
 	}
-	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 29 {
+	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 32 {
 		t.Errorf("the case below has changed (-want +got)\n%s", d)
 	}
 }
