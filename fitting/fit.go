@@ -1,0 +1,92 @@
+package fitting
+
+import (
+	"context"
+	"math"
+)
+
+// The bases of a fit.
+const (
+	BasisBeat = "beat" // the average beat, taken as periodic
+	BasisSpan = "span" // all usable samples
+)
+
+// FitBeat fits a model to the average of the beats: it minimises the sum over
+// samples of (P_model - P)² with all parameters >= 0, and adds intervals (see
+// the package documentation).
+//
+// Beats that differ in length, hold a value that is not a number, or fewer than
+// four samples, are an error. Of a fit interrupted by ctx the best point is
+// returned, without intervals, together with the error of ctx.
+func FitBeat(ctx context.Context, m Model, b Beats, s Settings) (Result, error) {
+	if err := b.check(); err != nil {
+		return Result{}, err
+	}
+	f := newBeatFit(m, b)
+	r := f.result()
+	err := f.doubt(ctx, &r, s.withDefaults())
+	f.judge(&r)
+	return r, err
+}
+
+// beatFit is a fit to one average beat at work.
+type beatFit struct {
+	model   Model
+	beats   Beats
+	source  *source
+	moments *moments
+	search  *search
+	// The fit to the average beat: the search's end, and what bends about it.
+	theta     [maxShapes]float64
+	x         [maxLinear]float64
+	curvature *curvature
+	converged bool
+}
+
+func newBeatFit(m Model, b Beats) *beatFit {
+	f := &beatFit{model: m, beats: b, source: newSource(b)}
+	f.moments = newMoments(m.Circuit, b.Samples(), b.Rate)
+	f.search = newSearch(f.moments)
+	f.moments.set(f.source.flow, f.source.pressure, asMeasured(b.OutflowPressure))
+	f.converged = f.search.run()
+	f.theta, f.x = f.search.theta, f.search.x
+	f.curvature = newCurvature(f.moments, f.search.shape[:m.Shapes()], f.x[:m.Linear()])
+	for i := range m.Shapes() {
+		f.curvature.free[m.Linear()+i] = f.search.low[i] < f.theta[i] && f.theta[i] < f.search.high[i]
+		f.search.bend[i] = f.curvature.bend(m.Linear() + i)
+	}
+	return f
+}
+
+// sharp is the tolerance of a fit in ln shape, blunt that of a replicate, which
+// only its scatter is asked of.
+const (
+	sharp = 1e-13
+	blunt = 1e-7
+)
+
+// newSearch searches a beat's shapes, which are times, from so short that they
+// move no harmonic by more than 1 % (w tau = 0.1 at the highest) to so long that
+// only their ratio with the column's factor is felt (w tau = 1000 at the lowest).
+func newSearch(m *moments) *search {
+	s := &search{problem: m, shapes: m.Shapes(), tolerance: sharp}
+	for i := range s.shapes {
+		s.low[i] = math.Log(0.1 / m.omega[len(m.omega)-1])
+		s.high[i] = math.Log(1000 / m.omega[1])
+	}
+	return s
+}
+
+// values are the parameters at which the search stands.
+func (f *beatFit) values() Values {
+	return f.model.Unpack(f.search.x[:f.model.Linear()], f.search.shape[:f.model.Shapes()])
+}
+
+// refit searches downhill from the fit to the average beat, for the moments as
+// they are now.
+func (f *beatFit) refit() Values {
+	f.search.near, f.search.tolerance = true, blunt
+	f.search.theta = f.theta
+	f.search.run()
+	return f.values()
+}

@@ -1,0 +1,136 @@
+package fitting
+
+import (
+	"math"
+	"slices"
+
+	"gonum.org/v1/gonum/stat"
+
+	"afterbeat/data"
+)
+
+// Parameter is one fitted parameter.
+type Parameter struct {
+	Name string // "R"
+	Unit string // "mmHg s/mL"
+	data.Estimate
+}
+
+// Result is a fit. Values and intervals of parameters that are not identified
+// are there, and must not be shown without saying so.
+type Result struct {
+	Model      Model
+	Basis      string // BasisBeat
+	Site       data.Site
+	PerArea    bool
+	Values     Values
+	Parameters []Parameter
+	// TotalResistance is Z(0), in the unit of R.
+	TotalResistance data.Estimate
+	IntervalMethod  string
+	// Modelled is the pressure of the model, Residual measured less modelled,
+	// over the average beat, mmHg.
+	Modelled     data.Period
+	Residual     []float64
+	SumOfSquares float64 // of the residual, mmHg²
+	RMSE         float64 // mmHg
+	// AICc and BIC compare models fitted to the same beats; NaN with a reason.
+	AICc, BIC       float64
+	CriterionReason string
+	OutflowPressure float64 // Pv of the fit, mmHg
+	// OutflowSensitivity is the fit under other outflow pressures.
+	OutflowSensitivity []OutflowRow
+	Replicates         Replicates
+	Converged          bool
+	Evaluations        int // of the reduced sum of squares, in the fit to the average beat
+	Warnings           []data.Warning
+}
+
+// Load is the load with the fitted values.
+func (r Result) Load() Lumped { return Lumped{Model: r.Model, Values: r.Values} }
+
+// Parameter finds a parameter by name.
+func (r Result) Parameter(name string) (Parameter, bool) {
+	for _, p := range r.Parameters {
+		if p.Name == name {
+			return p, true
+		}
+	}
+	return Parameter{}, false
+}
+
+// Identified tells whether the data determine every parameter.
+func (r Result) Identified() bool {
+	return len(r.Parameters) > 0 && !slices.ContainsFunc(r.Parameters, func(p Parameter) bool { return !p.Estimate.Identified })
+}
+
+// result is the fit to the average beat, as yet without doubt.
+func (f *beatFit) result() Result {
+	r := Result{
+		Model: f.model, Basis: BasisBeat, Site: f.beats.Site, PerArea: f.beats.PerArea,
+		Values: f.values(), OutflowPressure: f.beats.OutflowPressure,
+		Evaluations: f.search.evaluations,
+	}
+	for _, s := range f.model.Parameters() {
+		unit := s.Unit
+		if r.PerArea {
+			unit = s.PerArea
+		}
+		r.Parameters = append(r.Parameters, Parameter{Name: s.Name, Unit: unit, Estimate: plain(r.Values.Of(s.Name))})
+	}
+	r.TotalResistance = plain(f.model.Resistance(r.Values))
+	pressure, _ := f.beats.Average()
+	r.Modelled = data.Period{Samples: make([]float64, len(pressure.Samples)), Rate: pressure.Rate}
+	r.Residual = make([]float64, len(pressure.Samples))
+	modelled := slices.Clone(f.source.flow)
+	for k := range modelled {
+		modelled[k] *= f.model.Impedance(r.Values, f.moments.omega[k])
+	}
+	modelled[0] += complex(r.OutflowPressure, 0)
+	f.source.plan.inverse(r.Modelled.Samples, modelled)
+	for j, p := range pressure.Samples {
+		r.Residual[j] = p - r.Modelled.Samples[j]
+		r.SumOfSquares += r.Residual[j] * r.Residual[j]
+	}
+	r.RMSE = math.Sqrt(r.SumOfSquares / float64(len(r.Residual)))
+	r.Converged = f.converged && finite(r.SumOfSquares)
+	return r
+}
+
+// plain is an estimate whose doubt is not known yet.
+func plain(v float64) data.Estimate {
+	return data.Estimate{Value: v, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true}
+}
+
+// withoutInterval says why there is none.
+func (r *Result) withoutInterval(why string) {
+	r.IntervalMethod = IntervalNone
+	r.Replicates = Replicates{}
+	for i := range r.Parameters {
+		r.Parameters[i].Why = why
+	}
+	r.TotalResistance.Why = why
+}
+
+// takeIntervals reads the intervals off the replicates.
+func (r *Result) takeIntervals() {
+	for i := range r.Parameters {
+		p := &r.Parameters[i]
+		of := func(v Values) float64 { return v.Of(p.Name) }
+		p.Random, p.Total = percentiles(r.Replicates.Random, of), percentiles(r.Replicates.Total, of)
+	}
+	t := &r.TotalResistance
+	t.Random, t.Total = percentiles(r.Replicates.Random, r.Model.Resistance), percentiles(r.Replicates.Total, r.Model.Resistance)
+}
+
+// percentiles is the 95 % interval of a quantity over replicates.
+func percentiles(replicates []Replicate, of func(Values) float64) data.Interval {
+	all := make([]float64, len(replicates))
+	for i, one := range replicates {
+		if all[i] = of(one.Values); math.IsNaN(all[i]) {
+			return data.NoInterval()
+		}
+	}
+	slices.Sort(all)
+	return data.Interval{Low: stat.Quantile(0.025, stat.LinInterp, all, nil), High: stat.Quantile(0.975, stat.LinInterp, all, nil)}
+}

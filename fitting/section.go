@@ -1,0 +1,63 @@
+package fitting
+
+import (
+	"fmt"
+
+	"afterbeat/data"
+	"afterbeat/data/casenote"
+)
+
+// Section describes the fit for a note: what was fitted, its parameters with
+// both intervals, the residual, and how the intervals came about.
+func (r Result) Section() casenote.Section {
+	s := casenote.Section{Title: r.title()}
+	s.Words = append(s.Words, data.Clean(fmt.Sprintf("Model %s (%s), fitted to %s, outflow pressure %.4g mmHg.",
+		r.Model.Name, r.Model.Source(), r.basisWords(), r.OutflowPressure)))
+	for i, p := range r.Parameters {
+		label := fmt.Sprintf("%s, %s", p.Name, r.Model.Parameters()[i].Meaning)
+		s.Rows = append(s.Rows, casenote.Quantity(label, p.Estimate, p.Unit, data.Estimated))
+	}
+	unit := resistance.Unit
+	if r.PerArea {
+		unit = resistance.PerArea
+	}
+	s.Rows = append(s.Rows,
+		casenote.Quantity("total resistance", r.TotalResistance, unit, data.Estimated),
+		casenote.Quantity("residual, rms", data.Estimate{Value: r.RMSE, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: "of the fit as it stands"}, "mmHg", data.Estimated),
+		casenote.Words("intervals", r.intervalWords()))
+	return s
+}
+
+// title tells whose load it is: the body's, or that of one bed.
+func (r Result) title() string {
+	site := string(r.Site)
+	if site == "" {
+		site = string(data.SiteOther)
+	}
+	title := "regional load: " + site
+	if r.Site.Systemic() {
+		title = "systemic load"
+	}
+	if r.PerArea {
+		title += ", per unit area"
+	}
+	return title
+}
+
+func (r Result) basisWords() string {
+	if r.Basis == BasisSpan {
+		return "the whole span"
+	}
+	return "the average beat"
+}
+
+// intervalWords names the method of the intervals, or why there are none.
+func (r Result) intervalWords() string {
+	switch r.IntervalMethod {
+	case IntervalBlocks:
+		return fmt.Sprintf("%s: 95 %%, %d replicates of blocks of successive beats", r.IntervalMethod, len(r.Replicates.Random))
+	case IntervalCovariance:
+		return r.IntervalMethod + ": 95 %, from the residual and its autocorrelation, few beats"
+	}
+	return r.IntervalMethod + ": " + r.TotalResistance.Why
+}
