@@ -44,7 +44,8 @@ type Settings struct {
 	Seed       uint64 // of everything drawn; 0: 1
 }
 
-func (s Settings) withDefaults() Settings {
+// WithDefaults is s with every default in its place.
+func (s Settings) WithDefaults() Settings {
 	if s.Replicates <= 0 {
 		s.Replicates = 1000
 	}

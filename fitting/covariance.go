@@ -33,7 +33,7 @@ func (f *beatFit) drawCovariance(ctx context.Context, r *Result, s Settings) err
 			return err
 		}
 		move := studentMove(random, factor, unknowns, f.beats.Count()-1)
-		one := Replicate{Calibration: given, source: f.source}
+		one := Replicate{Calibration: given, pool: f.source.pool}
 		one.Values = f.moved(f.x, f.theta, move)
 		r.Replicates.Random = append(r.Replicates.Random, one)
 		if one.Calibration = f.beats.Systematic.draw(systematic, given.OutflowPressure); one.Calibration != given {

@@ -36,11 +36,12 @@
 // # Doubt
 //
 // Random error comes from the scatter of the beats: blocks of successive beats
-// are drawn anew, averaged and fitted again ([IntervalBlocks]); with fewer than
-// eight beats from the residual ([IntervalCovariance]); a single beat has none
-// ([IntervalNone]). Systematic error (calibration, delay, outflow pressure) is
-// drawn on top of it from the half-widths in [Systematic]. Both sets of
-// replicates stand in the [Result], so that what is computed downstream carries
+// are drawn anew, averaged, cleared of what C carries from beat to beat, and
+// fitted again ([IntervalBlocks]); with fewer than eight beats it comes from the
+// residual and from leaving out one beat after the other ([IntervalCovariance]); a
+// single beat has none ([IntervalNone]). Systematic error (calibration, delay, outflow
+// pressure) is drawn on top of it from the half-widths in [Systematic]. Both sets
+// of replicates stand in the [Result], so that what is computed downstream carries
 // the same doubt. A parameter on its bound, wider than 100 %, or without effect
 // is not identified, and says why.
 //

@@ -77,7 +77,7 @@ func (f *beatFit) drawBlocks(ctx context.Context, r *Result, s Settings) error {
 		if err := interrupted(ctx, i); err != nil {
 			return err
 		}
-		one := Replicate{Calibration: given, source: f.source, starts: starts[i*f.source.blocks():][:f.source.blocks()]}
+		one := Replicate{Calibration: given, pool: f.source.pool, starts: starts[i*f.source.blocks():][:f.source.blocks()]}
 		f.source.draw(one.starts, flow, pressure)
 		f.moments.set(flow, pressure, given)
 		one.Values = f.refit()

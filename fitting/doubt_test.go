@@ -142,7 +142,10 @@ func TestReplicatesCarryTheirFlow(t *testing.T) {
 	}
 	one, total := r.Replicates.Random[17], r.Replicates.Total[17]
 	flow, pressure := make([]complex128, 51), make([]complex128, 51)
-	one.source.draw(one.starts, flow, pressure)
+	s := newSource(b)
+	s.useBlocks(one.pool.block, one.pool.inflate)
+	s.storage = newStorage(s, r.Values.R*r.Values.C)
+	s.draw(one.starts, flow, pressure)
 	want := data.FromSpectrum(flow, 100, b.Rate)
 	for j, q := range one.Flow().Samples {
 		if math.Abs(q-want.Samples[j]) > 1e-9 || math.Abs(total.Flow().Samples[j]-total.FlowScale*q) > 1e-9 {

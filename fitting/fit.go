@@ -24,7 +24,7 @@ func FitBeat(ctx context.Context, m Model, b Beats, s Settings) (Result, error) 
 	}
 	f := newBeatFit(m, b)
 	r := f.result()
-	err := f.doubt(ctx, &r, s.withDefaults())
+	err := f.doubt(ctx, &r, s.WithDefaults())
 	f.judge(&r)
 	return r, err
 }
@@ -41,6 +41,7 @@ type beatFit struct {
 	x         [maxLinear]float64
 	curvature *curvature
 	converged bool
+	pulse     bool // the flow has one
 }
 
 func newBeatFit(m Model, b Beats) *beatFit {
@@ -48,6 +49,7 @@ func newBeatFit(m Model, b Beats) *beatFit {
 	f.moments = newMoments(m.Circuit, b.Samples(), b.Rate)
 	f.search = newSearch(f.moments)
 	f.moments.set(f.source.flow, f.source.pressure, asMeasured(b.OutflowPressure))
+	f.pulse = f.moments.pulsatile()
 	f.converged = f.search.run()
 	f.theta, f.x = f.search.theta, f.search.x
 	f.curvature = newCurvature(f.moments, f.search.shape[:m.Shapes()], f.x[:m.Linear()])

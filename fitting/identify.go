@@ -12,30 +12,22 @@ import (
 // the criteria of choice.
 func (f *beatFit) judge(r *Result) {
 	for i, s := range f.model.Parameters() {
-		r.Parameters[i].doubt(f.undetermined(s, r.Values))
+		p := &r.Parameters[i].Estimate
+		doubtIf(p, f.undetermined(s))
+		doubtIf(p, r.unsure(*p))
 	}
 	total := &r.TotalResistance
 	if total.Value == 0 {
-		doubtIf(total, "it is 0, the end of its range")
+		doubtIf(total, onBound)
 	}
-	doubtIf(total, tooWide(*total))
-	if !r.Converged {
-		for i := range r.Parameters {
-			r.Parameters[i].doubt("the fit gave no number")
-		}
-		doubtIf(total, "the fit gave no number")
-	}
+	doubtIf(total, r.unsure(*total))
 	f.criteria(r)
 	f.outflow(r)
 	f.warn(r)
 }
 
-// doubt marks a parameter as not identified where there is a reason to, its
-// interval included.
-func (p *Parameter) doubt(why string) {
-	doubtIf(&p.Estimate, why)
-	doubtIf(&p.Estimate, tooWide(p.Estimate))
-}
+// onBound is the reason of a parameter that a fit drives to 0.
+const onBound = "it is 0, the end of its range"
 
 // doubtIf keeps the first reason.
 func doubtIf(e *data.Estimate, why string) {
@@ -44,12 +36,17 @@ func doubtIf(e *data.Estimate, why string) {
 	}
 }
 
-// tooWide is the reason of an interval that is wider than the value.
-func tooWide(e data.Estimate) string {
+// unsure is what a value and its interval have against being identified; empty
+// where they have nothing.
+func (r *Result) unsure(e data.Estimate) string {
 	switch {
-	case !finite(e.Value):
+	case !r.Converged || !finite(e.Value):
 		return "the fit gave no number"
-	case e.Random.Defined() && e.Random.Width() > math.Abs(e.Value):
+	case r.IntervalMethod == IntervalNone:
+		return ""
+	case !e.Random.Defined() || !e.Total.Defined():
+		return "its replicates ended outside of numbers"
+	case e.Random.Width() > math.Abs(e.Value):
 		return fmt.Sprintf("its random interval is %.0f %% of it wide", 100*e.Random.Width()/math.Abs(e.Value))
 	}
 	return ""
@@ -57,17 +54,17 @@ func tooWide(e data.Estimate) string {
 
 // undetermined is why the fit to the average beat does not determine a
 // parameter; empty where it does.
-func (f *beatFit) undetermined(s Symbol, v Values) string {
+func (f *beatFit) undetermined(s Symbol) string {
 	i := s.index
 	if s.shape {
 		i += f.model.Linear()
 	}
 	switch {
 	case !s.shape && f.x[s.index] == 0:
-		return "it is 0, the end of its range"
+		return onBound
 	case s.shape && !slices.ContainsFunc(f.x[:], func(x float64) bool { return x > 0 }):
 		return "nothing passes it: the fit has no impedance"
-	case s.shape && !f.moments.pulsatile():
+	case s.shape && !f.pulse:
 		return "the flow has no pulse"
 	case !f.curvature.felt(i):
 		return "it has no effect on the pressure"

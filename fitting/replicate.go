@@ -1,6 +1,10 @@
 package fitting
 
-import "afterbeat/data"
+import (
+	"slices"
+
+	"afterbeat/data"
+)
 
 // Replicate is one answer that the data allow: parameters, with the flow and
 // the outflow pressure that belong to them. Computing something for every
@@ -8,17 +12,8 @@ import "afterbeat/data"
 type Replicate struct {
 	Values Values
 	Calibration
-	source *source
+	pool   *pool
 	starts []int32 // first beats of the blocks drawn; empty: the average beat
-}
-
-// Flow is the average flow beat of the replicate, in its own scale.
-func (r Replicate) Flow() data.Period {
-	beat := r.source.flowBeat(r.starts)
-	for i := range beat {
-		beat[i] *= r.FlowScale
-	}
-	return data.Period{Samples: beat, Rate: r.source.beats.Rate}
 }
 
 // Replicates are the answers drawn for one fit, as many in each set. The n-th of
@@ -27,4 +22,36 @@ func (r Replicate) Flow() data.Period {
 type Replicates struct {
 	Random []Replicate // random error alone
 	Total  []Replicate // random and systematic errors
+}
+
+// Flow is the average flow beat of the replicate, in its own scale.
+func (r Replicate) Flow() data.Period {
+	beat := r.pool.flow(r.starts)
+	for i := range beat {
+		beat[i] *= r.FlowScale
+	}
+	return data.Period{Samples: beat, Rate: r.pool.beats.Rate}
+}
+
+// flow is what source.draw draws, over time; the average beat where starts is
+// empty.
+func (p *pool) flow(starts []int32) []float64 {
+	if len(starts) == 0 {
+		return slices.Clone(p.mean)
+	}
+	beat := make([]float64, len(p.mean))
+	n := p.beats.Count()
+	left := n
+	for _, from := range starts {
+		for j := range min(left, p.block) {
+			for i, v := range p.beats.Flow[(int(from)+j)%n] {
+				beat[i] += v
+			}
+		}
+		left -= p.block
+	}
+	for i := range beat {
+		beat[i] = p.inflate*beat[i]/float64(n) + (1-p.inflate)*p.mean[i]
+	}
+	return beat
 }

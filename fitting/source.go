@@ -1,28 +1,31 @@
 package fitting
 
-import "slices"
-
 // source is what replicates are drawn from: the spectra of the single beats and
 // of every run of block successive beats, so that a draw costs a few additions
 // and no transform.
 type source struct {
-	beats    Beats
+	*pool
 	plan     *transform
 	flow     []complex128 // spectrum of the average beat
 	pressure []complex128
-	mean     []float64      // the average flow beat over time
 	flows    [][]complex128 // of the single beats
 	presses  [][]complex128
-	block    int            // beats
 	runFlow  [][]complex128 // sum over beats i .. i+block-1, counted round the end
 	runPress [][]complex128
-	inflate  float64  // factor on the distance of a draw from the average
 	storage  *storage // nil: draws are not repaired
+}
+
+// pool is the part of a source that its replicates keep.
+type pool struct {
+	beats   Beats
+	mean    []float64 // the average flow beat
+	block   int       // beats
+	inflate float64   // factor on the distance of a draw from the average
 }
 
 func newSource(b Beats) *source {
 	n, bins := b.Samples(), b.Samples()/2+1
-	s := &source{beats: b, plan: newTransform(n), inflate: 1, mean: meanOf(b.Flow)}
+	s := &source{pool: &pool{beats: b, mean: meanOf(b.Flow), inflate: 1}, plan: newTransform(n)}
 	s.flow, s.pressure = make([]complex128, bins), make([]complex128, bins)
 	s.flows, s.presses = spectra(b.Count(), bins), spectra(b.Count(), bins)
 	for i := range b.Count() {
@@ -104,26 +107,4 @@ func (s *source) spread(sum, mean []complex128) {
 	for k, v := range mean {
 		sum[k] = complex(f*real(sum[k])+(1-s.inflate)*real(v), f*imag(sum[k])+(1-s.inflate)*imag(v))
 	}
-}
-
-// flowBeat is the flow of a draw over time; that of the average beat where
-// starts is empty.
-func (s *source) flowBeat(starts []int32) []float64 {
-	if len(starts) == 0 {
-		return slices.Clone(s.mean)
-	}
-	beat := make([]float64, len(s.mean))
-	n, left := len(s.flows), len(s.flows)
-	for _, from := range starts {
-		for j := range min(left, s.block) {
-			for i, v := range s.beats.Flow[(int(from)+j)%n] {
-				beat[i] += v
-			}
-		}
-		left -= s.block
-	}
-	for i := range beat {
-		beat[i] = s.inflate*beat[i]/float64(n) + (1-s.inflate)*s.mean[i]
-	}
-	return beat
 }

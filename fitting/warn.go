@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"afterbeat/data"
+	"afterbeat/data/unit"
 )
 
 // largeMisfit is the residual over the pulse amplitude, root mean square over
@@ -21,7 +22,7 @@ func (f *beatFit) warn(r *Result) {
 		add(data.CodeNotConverged, "look for values far out of range in the beats", "the search for the best fit ended outside of numbers")
 	}
 	if q := flow.Mean(); q <= 0 {
-		add(data.CodeNegativeFlow, "invert the flow channel, or leave the fit out", "mean flow is %.3g", q)
+		add(data.CodeNegativeFlow, "invert the flow channel, or leave the fit out", "mean flow is %.3g %s", q, f.flowUnit())
 	}
 	for _, p := range r.Parameters {
 		if !p.Identified {
@@ -39,6 +40,14 @@ func (f *beatFit) warn(r *Result) {
 	if !f.beats.OutflowMeasured {
 		add(data.CodeOutflow, "a measured venous or zero-flow pressure", "outflow pressure %.3g mmHg is an assumption; %s", r.OutflowPressure, r.outflowWords())
 	}
+}
+
+// flowUnit is the unit of what was taken for flow.
+func (f *beatFit) flowUnit() string {
+	if f.beats.PerArea {
+		return unit.Internal(unit.Velocity).Name
+	}
+	return unit.Internal(unit.Flow).Name
 }
 
 // outflowWords tells what other outflow pressures would make of R and C.
