@@ -1,0 +1,100 @@
+package beat
+
+import (
+	"math"
+
+	"afterbeat/data/unit"
+)
+
+// Pulse is what [Find] found in one channel.
+type Pulse struct {
+	Found    bool
+	Reason   string // why no pulse was found; empty otherwise
+	Quantity unit.Quantity
+	Rate     float64 // Hz
+	Beats    []Beat  // in order of time, each beginning where the one before ended
+	Unusable []Run   // the stretches without a usable sample
+	// Period is the median interval of the used beats, s; NaN without any.
+	Period float64
+	// PeriodCV is the standard deviation of the intervals of the used beats
+	// over their mean; NaN with fewer than two.
+	PeriodCV float64
+	// Systolic and Diastolic are the medians over the used beats of the beat's
+	// largest and smallest sample; Mean is the time average over the used
+	// beats. In the unit of the channel; NaN without a used beat.
+	Systolic, Diastolic, Mean float64
+	// Rhythms has one entry where a pulse was found.
+	Rhythms []Rhythm
+}
+
+// Rhythm is one periodic component.
+type Rhythm struct {
+	Frequency      float64 // Hz
+	PulseAmplitude float64 // median over the used beats of max - min, unit of the channel
+}
+
+// Run is a stretch of samples, From <= i < To.
+type Run struct{ From, To int }
+
+// HeartRate is 60/Period, in 1/min; NaN without a used beat.
+func (p Pulse) HeartRate() float64 { return 60 / p.Period }
+
+// Used counts the beats that can be used.
+func (p Pulse) Used() int { return len(used(p.Beats)) }
+
+// Rejected counts the beats that cannot.
+func (p Pulse) Rejected() int { return len(p.Beats) - p.Used() }
+
+// used returns the beats that can be used.
+func used(beats []Beat) []Beat {
+	var out []Beat
+	for _, b := range beats {
+		if b.Rejected == "" {
+			out = append(out, b)
+		}
+	}
+	return out
+}
+
+// summarise fills in what follows from the beats.
+func (p *Pulse) summarise() {
+	good := used(p.Beats)
+	intervals := each(good, func(b Beat) float64 { return b.Interval })
+	p.Period = median(intervals)
+	p.PeriodCV = variation(intervals)
+	p.Systolic = median(each(good, func(b Beat) float64 { return b.Max }))
+	p.Diastolic = median(each(good, func(b Beat) float64 { return b.Min }))
+	p.Mean = timeAverage(good)
+	if len(good) > 0 {
+		amplitude := median(each(good, Beat.Amplitude))
+		p.Rhythms = []Rhythm{{Frequency: 1 / p.Period, PulseAmplitude: amplitude}}
+	}
+}
+
+// timeAverage weighs the mean of each beat by its length.
+func timeAverage(beats []Beat) float64 {
+	sum, samples := 0.0, 0
+	for _, b := range beats {
+		sum += b.Mean * float64(b.Samples())
+		samples += b.Samples()
+	}
+	return sum / float64(samples)
+}
+
+// each applies f to every beat.
+func each(beats []Beat, f func(Beat) float64) []float64 {
+	out := make([]float64, len(beats))
+	for i, b := range beats {
+		out[i] = f(b)
+	}
+	return out
+}
+
+// variation is the coefficient of variation, SD/mean with n-1 in the SD.
+func variation(x []float64) float64 {
+	if len(x) < 2 {
+		return math.NaN()
+	}
+	mean, sd := meanSD(x)
+	return sd / mean
+}

@@ -1,0 +1,5 @@
+package beat
+
+import "afterbeat/data"
+
+var channelName = data.Clean("abp_mmHg")
