@@ -61,14 +61,26 @@ func (e *ejection) threshold(share float64) float64 {
 	return min(max((e.sums[j-1]-ejected)/float64(j), below), e.v[j-1])
 }
 
-// root writes the flow into the arteries, max(0, Q+ - q0) + (1-s) Q- + s mean Q.
-func (e *ejection) root(dst []float64, share, threshold float64) {
+// pose writes the flow into the arteries under a posing with a share to dst, and
+// returns the threshold, 0 where the posing has none.
+func (e *ejection) pose(dst []float64, posing Posing, share float64) (threshold float64) {
 	pump := share * e.mean
-	for j, x := range e.flow {
-		if x > 0 {
-			dst[j] = max(0, x-threshold) + pump
-		} else {
+	switch posing {
+	case ScaledPosing:
+		for j, x := range e.flow {
 			dst[j] = (1-share)*x + pump
 		}
+	case LateValvePosing:
+		threshold = e.threshold(share)
+		for j, x := range e.flow {
+			if x > 0 {
+				dst[j] = max(0, x-threshold) + pump
+			} else {
+				dst[j] = (1-share)*x + pump
+			}
+		}
+	default:
+		panic("support: no share under the posing " + string(posing))
 	}
+	return threshold
 }

@@ -1,6 +1,7 @@
 package support
 
 import (
+	"errors"
 	"fmt"
 	"math"
 
@@ -29,12 +30,7 @@ func (p Posing) ByConstruction() bool { return p == ScaledPosing }
 // Scaled is (1-s) Q + s mean Q, mL/s, of a native flow q and a share s. It
 // panics where s is not in 0..1.
 func Scaled(q data.Period, share float64) data.Period {
-	mustBeShare(share)
-	root := data.Period{Samples: make([]float64, len(q.Samples)), Rate: q.Rate}
-	mean := q.Mean()
-	for j, x := range q.Samples {
-		root.Samples[j] = (1-share)*x + share*mean
-	}
+	root, _ := pose(q, ScaledPosing, share)
 	return root
 }
 
@@ -43,38 +39,25 @@ func Scaled(q data.Period, share float64) data.Period {
 // is kept to rounding. It panics where s is not in 0..1 or mean flow is not
 // positive.
 func LateValve(q data.Period, share float64) (root data.Period, threshold float64) {
-	mustBeShare(share)
+	if !(q.Mean() > 0) {
+		panic(fmt.Sprintf("support: mean flow %v is not positive", q.Mean()))
+	}
+	return pose(q, LateValvePosing, share)
+}
+
+// pose is the flow into the arteries under a posing.
+func pose(q data.Period, posing Posing, share float64) (root data.Period, threshold float64) {
+	if !isShare(share) {
+		panic(fmt.Sprintf("support: share %v is not in 0..1", share))
+	}
 	var e ejection
 	e.of(q.Samples)
-	if !(e.mean > 0) {
-		panic(fmt.Sprintf("support: mean flow %v is not positive", e.mean))
-	}
 	root = data.Period{Samples: make([]float64, len(q.Samples)), Rate: q.Rate}
-	threshold = e.threshold(share)
-	e.root(root.Samples, share, threshold)
+	threshold = e.pose(root.Samples, posing, share)
 	return root, threshold
 }
 
-// posed is the flow into the arteries under a posing.
-func posed(q data.Period, posing Posing, share float64) (root data.Period, threshold float64) {
-	switch posing {
-	case NativePosing:
-		return q, 0
-	case ScaledPosing:
-		return Scaled(q, share), 0
-	case LateValvePosing:
-		return LateValve(q, share)
-	}
-	panic("support: no posing " + string(posing))
-}
-
 func isShare(s float64) bool { return s >= 0 && s <= 1 }
-
-func mustBeShare(s float64) {
-	if !isShare(s) {
-		panic(fmt.Sprintf("support: share %v is not in 0..1", s))
-	}
-}
 
 // check tells why a flow cannot be posed about: an error for a person to read.
 func check(q data.Period, posing Posing, shares []float64) error {
@@ -88,8 +71,10 @@ func check(q data.Period, posing Posing, shares []float64) error {
 	}
 	mean := q.Mean()
 	switch {
+	case len(q.Samples) == 0:
+		return errors.New("the flow has no samples")
 	case math.IsNaN(mean) || math.IsInf(mean, 0):
-		return fmt.Errorf("flow has samples without a value: nothing to compare")
+		return errors.New("the flow has samples without a value: nothing to compare")
 	case mean <= 0:
 		return fmt.Errorf("mean flow %.4g is not positive: a share of it means nothing; the channel may be inverted", mean)
 	}

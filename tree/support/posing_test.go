@@ -90,8 +90,8 @@ func TestPosingsOfAnyFlow(t *testing.T) {
 		shares := []float64{rapid.Float64Range(0, 1).Draw(t, "a"), rapid.Float64Range(0, 1).Draw(t, "b")}
 		scale := max(1, swing(q))
 		for _, posing := range Posings() {
-			less, _ := posed(q, posing, min(shares[0], shares[1]))
-			more, _ := posed(q, posing, max(shares[0], shares[1]))
+			less, _ := pose(q, posing, min(shares[0], shares[1]))
+			more, _ := pose(q, posing, max(shares[0], shares[1]))
 			for _, root := range []data.Period{less, more} {
 				if d := root.Mean() - q.Mean(); math.Abs(d) > 1e-12*scale {
 					t.Fatalf("%s: mean moves by %v", posing, d)
@@ -100,10 +100,10 @@ func TestPosingsOfAnyFlow(t *testing.T) {
 			if a, b := swing(less), swing(more); b > a+1e-12*scale || a > swing(q)+1e-12*scale {
 				t.Fatalf("%s: swing %v, then %v, native %v", posing, a, b, swing(q))
 			}
-			if native, _ := posed(q, posing, 0); !same(native.Samples, q.Samples) {
+			if native, _ := pose(q, posing, 0); !same(native.Samples, q.Samples) {
 				t.Fatalf("%s: share 0 is not native", posing)
 			}
-			if steady, _ := posed(q, posing, 1); swing(steady) != 0 {
+			if steady, _ := pose(q, posing, 1); swing(steady) != 0 {
 				t.Fatalf("%s: share 1 swings by %v", posing, swing(steady))
 			}
 		}
@@ -134,7 +134,7 @@ func TestMisuseOfAPosingPanics(t *testing.T) {
 		"share below 0":    func() { LateValve(q, -0.1) },
 		"share NaN":        func() { LateValve(q, math.NaN()) },
 		"no mean flow":     func() { LateValve(data.Period{Samples: []float64{1, -1}, Rate: 2}, 0.5) },
-		"a made-up posing": func() { posed(q, "sideways", 0.5) },
+		"a made-up posing": func() { pose(q, "sideways", 0.5) },
 	} {
 		t.Run(name, func(t *testing.T) {
 			defer func() {
