@@ -18,6 +18,23 @@
 // converted where a file is read and where a number is printed (package unit),
 // nowhere between. Struct fields say their unit.
 //
+// # Reading
+//
+// [ReadCSV] reads a recording, [ReadSpans] the stretches to leave out, [Choose]
+// settles which channels are used. Each says what it guessed, in warnings that
+// name the flag which states it.
+//
+// # Clocks
+//
+// A file's times may be rounded, repeated, late, or jump. [Recording.Clock]
+// describes them as written, [Recording.Holes] lists the jumps, and
+// [Recording.Uniform] brings all channels to one even clock: untouched where
+// the file's own is even, else interpolated,
+//
+//	x(t) = x_i + (x_{i+1} - x_i) (t - t_i)/(t_{i+1} - t_i),
+//
+// and NaN where nothing was measured.
+//
 // # Text from outside
 //
 // Column names, file names and labels can carry anything, escape sequences for

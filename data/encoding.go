@@ -11,12 +11,14 @@ import (
 	"golang.org/x/text/transform"
 )
 
-// readAll reads all of r; a file tells its size, so that it is read once into
-// one place.
+// readAll reads all of r, once into one place if r tells its size.
 func readAll(name string, r io.Reader) ([]byte, error) {
 	var b bytes.Buffer
-	if f, ok := r.(interface{ Stat() (fs.FileInfo, error) }); ok {
-		if info, err := f.Stat(); err == nil && info.Mode().IsRegular() {
+	switch sized := r.(type) {
+	case interface{ Len() int }:
+		b.Grow(sized.Len() + bytes.MinRead)
+	case interface{ Stat() (fs.FileInfo, error) }:
+		if info, err := sized.Stat(); err == nil && info.Mode().IsRegular() {
 			b.Grow(int(info.Size()) + bytes.MinRead)
 		}
 	}

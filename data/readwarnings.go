@@ -40,8 +40,9 @@ func (in *intake) timeWarnings(c Clock) []Warning {
 // clockWarnings speaks of holes, repeated stamps and uneven steps.
 func (r *Recording) clockWarnings(p pace, c Clock) []Warning {
 	var out []Warning
+	times, lost := rowTimes(r.Time, p, c.Rate)
 	if holes := holesOf(r.Time, p); len(holes) > 0 {
-		out = append(out, holeWarning(holes, c))
+		out = append(out, holeWarning(holes, len(lost), c))
 	}
 	if c.Repeated > 0 {
 		out = append(out, Warning{
@@ -50,18 +51,23 @@ func (r *Recording) clockWarnings(p pace, c Clock) []Warning {
 			Cure: "these rows were spread evenly; export the times with more decimals",
 		})
 	}
-	times, _ := rowTimes(r.Time, p, c.Rate)
-	if off := farthest(r.Time, times, p, c.Rate); off > tolerance(c.Rate) {
+	done := "values were interpolated to it"
+	off := farthest(r.Time, times, p, c.Rate)
+	if off <= tolerance(c.Rate) && c.Repeated == 0 {
+		done = "the rows were taken to be sampled evenly and stamped late"
+		off = farthest(r.Time, r.Time, p, c.Rate)
+	}
+	if off > tolerance(c.Rate) {
 		out = append(out, Warning{
 			Code: CodeUnevenClock, Channel: r.TimeName,
-			Text: fmt.Sprintf("rows are up to %s away from an even clock of %.6g Hz", seconds(off), c.Rate),
-			Cure: "values were interpolated to that clock; if the samples were taken evenly, leave the times out and give --rate HZ",
+			Text: fmt.Sprintf("rows are up to %s away from an even clock of %.6g Hz; %s", seconds(off), c.Rate, done),
+			Cure: "if the rate of sampling is known, leave the times out and give --rate HZ",
 		})
 	}
 	return out
 }
 
-func holeWarning(holes []Span, c Clock) Warning {
+func holeWarning(holes []Span, lost int, c Clock) Warning {
 	longest, total := holes[0], 0.0
 	for _, h := range holes {
 		total += h.To - h.From
@@ -74,8 +80,12 @@ func holeWarning(holes []Span, c Clock) Warning {
 		text = fmt.Sprintf("the clock jumps %d times, over %s together; the longest jump is %s at %.6g s",
 			len(holes), seconds(total), seconds(longest.To-longest.From), longest.From)
 	}
+	text += fmt.Sprintf(" (%.2g %% of the recording)", 100*total/c.Duration)
+	if lost > 0 {
+		text += fmt.Sprintf("; %d rows stamped in a burst after it are not used", lost)
+	}
 	return Warning{
-		Code: CodeHole, Text: text + fmt.Sprintf(" (%.2g %% of the recording)", 100*total/c.Duration),
+		Code: CodeHole, Text: text,
 		Cure: "beats beside it are left out; choose a stretch without it with --from S and --to S",
 	}
 }

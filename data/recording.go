@@ -46,7 +46,7 @@ func (c Channel) Missing() int {
 type Clock struct {
 	Rows        int
 	Duration    float64 // last time less first, s
-	Rate        float64 // Hz: steps that are no holes, over the time they take
+	Rate        float64 // Hz: steps that are no holes, repeated stamps included, over the time they take
 	LongestStep float64 // s
 	Repeated    int     // rows that have the time of the row before
 }

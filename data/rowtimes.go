@@ -48,12 +48,15 @@ func holeBetween(time []float64, a, b int, p pace) bool {
 // between two that keep their stamps lie evenly between them, so that no
 // sample is lost, as it would be if the rows of a stamp were averaged. Before
 // the first and after the last that keeps its stamp rows go on at the rate, as
-// do those that share the stamp before a hole.
+// do those that share the stamp before a hole. Times that are even already are
+// returned as they are.
 //
 // lost lists the rows that were stamped in a burst after a hole; when they were
-// taken is not known. The times never fall. Where all rows keep their stamps
-// the result is time itself.
+// taken is not known. The times never fall.
 func rowTimes(time []float64, p pace, rate float64) (out []float64, lost []int) {
+	if farthest(time, time, p, rate) <= tolerance(rate) {
+		return time, nil // already as even as it needs to be
+	}
 	out = slices.Clone(time)
 	first, last := len(time)-1, 0
 	eachKept(time, p, func(a, b int) {
