@@ -77,7 +77,7 @@ func doubt(e *data.Estimate, random, total data.Interval) {
 	case math.IsNaN(e.Value):
 		return
 	case !random.Defined() || !total.Defined():
-		e.Why = "undefined in some of the replicates"
+		e.Identified, e.Why = false, "undefined in some of the replicates"
 		return
 	}
 	e.Random, e.Total, e.Why = random, total, ""

@@ -164,7 +164,7 @@ func TestWideIntervalIsNotIdentified(t *testing.T) {
 	}
 	e = pointEstimate(0.2, "")
 	doubt(&e, data.NoInterval(), data.Interval{Low: 0, High: 0.4})
-	if e.Total.Defined() || e.Why == "" {
+	if e.Total.Defined() || e.Identified || e.Why == "" {
 		t.Errorf("an interval out of undefined replicates: %+v", e)
 	}
 }
