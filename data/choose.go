@@ -89,12 +89,7 @@ func (c *chooser) name(role int, name string) error {
 	if name == "" {
 		return nil
 	}
-	in := make([]title, len(c.channels))
-	for i, ch := range c.channels {
-		part, _, _ := unit.Header(ch.Name.String())
-		in[i] = title{ch.Name, Clean(part)}
-	}
-	i, err := find(name, in, "--"+roleNames[role]+" NAME")
+	i, err := FindChannel(c.channels, name, "--"+roleNames[role]+" NAME")
 	if err != nil {
 		return err
 	}
@@ -105,6 +100,18 @@ func (c *chooser) name(role int, name string) error {
 	}
 	c.named[role] = i
 	return nil
+}
+
+// FindChannel is the index of the channel that the user calls name, by its
+// whole header or the part before the unit. Where there is none, or several,
+// the error names flag, the flag that gave the name.
+func FindChannel(channels []Channel, name, flag string) (int, error) {
+	in := make([]title, len(channels))
+	for i, ch := range channels {
+		part, _, _ := unit.Header(ch.Name.String())
+		in[i] = title{ch.Name, Clean(part)}
+	}
+	return find(name, in, flag)
 }
 
 // guessMoving gives the named flow, else the named velocity, else guesses one

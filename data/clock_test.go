@@ -26,8 +26,8 @@ func rounded(times []float64, step, half float64) []float64 {
 	return out
 }
 
-// without leaves out the rows from..to-1.
-func without(x []float64, from, to int) []float64 {
+// cutOut leaves out the rows from..to-1.
+func cutOut(x []float64, from, to int) []float64 {
 	return append(append([]float64{}, x[:from]...), x[to:]...)
 }
 
@@ -51,10 +51,10 @@ func TestClock(t *testing.T) {
 		{name: "240 Hz, printed to 1 ms", times: rounded(evenly(0, 240, 2400), 1e-3, 0.5), rate: 240, relative: 1e-4},
 		{name: "2000 Hz, cut to 1 ms", times: rounded(evenly(0, 2000, 4000), 1e-3, 1e-6), rate: 2000, repeated: 2000},
 		{name: "125 Hz, cut to 1 s", times: rounded(evenly(0, 125, 12500), 1, 1e-9), rate: 125, repeated: 12400},
-		{name: "125 Hz, cut to 1 s, 2 s missing", times: without(rounded(evenly(0, 125, 12500), 1, 1e-9), 2500, 2750), rate: 125, holes: 1, repeated: 12152},
-		{name: "hole of 10 s", times: without(evenly(0, 100, 5000), 1000, 2000), rate: 100, holes: 1},
+		{name: "125 Hz, cut to 1 s, 2 s missing", times: cutOut(rounded(evenly(0, 125, 12500), 1, 1e-9), 2500, 2750), rate: 125, holes: 1, repeated: 12152},
+		{name: "hole of 10 s", times: cutOut(evenly(0, 100, 5000), 1000, 2000), rate: 100, holes: 1},
 		{name: "hole of hours", times: append(evenly(0, 100, 1000), evenly(36000, 100, 1000)...), rate: 100, holes: 1},
-		{name: "lost rows are no holes", times: without(evenly(0, 1000, 3000), 1500, 1510), rate: 1000, relative: 0.004, wantUneven: true},
+		{name: "lost rows are no holes", times: cutOut(evenly(0, 1000, 3000), 1500, 1510), rate: 1000, relative: 0.004, wantUneven: true},
 		{name: "packets", times: packets, rate: 250, relative: 1e-3, wantUneven: true},
 		{name: "one step like 0 beside a long one", times: []float64{0, 5e-324, 100}, rate: 0.02, relative: 1, wantUneven: true},
 	} {
@@ -154,7 +154,7 @@ func TestUniformKeepsAStraightLine(t *testing.T) {
 }
 
 func TestUniformLeavesHolesAndMissingEmpty(t *testing.T) {
-	times := without(evenly(0, 100, 1000), 400, 601) // no rows from 4.00 to 6.00 s
+	times := cutOut(evenly(0, 100, 1000), 400, 601) // no rows from 4.00 to 6.00 s
 	values := make([]float64, len(times))
 	copy(values, times)
 	values[100] = nan // 1 s

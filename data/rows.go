@@ -59,7 +59,7 @@ func (t *table) rows(columns []column, each func(line int) error) error {
 		}
 		for i := range columns {
 			if c := &columns[i]; c.need == required && math.IsNaN(c.values[len(c.values)-1]) {
-				return t.fail(line, "", "%s is missing", c.name)
+				return t.fail(line, "every row needs a value there", "%s is missing", c.name)
 			}
 		}
 		if err := each(line); err != nil {
@@ -159,5 +159,5 @@ func (t *table) notA(c *column, line int, field string) error {
 	if c.stamps != nil {
 		kind = "time like that of the first row"
 	}
-	return t.fail(line, "", "%s is not a %s: \"%s\"", c.name, kind, Clean(field).Cut(40))
+	return t.fail(line, "leave a field empty where there is no value", "%s is not a %s: \"%s\"", c.name, kind, Clean(field).Cut(40))
 }

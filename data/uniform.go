@@ -44,7 +44,7 @@ func (r *Recording) Uniform() (Grid, [][]float64, error) {
 		return g, out, nil
 	}
 	n := math.Floor((times[c.Rows-1]-times[0])*c.Rate+snap) + 1
-	if limit := 1e6 + 20*float64(c.Rows); n > limit {
+	if n > mostSamples(c.Rows) {
 		return Grid{}, nil, &FileError{
 			File: r.Name.String(),
 			What: fmt.Sprintf("its holes, the longest of %s, would take %.3g samples at %.4g Hz; the file has %d", seconds(c.LongestStep), n, c.Rate, c.Rows),
@@ -53,16 +53,24 @@ func (r *Recording) Uniform() (Grid, [][]float64, error) {
 	}
 	g.N = int(n)
 	for i, ch := range r.Channels {
-		values := ch.Values
-		if len(lost) > 0 {
-			values = slices.Clone(values)
-			for _, k := range lost {
-				values[k] = math.NaN()
-			}
-		}
-		out[i] = resample(times, values, r.Time, p, g)
+		out[i] = resample(times, without(ch.Values, lost), r.Time, p, g)
 	}
 	return g, out, nil
+}
+
+// mostSamples is how many samples a recording of some rows may become.
+func mostSamples(rows int) float64 { return 1e6 + 20*float64(rows) }
+
+// without gives the values with those of the lost rows missing.
+func without(values []float64, lost []int) []float64 {
+	if len(lost) == 0 {
+		return values
+	}
+	values = slices.Clone(values)
+	for _, k := range lost {
+		values[k] = math.NaN()
+	}
+	return values
 }
 
 // tolerance is how far a row of an even clock may be from its place, s.
