@@ -25,12 +25,12 @@ func (c Conversion) Section(e Errors) casenote.Section {
 	}
 }
 
-// within is a value known to a half-width that is systematic: no random error.
+// within is a value known to a half-width, all of it systematic.
 func within(x, halfWidth float64) data.Estimate {
 	return data.Estimate{
 		Value:      x,
 		Total:      data.Interval{Low: x - halfWidth, High: x + halfWidth},
-		Random:     data.Interval{Low: x, High: x},
+		Random:     data.NoInterval(),
 		Identified: true,
 	}
 }
