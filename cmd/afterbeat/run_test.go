@@ -1,0 +1,153 @@
+package main
+
+import (
+	"bytes"
+	"encoding/json"
+	"fmt"
+	"math"
+	"os"
+	"path/filepath"
+	"strings"
+	"testing"
+
+	"afterbeat/data/casenote"
+)
+
+// result is what one command line gave.
+type result struct {
+	code        int
+	out, errout string
+}
+
+func afterbeat(t *testing.T, stdin string, args ...string) result {
+	t.Helper()
+	var out, errout bytes.Buffer
+	code := run(args, strings.NewReader(stdin), &out, &errout)
+	return result{code, out.String(), errout.String()}
+}
+
+// pulsing is a CSV of the named columns, each a pulse of 72/min for 20 s.
+func pulsing(columns ...string) string {
+	var b strings.Builder
+	b.WriteString("time_s," + strings.Join(columns, ",") + "\n")
+	for i := range 2000 {
+		at := float64(i) / 100
+		phase := math.Mod(1.2*at, 1)
+		fmt.Fprintf(&b, "%.2f", at)
+		for range columns {
+			fmt.Fprintf(&b, ",%.2f", 80+40*math.Exp(-3*phase)*(1-math.Exp(-20*phase)))
+		}
+		b.WriteString("\n")
+	}
+	return b.String()
+}
+
+func TestTwoEqualChannelsAreAPersonsChoice(t *testing.T) {
+	file := filepath.Join(t.TempDir(), "two.csv")
+	if err := os.WriteFile(file, []byte(pulsing("left_carotid_mmHg", "right_carotid_mmHg")), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	got := afterbeat(t, "", "fit", file)
+	if got.code != exitUsage || got.out != "" || !strings.Contains(got.errout, "--pressure") ||
+		!strings.Contains(got.errout, "left_carotid_mmHg or right_carotid_mmHg") {
+		t.Errorf("fit of two equal channels: %+v", got)
+	}
+	// Check needs no choice, and describes both.
+	got = afterbeat(t, "", "check", file, "--json")
+	if got.code != exitDone || strings.Count(got.out, `"found": true`) != 2 {
+		t.Errorf("check of two equal channels: %+v", got)
+	}
+	// Named, the pressure alone gives a time constant, and no fit.
+	got = afterbeat(t, "", "fit", file, "--pressure", "left_carotid", "--json")
+	var report struct {
+		Fits       []any `json:"fits"`
+		Estimators []struct {
+			Name string   `json:"name"`
+			Tau  *float64 `json:"tau_s"`
+		} `json:"estimators"`
+	}
+	if err := json.Unmarshal([]byte(got.out), &report); err != nil {
+		t.Fatal(err)
+	}
+	if got.code != exitDone || len(report.Fits) != 0 || len(report.Estimators) != 1 || report.Estimators[0].Tau == nil {
+		t.Errorf("fit of a pressure alone: code %d, %+v", got.code, report)
+	}
+}
+
+func TestStandardInput(t *testing.T) {
+	got := afterbeat(t, pulsing("abp_mmHg"), "check", "-")
+	if got.code != exitDone || !strings.HasPrefix(got.out, casenote.Caution) || !strings.Contains(got.out, "afterbeat check -") {
+		t.Errorf("check of standard input: %+v", got)
+	}
+}
+
+// An escape in a header reaches neither standard output nor standard error raw.
+func TestHeadersAreShownCleaned(t *testing.T) {
+	for _, args := range [][]string{{"check", "-"}, {"check", "-", "--json"}, {"fit", "-", "--pressure", "\x1b[2J"}} {
+		got := afterbeat(t, pulsing("abp\x1b]0;gotcha\a_mmHg"), args...)
+		if strings.ContainsAny(got.out+got.errout, "\x1b\a") {
+			t.Errorf("%q lets an escape through: %+v", args, got)
+		}
+	}
+}
+
+// The keys of study --json are a contract.
+func TestStudyKeys(t *testing.T) {
+	got := afterbeat(t, "", "--json")
+	if got.code != exitDone {
+		t.Fatalf("%+v", got)
+	}
+	var report any
+	if err := json.Unmarshal([]byte(got.out), &report); err != nil {
+		t.Fatal(err)
+	}
+	keys := map[string]bool{}
+	paths(report, "", keys)
+	golden(t, filepath.Join("testdata", "study.keys"), strings.Join(sortedKeys(keys), "\n")+"\n")
+}
+
+// The demo's note, of which the README shows a piece.
+func TestDemoNote(t *testing.T) {
+	got := afterbeat(t, "", "--ascii")
+	if got.code != exitDone {
+		t.Fatalf("%+v", got)
+	}
+	golden(t, filepath.Join("testdata", "demo.note.txt"), got.out)
+	for i, line := range strings.Split(got.out, "\n") {
+		if len(line) > 80 {
+			t.Errorf("line %d has %d columns", i+1, len(line))
+		}
+	}
+	for i := range len(got.out) {
+		if got.out[i] >= 0x80 {
+			t.Fatalf("byte %d of the ASCII note is %#x", i, got.out[i])
+		}
+	}
+}
+
+// The README shows a piece of the demo's note, and the commands it gives exist.
+func TestReadme(t *testing.T) {
+	content, err := os.ReadFile(filepath.Join("..", "..", "README.md"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	_, after, found := strings.Cut(string(content), "<!-- note: cut from cmd/afterbeat/testdata/demo.note.txt by a test -->\n```\n")
+	piece, _, closed := strings.Cut(after, "```\n<!-- end of note -->")
+	if !found || !closed || len(piece) < 200 {
+		t.Fatal("README shows no piece of the note")
+	}
+	note, err := os.ReadFile(filepath.Join("testdata", "demo.note.txt"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, part := range strings.Split(piece, "[...]\n") {
+		if !strings.Contains(string(note), part) {
+			t.Errorf("README shows what the demo's note does not hold:\n%s", part)
+		}
+	}
+	for _, command := range []string{"    go run ./cmd/afterbeat\n", "    go test ./...\n"} {
+		if !strings.Contains(string(content), command) {
+			t.Errorf("README lacks %q", command)
+		}
+	}
+}

@@ -1,0 +1,57 @@
+package study
+
+import (
+	"fmt"
+
+	"afterbeat/data"
+	"afterbeat/data/casenote"
+)
+
+// assumptionSection lists what was given or assumed beside the recording, with
+// the systematic errors that the total intervals carry.
+func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
+	s := casenote.Section{Title: "Given and assumed"}
+	delay := data.Estimate{Value: b.Delay.Value, Total: around(b.Delay.Value, b.Delay.Error), Random: data.NoInterval(), Identified: true}
+	s.Rows = append(s.Rows, casenote.Quantity("delay of pressure", delay, "s", origin(b.Delay.Stated)))
+	pv := outflow(b)
+	widths, _ := halfWidths(b.Intake.Case) // checked when the beats were cut
+	against := data.Estimate{Value: pv, Total: around(pv, widths["outflow-pressure"]), Random: data.NoInterval(), Identified: true}
+	s.Rows = append(s.Rows, casenote.Quantity("outflow pressure", against, "mmHg", origin(b.Intake.Case.OutflowPressure != nil)))
+	for _, k := range errorKinds() {
+		w := widths[k.name]
+		if k.name == "flow" {
+			w = b.FlowInfo.Error
+		}
+		s.Rows = append(s.Rows, casenote.Words("95 % error, "+k.name, k.words(w)+stated(b.Intake.Case.Error[k.name] != "")))
+	}
+	if b.Pressure.Count >= 2 {
+		s.Rows = append(s.Rows, casenote.Words("replicates", fmt.Sprintf("%d, seed %d", replicates, seed)))
+	}
+	return s
+}
+
+// words writes the half-width of an error.
+func (k errorKind) words(w float64) string {
+	if k.relative {
+		return fmt.Sprintf("+-%.3g %%", 100*w)
+	}
+	return fmt.Sprintf("+-%.3g %s", w, k.unit)
+}
+
+func stated(given bool) string {
+	if given {
+		return " (given)"
+	}
+	return " (assumed)"
+}
+
+func origin(given bool) data.Origin {
+	if given {
+		return data.Measured
+	}
+	return data.Assumed
+}
+
+func around(v, halfWidth float64) data.Interval {
+	return data.Interval{Low: v - halfWidth, High: v + halfWidth}
+}

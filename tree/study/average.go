@@ -1,0 +1,94 @@
+package study
+
+import (
+	"afterbeat/data"
+	"afterbeat/data/beat"
+	"afterbeat/data/casenote"
+)
+
+// some is the average beat of the pressure, or of the flow where there is none.
+func (b Beats) some() beat.Average {
+	if b.Pressure.Count > 0 {
+		return b.Pressure
+	}
+	return b.Flow
+}
+
+// averageSection describes the average beat and its indices.
+func (b Beats) averageSection() casenote.Section {
+	s := casenote.Section{Title: "Average beat"}
+	exact := func(label string, v float64, unit string) {
+		s.Rows = append(s.Rows, casenote.Quantity(label, data.Exact(v), unit, data.Measured))
+	}
+	some := b.some()
+	exact("beats averaged", float64(some.Count), "")
+	if dropped := beat.Tally(b.Beats); dropped != "" {
+		s.Rows = append(s.Rows, casenote.Words("thrown away", dropped))
+	}
+	if b.Ensemble.Dropped > 0 {
+		exact("cut by an end or a gap", float64(b.Ensemble.Dropped), "")
+	}
+	exact("samples", float64(len(some.Period.Samples)), "")
+	exact("period", some.Period.Duration(), "s")
+	if b.Pressure.Count > 0 {
+		exact("pressure, end less start", b.Pressure.EndMinusStart, "mmHg")
+	}
+	s.Tables = append(s.Tables, b.indexTable())
+	return s
+}
+
+// indexTable has a row an index and a column a signal. An undefined index has
+// its reason below the table.
+func (b Beats) indexTable() casenote.Table {
+	t := casenote.Table{Header: []string{"index of the average beat"}}
+	var signals []beat.Measures
+	add := func(name, unit string, a beat.Average) {
+		if a.Count > 0 {
+			t.Header = append(t.Header, name+", "+unit)
+			signals = append(signals, beat.Measure(a.Period))
+		}
+	}
+	add("pressure", b.pressureUnit(), b.Pressure)
+	add("flow", b.flowUnit(), b.Flow)
+	for _, row := range indexRows() {
+		cells := []casenote.Cell{{Words: data.Clean(row.label)}}
+		for _, m := range signals {
+			e := data.Estimate{Value: row.of(m), Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: m.Remark(row.index)}
+			cells = append(cells, casenote.Cell{Number: &casenote.Number{Estimate: e, Origin: data.Measured}})
+		}
+		t.Rows = append(t.Rows, cells)
+	}
+	return t
+}
+
+// indexRow is one row of the table of indices.
+type indexRow struct {
+	label string
+	index beat.Index // "" for one that is always defined
+	of    func(beat.Measures) float64
+}
+
+func indexRows() []indexRow {
+	return []indexRow{
+		{"mean", "", func(m beat.Measures) float64 { return m.Mean }},
+		{"maximum", "", func(m beat.Measures) float64 { return m.Max }},
+		{"minimum", "", func(m beat.Measures) float64 { return m.Min }},
+		{"maximum less minimum", "", func(m beat.Measures) float64 { return m.Amplitude }},
+		{"Gosling PI, (max-min)/mean, no unit", beat.GoslingPI, func(m beat.Measures) float64 { return m.GoslingPI }},
+		{"Pourcelot RI, (max-min)/max, no unit", beat.PourcelotRI, func(m beat.Measures) float64 { return m.PourcelotRI }},
+		{"S/D, max/min, no unit", beat.SystolicRatio, func(m beat.Measures) float64 { return m.SystolicRatio }},
+		{"form factor, (mean-min)/(max-min), no unit", beat.FormFactor, func(m beat.Measures) float64 { return m.FormFactor }},
+		{"pulsatile power index, sum (A_k/A_0)^2, no unit", beat.PulsatilePower, func(m beat.Measures) float64 { return m.PulsatilePower }},
+		{"time to peak, s", beat.TimeToPeak, func(m beat.Measures) float64 { return m.TimeToPeak }},
+		{"maximum slope, per s", beat.MaxSlope, func(m beat.Measures) float64 { return m.MaxSlope }},
+		{"augmentation index, no unit", beat.Augmentation, func(m beat.Measures) float64 { return m.Augmentation }},
+	}
+}
+
+// pressureUnit is the unit of the pressure: its own where it is uncalibrated.
+func (b Beats) pressureUnit() string {
+	if ch, ok := b.Intake.Chosen(b.Intake.Selection.Pressure); ok && !ch.Unit.Calibrated {
+		return ch.Unit.Name
+	}
+	return "mmHg"
+}

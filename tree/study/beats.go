@@ -1,0 +1,253 @@
+package study
+
+import (
+	"context"
+	"math"
+	"slices"
+
+	"afterbeat/data"
+	"afterbeat/data/beat"
+	"afterbeat/data/doppler"
+	"afterbeat/data/unit"
+)
+
+// Beats is the recording cut into beats, and the average beat.
+type Beats struct {
+	Intake Intake
+	// Pulses has one entry a channel of the recording; the zero Pulse, with a
+	// Reason, for channels that are no pressure, flow or velocity.
+	Pulses []beat.Pulse
+	// Lead is the channel whose onsets cut the beats; -1 where no chosen
+	// channel has a pulse.
+	Lead int
+	// Beats are those of the leading channel, with the reasons for rejection
+	// of both chosen channels.
+	Beats    []beat.Beat
+	Ensemble beat.Ensemble
+	// Pressure and Flow are the average beats; Flow has no samples without a
+	// flow, Pressure none without a pressure.
+	Pressure, Flow beat.Average
+	FlowInfo       FlowInfo
+	Delay          Delay
+	Reason         string // why there is no average beat; empty where there is one
+	Warnings       []data.Warning
+}
+
+// FlowInfo says where the flow of the average beat comes from.
+type FlowInfo struct {
+	Channel          int // index of the flow or velocity channel; -1 where there is none
+	PerArea          bool
+	Site             data.Site
+	Error            float64             // relative 95 % half-width of its systematic error
+	Conversion       *doppler.Conversion // of a velocity with a diameter; else nil
+	ConversionErrors doppler.Errors
+}
+
+// Delay is by how much pressure is later than flow, s.
+type Delay struct {
+	Value  float64
+	Stated bool
+	Error  float64 // 95 % half-width, s
+}
+
+// FindBeats finds the pulse of every channel, and cuts the chosen ones into
+// beats by the onsets of the leading one: the pressure, or else the flow.
+func FindBeats(ctx context.Context, t Intake) (Beats, error) {
+	b := Beats{Intake: t, Lead: -1}
+	seconds, stated, err := delay(t.Case)
+	if err != nil {
+		return b, err
+	}
+	widths, err := halfWidths(t.Case)
+	if err != nil {
+		return b, err
+	}
+	b.Delay = Delay{Value: seconds, Stated: stated, Error: widths["delay"]}
+	pressure, flow, err := b.signals(widths)
+	if err != nil {
+		return b, err
+	}
+	for _, ch := range t.Channels {
+		if err := ctx.Err(); err != nil {
+			return b, err
+		}
+		b.Pulses = append(b.Pulses, pulse(ch, t.Grid.Rate, t.Case.OneBeat))
+	}
+	b.cut(pressure, flow)
+	return b, nil
+}
+
+// pulse finds the beats of a channel that can have some.
+func pulse(ch data.Channel, rate float64, oneBeat bool) beat.Pulse {
+	switch {
+	case !pulsatile(ch.Quantity):
+		return beat.Pulse{Reason: "not a pressure, flow or velocity"}
+	case oneBeat:
+		return onePulse(ch, rate)
+	}
+	return beat.Find(ch.Values, rate, ch.Quantity)
+}
+
+// onePulse takes all of a channel as one beat.
+func onePulse(ch data.Channel, rate float64) beat.Pulse {
+	if slices.ContainsFunc(ch.Values, math.IsNaN) {
+		return beat.Pulse{Reason: "one period needs every sample, and some are missing"}
+	}
+	whole := data.Period{Samples: ch.Values, Rate: rate}
+	low, high := whole.Extremes()
+	return beat.Pulse{
+		Found: true, Quantity: ch.Quantity, Rate: rate,
+		Beats:  []beat.Beat{{From: 0, To: len(ch.Values), Max: high, Min: low, Mean: whole.Mean()}},
+		Period: whole.Duration(), PeriodCV: math.NaN(),
+		Systolic: high, Diastolic: low, Mean: whole.Mean(),
+		Rhythms: []beat.Rhythm{{Frequency: 1 / whole.Duration(), PulseAmplitude: high - low}},
+	}
+}
+
+// signals are the pressure and the flow on the grid; nil where there is none.
+func (b *Beats) signals(widths map[string]float64) (pressure, flow []float64, err error) {
+	t := b.Intake
+	if ch, ok := t.Chosen(t.Selection.Pressure); ok {
+		pressure = ch.Values
+	}
+	b.FlowInfo = FlowInfo{Channel: -1}
+	ch, ok := t.flowChannel()
+	if !ok {
+		return pressure, nil, nil
+	}
+	b.FlowInfo = FlowInfo{Channel: t.Selection.Flow, Site: ch.Site, Error: widths["flow"]}
+	if ch.Quantity != unit.Velocity {
+		return pressure, ch.Values, nil
+	}
+	b.FlowInfo.Channel = t.Selection.Velocity
+	flow, err = b.fromVelocity(ch, widths)
+	return pressure, flow, err
+}
+
+// fromVelocity is the flow that a velocity makes with the diameter of the case,
+// or the velocity itself, as flow per unit area, where it has none.
+func (b *Beats) fromVelocity(ch data.Channel, widths map[string]float64) ([]float64, error) {
+	c := b.Intake.Case
+	if c.DiameterCM == nil {
+		b.FlowInfo.PerArea = true
+		if c.AngleDeg != nil || c.Profile != "" {
+			return nil, &ChoiceError{Key: "diameter_cm", What: "an angle or a profile was given without the diameter", Hint: "state the diameter, in cm"}
+		}
+		b.Warnings = append(b.Warnings, data.Warning{
+			Code: data.CodePerArea, Channel: ch.Name,
+			Text: "velocity without a diameter: R, C and Zc are per unit area of the vessel",
+			Cure: "--diameter-cm D, where the velocity was measured",
+		})
+		return ch.Values, nil
+	}
+	k, err := doppler.ParseProfile(c.Profile)
+	if err != nil {
+		return nil, &ChoiceError{Key: "profile", What: err.Error()}
+	}
+	if !ch.Unit.Calibrated {
+		return ch.Values, nil // refused with its reason by the fit
+	}
+	settings := doppler.Settings{Diameter: *c.DiameterCM, Factor: k}
+	if c.AngleDeg != nil {
+		settings.Angle = *c.AngleDeg
+	}
+	flow, conversion, err := doppler.ToFlow(ch, settings)
+	if err != nil {
+		return nil, &ChoiceError{Key: "diameter_cm", What: err.Error()}
+	}
+	b.FlowInfo.Conversion = &conversion
+	b.FlowInfo.ConversionErrors = doppler.Errors{Diameter: widths["diameter"], Angle: widths["angle"]}
+	b.Warnings = append(b.Warnings, conversion.Warnings...)
+	if c.Error["flow"] == "" {
+		b.FlowInfo.Error = conversion.RelativeError(b.FlowInfo.ConversionErrors)
+	}
+	return flow.Values, nil
+}
+
+// chosen are the indices of the channels in use: the pressure first.
+func (b Beats) chosen() []int {
+	return slices.DeleteFunc([]int{b.Intake.Selection.Pressure, b.FlowInfo.Channel}, func(i int) bool { return i < 0 })
+}
+
+// cut makes the ensemble of beats and its averages.
+func (b *Beats) cut(pressure, flow []float64) {
+	t := b.Intake
+	chosen := b.chosen()
+	if t.Ambiguous != nil {
+		b.Reason = t.Ambiguous.Error()
+		if why := b.NoPulse(); why != "" {
+			b.Reason = why
+		}
+		return
+	}
+	if len(chosen) == 0 {
+		b.Reason = "no channel is a pressure, a flow or a velocity of an artery"
+		return
+	}
+	for _, i := range chosen {
+		if p := b.Pulses[i]; !p.Found {
+			b.Reason = "no pulse in " + t.Channels[i].Name.String() + ": " + p.Reason
+			return
+		}
+	}
+	b.Lead = chosen[0]
+	b.Beats = b.Pulses[b.Lead].Beats
+	signals := [][]float64{pressure, flow}
+	switch {
+	case pressure == nil:
+		signals = signals[1:]
+	case flow == nil:
+		signals = signals[:1]
+	default:
+		b.Beats = beat.Match(b.Pulses[b.Lead], b.Pulses[b.FlowInfo.Channel])
+	}
+	if t.Case.OneBeat {
+		if len(signals) > 1 {
+			signals[1] = later(flow, b.Delay.Value*t.Grid.Rate)
+		}
+		b.Ensemble = beat.OneBeat(signals[0], t.Grid.Rate, signals[1:]...)
+	} else {
+		b.Ensemble = beat.Cut(b.Beats, t.Grid.Rate, delayed(signals, b.Delay.Value)...)
+	}
+	b.average(pressure != nil, flow != nil)
+}
+
+// delayed makes signals of a leading channel and, where there is a second, of
+// the flow that the lead is late behind.
+func delayed(signals [][]float64, delay float64) []beat.Signal {
+	out := []beat.Signal{{Values: signals[0]}}
+	if len(signals) > 1 {
+		out = append(out, beat.Signal{Values: signals[1], Delay: -delay})
+	}
+	return out
+}
+
+// average averages the beats of the ensemble.
+func (b *Beats) average(hasPressure, hasFlow bool) {
+	if len(b.Ensemble.Used) == 0 {
+		b.Reason = "no usable beat: " + beat.Tally(b.Beats)
+		return
+	}
+	next := 0
+	if hasPressure {
+		lead := b.Intake.Channels[b.Lead]
+		b.Pressure = b.Ensemble.Average(next)
+		b.Warnings = append(b.Warnings, b.Pressure.Closed(lead.Name, lead.Unit.Calibrated)...)
+		next++
+	}
+	if hasFlow {
+		b.Flow = b.Ensemble.Average(next)
+	}
+}
+
+// meanOfValid is the mean of the samples that have a value; NaN if none has.
+func meanOfValid(values []float64) float64 {
+	sum, n := 0.0, 0
+	for _, v := range values {
+		if !math.IsNaN(v) {
+			sum += v
+			n++
+		}
+	}
+	return sum / float64(n)
+}

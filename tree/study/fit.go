@@ -1,0 +1,220 @@
+package study
+
+import (
+	"context"
+	"fmt"
+	"slices"
+
+	"afterbeat/data"
+	"afterbeat/data/casefile"
+	"afterbeat/data/unit"
+	"afterbeat/fitting"
+)
+
+// Fit is what the average beat says about the load.
+type Fit struct {
+	Beats       Beats
+	Results     []fitting.Result
+	Estimators  []fitting.Estimator
+	Recommended fitting.Recommendation
+	// Chosen is the index of the result that goes downstream: the model that
+	// the case names, else the recommended one; -1 where nothing was fitted.
+	Chosen int
+	// Sensitivity is what one assumption at a time does to the chosen fit.
+	Sensitivity []Sensitivity
+	Reason      string // why nothing could be estimated; empty where something was
+	Warnings    []data.Warning
+}
+
+// Sensitivity is a chosen fit with one assumption moved.
+type Sensitivity struct {
+	Assumption string // "outflow-pressure", "delay"
+	Change     string // "+10 mmHg"
+	Values     fitting.Values
+	// Percent is the change of R, C and Zc, in percent of the chosen fit's.
+	Percent fitting.Values
+}
+
+// FitLoad fits every model to the average beat, and where there is no flow
+// estimates what the pressure alone allows. A model that the case names is the
+// chosen one.
+func FitLoad(ctx context.Context, b Beats) (Fit, error) {
+	f := Fit{Beats: b, Chosen: -1, Reason: b.Reason}
+	if err := checkModel(b.Intake.Case); err != nil {
+		return f, err
+	}
+	if b.Intake.Ambiguous != nil && b.NoPulse() == "" {
+		return f, b.Intake.Ambiguous
+	}
+	if f.Reason != "" {
+		return f, nil
+	}
+	pressure, hasPressure := b.Intake.Chosen(b.Intake.Selection.Pressure)
+	switch {
+	case !hasPressure:
+		f.Reason = "no arterial pressure: a fit needs one; name it with --pressure"
+		return f, nil
+	case !pressure.Unit.Calibrated:
+		f.Reason = fmt.Sprintf("%s is in %s, without a scale: state --unit %s=mmHg with --scale and --offset", pressure.Name, pressure.Unit.Name, pressure.Name)
+		return f, nil
+	}
+	flow, hasFlow := b.Intake.flowChannel()
+	if !hasFlow {
+		return f.fromPressureAlone(), nil
+	}
+	if !flow.Unit.Calibrated {
+		f.Reason = fmt.Sprintf("%s is in %s, without a scale: state --unit and --scale", flow.Name, flow.Unit.Name)
+		return f, nil
+	}
+	beats, err := fitData(b)
+	if err != nil {
+		return f, err
+	}
+	settings, err := fitSettings(b.Intake.Case)
+	if err != nil {
+		return f, err
+	}
+	for _, m := range fitting.Models() {
+		r, err := fitting.FitBeat(ctx, m, beats, settings)
+		if err != nil {
+			return f, err
+		}
+		f.Results = append(f.Results, r)
+	}
+	return f.conclude(ctx, beats)
+}
+
+// fromPressureAlone estimates the time constant of diastole, all that a
+// pressure without a flow allows.
+func (f Fit) fromPressureAlone() Fit {
+	decay := fitting.Decay(f.Beats.Pressure.Period, outflow(f.Beats))
+	f.Estimators = append(f.Estimators, decay)
+	if decay.Reason != "" {
+		f.Reason = "no flow to fit with, and no time constant either: " + decay.Reason
+		return f
+	}
+	f.Warnings = append(f.Warnings, data.Warning{
+		Code: data.CodeNoFlow,
+		Text: "a pressure alone gives the time constant of diastole, and no R or C",
+		Cure: "a flow or a velocity recorded with it, or a cardiac output even within 20 %, would turn it into R and C",
+	})
+	return f
+}
+
+// conclude recommends, chooses, and moves the assumptions about the choice.
+func (f Fit) conclude(ctx context.Context, d fitting.Beats) (Fit, error) {
+	f.Recommended = fitting.Recommend(f.Results)
+	wanted := f.Recommended.Model
+	if f.named() {
+		wanted = f.Beats.Intake.Case.Model
+	}
+	f.Chosen = slices.IndexFunc(f.Results, func(r fitting.Result) bool { return r.Model.Name == wanted })
+	decay := fitting.Decay(f.Beats.Pressure.Period, d.OutflowPressure)
+	if f.Chosen < 0 {
+		f.Estimators = append(f.Estimators, decay)
+		for _, r := range f.Results {
+			f.Warnings = append(f.Warnings, r.Warnings...)
+		}
+		return f, nil
+	}
+	chosen := f.Results[f.Chosen]
+	f.Estimators = append(f.Estimators, decay.WithResistance(chosen.TotalResistance.Value))
+	f.Warnings = chosen.Warnings
+	var err error
+	f.Sensitivity, err = sensitivities(ctx, chosen, d)
+	f.Warnings = append(f.Warnings, delayWarnings(f)...)
+	return f, err
+}
+
+// delayWarnings warns of a delay that was not stated, with what 10 ms of it do.
+func delayWarnings(f Fit) []data.Warning {
+	if f.Beats.Delay.Stated || f.Beats.Intake.Case.OneBeat {
+		return nil
+	}
+	text := "the delay of pressure behind flow was not measured and is taken as 0"
+	for _, s := range f.Sensitivity {
+		if s.Assumption == "delay" {
+			text += fmt.Sprintf("; %s would change C by %+.0f %%", s.Change, s.Percent.C)
+			if s.Values.Zc > 0 {
+				text += fmt.Sprintf(" and Zc by %+.0f %%", s.Percent.Zc)
+			}
+		}
+	}
+	return []data.Warning{{
+		Code: data.CodeDelay, Text: text,
+		Cure: "measure it on the recording system and state it: --delay S, positive where pressure is late",
+	}}
+}
+
+// named tells whether a person named the model.
+func (f Fit) named() bool {
+	m := f.Beats.Intake.Case.Model
+	return m != "" && m != "all"
+}
+
+// outflow is the pressure that the flow runs against, mmHg.
+func outflow(b Beats) float64 {
+	if p := b.Intake.Case.OutflowPressure; p != nil {
+		return *p
+	}
+	return 0
+}
+
+// fitData hands the beats to the fit.
+func fitData(b Beats) (fitting.Beats, error) {
+	widths, err := halfWidths(b.Intake.Case)
+	if err != nil {
+		return fitting.Beats{}, err
+	}
+	return fitting.Beats{
+		Rate:            b.Ensemble.Rate,
+		Pressure:        b.Ensemble.Beats[0],
+		Flow:            b.Ensemble.Beats[1],
+		OutflowPressure: outflow(b),
+		OutflowMeasured: b.Intake.Case.OutflowPressure != nil,
+		Site:            siteOfFit(b.FlowInfo.Site),
+		PerArea:         b.FlowInfo.PerArea,
+		Systematic: fitting.Systematic{
+			Flow:            b.FlowInfo.Error,
+			PressureScale:   widths["pressure-scale"],
+			PressureOffset:  widths["pressure-offset"],
+			Delay:           widths["delay"],
+			OutflowPressure: widths["outflow-pressure"],
+		},
+	}, nil
+}
+
+// siteOfFit names the load by where its flow was measured: root for all of the
+// heart's output, else the site itself.
+func siteOfFit(s data.Site) data.Site {
+	if s.Systemic() {
+		return data.SiteRoot
+	}
+	return s
+}
+
+// flowUnit is the unit of the flow that was fitted.
+func (b Beats) flowUnit() string {
+	if b.FlowInfo.PerArea {
+		return unit.Internal(unit.Velocity).Name
+	}
+	return unit.Internal(unit.Flow).Name
+}
+
+// fitSettings are the replicates and the seed that the case asks for.
+func fitSettings(c casefile.Case) (fitting.Settings, error) {
+	var s fitting.Settings
+	if n := c.Replicates; n != nil {
+		if *n < 1 || *n > 1_000_000 {
+			return s, &ChoiceError{Key: "replicates", What: fmt.Sprintf("%d is not between 1 and 1000000", *n)}
+		}
+		s.Replicates = *n
+	}
+	if n := c.Seed; n != nil {
+		if *n < 1 {
+			return s, &ChoiceError{Key: "seed", What: fmt.Sprintf("%d is not a whole number from 1", *n)}
+		}
+		s.Seed = uint64(*n)
+	}
+	return s, nil
+}

@@ -1,0 +1,52 @@
+package study
+
+import (
+	"bytes"
+	"fmt"
+	"path"
+	"strings"
+
+	"afterbeat/data"
+	"afterbeat/data/casefile"
+)
+
+// Inputs is what a study starts from: the choices, the recording as read, and
+// the stretches that a file says to leave out.
+type Inputs struct {
+	Case      casefile.Case
+	Recording *data.Recording
+	Excluded  []data.Span
+}
+
+// Read reads the files that a case names. read returns the bytes of a file by
+// the name that the case gives it; Case.Recording itself is given to it too.
+func Read(c casefile.Case, read func(name string) ([]byte, error)) (Inputs, error) {
+	in := Inputs{Case: c}
+	if err := unitOf(c); err != nil {
+		return in, err
+	}
+	rate := 0.0
+	if c.Rate != nil {
+		if rate = *c.Rate; !(rate > 0) {
+			return in, &ChoiceError{Key: "rate", What: fmt.Sprintf("%v is not a rate above 0 Hz", rate)}
+		}
+	}
+	content, err := read(c.Recording)
+	if err != nil {
+		return in, err
+	}
+	in.Recording, err = data.ReadCSV(c.Recording, bytes.NewReader(content), data.ReadOptions{
+		Time: c.Time, Rate: rate, Units: c.Unit,
+	})
+	if err != nil || c.Exclude == "" {
+		return in, err
+	}
+	if content, err = read(c.Exclude); err != nil {
+		return in, err
+	}
+	in.Excluded, err = data.ReadSpans(baseName(c.Exclude), bytes.NewReader(content))
+	return in, err
+}
+
+// baseName is the file name without its folder: a note carries no path.
+func baseName(name string) string { return path.Base(strings.ReplaceAll(name, `\`, "/")) }

@@ -1,0 +1,149 @@
+package study
+
+import (
+	"fmt"
+	"math"
+
+	"afterbeat/data"
+	"afterbeat/data/casenote"
+	"afterbeat/fitting"
+)
+
+// checkSections describe the pulse of every channel that can have one.
+func (b Beats) checkSections() []casenote.Section {
+	var out []casenote.Section
+	for i, ch := range b.Intake.Channels {
+		if pulsatile(ch.Quantity) {
+			out = append(out, b.Pulses[i].Section(ch.Name, ch.Unit.Name))
+		}
+	}
+	return out
+}
+
+// sections describe the beats that a study uses: those of the chosen channels,
+// what was thrown away and why, and the average beat.
+func (b Beats) sections() []casenote.Section {
+	var out []casenote.Section
+	for _, i := range b.chosen() {
+		ch := b.Intake.Channels[i]
+		out = append(out, b.Pulses[i].Section(ch.Name, ch.Unit.Name))
+	}
+	if b.FlowInfo.Conversion != nil {
+		out = append(out, b.FlowInfo.Conversion.Section(b.FlowInfo.ConversionErrors))
+	}
+	if b.Reason != "" {
+		return append(out, casenote.Section{Title: "Average beat", Words: []data.Text{data.Clean("There is none: " + b.Reason + ".")}})
+	}
+	return append(out, b.averageSection())
+}
+
+// sections describe every fit, the estimators beside them, what the assumptions
+// do, and the recommendation.
+func (f Fit) sections() []casenote.Section {
+	settings, _ := fitSettings(f.Beats.Intake.Case) // checked before the fit
+	settings = settings.WithDefaults()
+	out := []casenote.Section{f.Beats.assumptionSection(int(settings.Seed), settings.Replicates)}
+	if f.Reason != "" {
+		return append(out, casenote.Section{Title: "Fit", Words: []data.Text{data.Clean("There is none: " + f.Reason + ".")}})
+	}
+	for _, r := range f.Results {
+		out = append(out, r.Section())
+	}
+	if len(f.Results) > 0 {
+		out = append(out, f.choiceSection(), f.sensitivitySection())
+	}
+	return append(out, f.estimatorSection())
+}
+
+// choiceSection names the fit that goes downstream, and the recommended one.
+func (f Fit) choiceSection() casenote.Section {
+	s := casenote.Section{Title: "Which model", Tables: []casenote.Table{f.modelTable()}}
+	if f.Recommended.Model == "" {
+		s.Rows = append(s.Rows, casenote.Words("recommended", "none: "+f.Recommended.Why))
+	} else {
+		s.Rows = append(s.Rows, casenote.Words("recommended", f.Recommended.Model+", basis "+f.Recommended.Basis+": "+f.Recommended.Why))
+	}
+	if f.Chosen >= 0 {
+		by := "as recommended"
+		if f.named() {
+			by = "by the person"
+		}
+		s.Rows = append(s.Rows, casenote.Words("used below", f.Results[f.Chosen].Model.Name+", "+by))
+	}
+	return s
+}
+
+func (f Fit) modelTable() casenote.Table {
+	t := casenote.Table{Header: []string{"model", "rms residual, mmHg", "AICc", "BIC"}}
+	for _, r := range f.Results {
+		if math.IsNaN(r.AICc) {
+			t.Foot = "AICc and BIC undefined: " + r.CriterionReason + "."
+		}
+		t.Rows = append(t.Rows, []casenote.Cell{{Words: data.Clean(r.Model.Name)}, plain(r.RMSE), plain(r.AICc), plain(r.BIC)})
+	}
+	return t
+}
+
+// sensitivitySection says what one assumption at a time does to the fit used.
+func (f Fit) sensitivitySection() casenote.Section {
+	t := casenote.Table{Header: []string{"assumption", "change", "R, %", "C, %", "Zc, %"}}
+	for _, s := range f.Sensitivity {
+		t.Rows = append(t.Rows, []casenote.Cell{
+			{Words: data.Clean(s.Assumption)}, {Words: data.Clean(s.Change)},
+			plain(s.Percent.R), plain(s.Percent.C), plain(s.Percent.Zc),
+		})
+	}
+	return casenote.Section{
+		Title:  "What one assumption does",
+		Words:  []data.Text{data.Clean("Change of the fit used, when one assumption is moved and all others stay.")},
+		Tables: []casenote.Table{t},
+	}
+}
+
+func (f Fit) estimatorSection() casenote.Section {
+	t := casenote.Table{Header: []string{"method", "tau, s", "R, " + f.unitOf("R"), "C, " + f.unitOf("C"), "remark"}}
+	for _, e := range f.Estimators {
+		t.Rows = append(t.Rows, []casenote.Cell{
+			{Words: data.Clean(e.Name)}, plain(e.Tau), plain(e.R), plain(e.C), {Words: data.Clean(remark(e))},
+		})
+	}
+	return casenote.Section{Title: "Other ways to the same numbers", Tables: []casenote.Table{t}}
+}
+
+func remark(e fitting.Estimator) string {
+	if e.Reason != "" {
+		return e.Reason
+	}
+	return "no interval"
+}
+
+// unitOf is the unit of a parameter of the fits.
+func (f Fit) unitOf(parameter string) string {
+	for _, r := range f.Results {
+		if p, ok := r.Parameter(parameter); ok {
+			return p.Unit
+		}
+	}
+	return map[string]string{"R": "mmHg s/mL", "C": "mL/mmHg"}[parameter]
+}
+
+// plain is a cell of a number that carries no interval of its own.
+func plain(v float64) casenote.Cell {
+	e := data.Estimate{Value: v, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true}
+	return casenote.Cell{Number: &casenote.Number{Estimate: e, Origin: data.Estimated}}
+}
+
+// sections set the native state beside the supported ones.
+func (c Comparison) sections() []casenote.Section {
+	if c.Reason != "" {
+		return []casenote.Section{{
+			Title: "Native against supported",
+			Words: []data.Text{data.Clean(fmt.Sprintf("There is no comparison: %s.", c.Reason))},
+		}}
+	}
+	var out []casenote.Section
+	for _, a := range c.Answers {
+		out = append(out, a.Sections()...)
+	}
+	return append(out, c.Answers[0].HeldSection())
+}

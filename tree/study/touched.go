@@ -1,0 +1,39 @@
+package study
+
+import (
+	"reflect"
+
+	"afterbeat/data/casefile"
+)
+
+// firstTouched is the first stage that the change from a to b bears on;
+// StageDone where it bears on none.
+func firstTouched(a, b casefile.Case) Stage {
+	a, b = withoutWords(a), withoutWords(b)
+	if same(a, b) {
+		return StageDone
+	}
+	a.Share, b.Share = nil, nil
+	if same(a, b) {
+		return StageSupport
+	}
+	if same(withoutFit(a), withoutFit(b)) {
+		return StageFit
+	}
+	return StageIntake
+}
+
+// withoutWords is the case without what changes no number.
+func withoutWords(c casefile.Case) casefile.Case {
+	c.Label = ""
+	return c
+}
+
+// withoutFit is the case without the choices that bear on the fit and on what
+// follows from it, but on nothing before.
+func withoutFit(c casefile.Case) casefile.Case {
+	c.Model, c.OutflowPressure, c.Replicates, c.Seed = "", nil, nil, nil
+	return c
+}
+
+func same(a, b casefile.Case) bool { return reflect.DeepEqual(a, b) }
