@@ -10,6 +10,7 @@ import (
 const (
 	augmentationSmoothing = 0.02 // s, width of each of two running means
 	leastProminence       = 0.05 // of the steepest slope, by which the slope must turn
+	upstrokePart          = 0.5  // of the steepest slope, that the first upstroke reaches
 	ejectionPart          = 0.5  // of the beat, after which no inflection is sought
 )
 
@@ -24,11 +25,15 @@ func augmentation(p data.Period) (index float64, why string) {
 	}
 	x, slope := smoothedSlope(p)
 	top := peak(x)
-	steep := peak(slope[:top+1])
-	if slope[steep] <= 0 {
+	most := slope[peak(slope[:top+1])]
+	if most <= 0 {
 		return math.NaN(), "the beat does not begin with a rise"
 	}
-	least := leastProminence * slope[steep]
+	least := leastProminence * most
+	steep := 0 // where the first upstroke is steepest
+	for slope[steep] < upstrokePart*most || steep < top && slope[steep+1] > slope[steep] {
+		steep++
+	}
 	if i, ok := turn(slope[steep:top+1], least); ok {
 		for i > 0 && slope[steep+i] < 0 { // a first peak of its own
 			i--

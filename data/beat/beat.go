@@ -55,11 +55,13 @@ const (
 	// Shape: it correlates with the median beat by less than 0.9 (an
 	// assumption), and its correlation stands out from those of other beats.
 	Shape Reason = "shape"
+	// ByHand: a person left it out.
+	ByHand Reason = "by hand"
 )
 
 // Reasons lists every reason, in the order of tables.
 func Reasons() []Reason {
-	return []Reason{Gap, Early, AfterEarly, AfterPause, TooShort, TooLong, Amplitude, Level, Shape}
+	return []Reason{Gap, Early, AfterEarly, AfterPause, TooShort, TooLong, Amplitude, Level, Shape, ByHand}
 }
 
 // measure takes the extremes and the mean of the samples of each beat.

@@ -36,8 +36,7 @@ type window struct {
 }
 
 // periods finds the period of each window of the trace. ok tells whether the
-// windows make a pulse: two in a row that agree, or any where there are fewer
-// than three.
+// windows make a pulse: two in a row that agree, or the only one.
 func (t *trace) periods() (windows []window, ok bool) {
 	z := t.slope()
 	fs := t.rateOfCoarse()
@@ -67,10 +66,7 @@ func consistent(windows []window) bool {
 		if w.period == 0 {
 			continue
 		}
-		if len(windows) < 3 {
-			return true
-		}
-		if i > 0 && math.Abs(windows[i-1].period-w.period) <= agreement*w.period {
+		if len(windows) == 1 || i > 0 && math.Abs(windows[i-1].period-w.period) <= agreement*w.period {
 			return true
 		}
 	}
