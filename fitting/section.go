@@ -28,15 +28,16 @@ func (r Result) Section() casenote.Section {
 	return s
 }
 
-// title tells whose load it is: the body's, or that of one bed.
+// title names the model and tells whose load it is: the body's, or that of one
+// bed.
 func (r Result) title() string {
 	site := string(r.Site)
 	if site == "" {
 		site = string(data.SiteOther)
 	}
-	title := "regional load: " + site
+	title := "Fit of " + r.Model.Name + ", regional load: " + site
 	if r.Site.Systemic() {
-		title = "systemic load"
+		title = "Fit of " + r.Model.Name + ", systemic load"
 	}
 	if r.PerArea {
 		title += ", per unit area"

@@ -11,7 +11,7 @@ func TestSection(t *testing.T) {
 	b := noisy(160, 12, 16)
 	b.Systematic = someErrors
 	s := fit(t, model(t, "wk3"), b, Settings{Replicates: 100}).Section()
-	if s.Title != "systemic load" || !strings.Contains(s.Words[0].String(), "wk3 (Westerhof 1969), fitted to the average beat") {
+	if s.Title != "Fit of wk3, systemic load" || !strings.Contains(s.Words[0].String(), "wk3 (Westerhof 1969), fitted to the average beat") {
 		t.Errorf("title %q, words %v", s.Title, s.Words)
 	}
 	labels := ""
@@ -36,7 +36,7 @@ func TestSectionOfOneBedPerArea(t *testing.T) {
 	b := noisy(160, 1, 16)
 	b.Site, b.PerArea = data.SiteMCA, true
 	s := fit(t, model(t, "wk2"), b, Settings{}).Section()
-	if s.Title != "regional load: mca, per unit area" || s.Rows[2].Number.Unit != "mmHg s/cm" {
+	if s.Title != "Fit of wk2, regional load: mca, per unit area" || s.Rows[2].Number.Unit != "mmHg s/cm" {
 		t.Errorf("title %q, unit %q", s.Title, s.Rows[2].Number.Unit)
 	}
 	if got := s.Rows[4].Words.String(); got != "none: a single beat: no scatter to judge by" {

@@ -11,16 +11,29 @@ import (
 // the systematic errors that the total intervals carry.
 func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 	s := casenote.Section{Title: "Given and assumed"}
+	hasFlow, velocity := b.FlowInfo.Channel >= 0, b.FlowInfo.Conversion != nil
 	delay := data.Estimate{Value: b.Delay.Value, Total: around(b.Delay.Value, b.Delay.Error), Random: data.NoInterval(), Identified: true}
-	s.Rows = append(s.Rows, casenote.Quantity("delay of pressure", delay, "s", origin(b.Delay.Stated)))
+	if hasFlow {
+		s.Rows = append(s.Rows, casenote.Quantity("delay of pressure", delay, "s", origin(b.Delay.Stated)))
+	}
 	pv := outflow(b)
 	widths, _ := halfWidths(b.Intake.Case) // checked when the beats were cut
 	against := data.Estimate{Value: pv, Total: around(pv, widths["outflow-pressure"]), Random: data.NoInterval(), Identified: true}
 	s.Rows = append(s.Rows, casenote.Quantity("outflow pressure", against, "mmHg", origin(b.Intake.Case.OutflowPressure != nil)))
 	for _, k := range errorKinds() {
 		w := widths[k.name]
-		if k.name == "flow" {
+		switch k.name {
+		case "flow":
 			w = b.FlowInfo.Error
+			fallthrough
+		case "delay":
+			if !hasFlow {
+				continue
+			}
+		case "diameter", "angle":
+			if !velocity {
+				continue
+			}
 		}
 		s.Rows = append(s.Rows, casenote.Words("95 % error, "+k.name, k.words(w)+stated(b.Intake.Case.Error[k.name] != "")))
 	}

@@ -31,7 +31,8 @@ func (b Beats) averageSection() casenote.Section {
 	exact("samples", float64(len(some.Period.Samples)), "")
 	exact("period", some.Period.Duration(), "s")
 	if b.Pressure.Count > 0 {
-		exact("pressure, end less start", b.Pressure.EndMinusStart, "mmHg")
+		e := data.Estimate{Value: b.Pressure.EndMinusStart, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: "mean over the beats"}
+		s.Rows = append(s.Rows, casenote.Quantity("pressure, end less start", e, b.pressureUnit(), data.Measured))
 	}
 	s.Tables = append(s.Tables, b.indexTable())
 	return s
@@ -41,24 +42,41 @@ func (b Beats) averageSection() casenote.Section {
 // its reason below the table.
 func (b Beats) indexTable() casenote.Table {
 	t := casenote.Table{Header: []string{"index of the average beat"}}
-	var signals []beat.Measures
+	var columns []indexColumn
 	add := func(name, unit string, a beat.Average) {
 		if a.Count > 0 {
 			t.Header = append(t.Header, name+", "+unit)
-			signals = append(signals, beat.Measure(a.Period))
+			columns = append(columns, indexColumn{beat.Measure(a.Period), b.Ensemble.LeaveOut(len(columns))})
 		}
 	}
 	add("pressure", b.pressureUnit(), b.Pressure)
 	add("flow", b.flowUnit(), b.Flow)
 	for _, row := range indexRows() {
 		cells := []casenote.Cell{{Words: data.Clean(row.label)}}
-		for _, m := range signals {
-			e := data.Estimate{Value: row.of(m), Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: m.Remark(row.index)}
-			cells = append(cells, casenote.Cell{Number: &casenote.Number{Estimate: e, Origin: data.Measured}})
+		for _, c := range columns {
+			cells = append(cells, casenote.Cell{Number: &casenote.Number{Estimate: c.estimate(row), Origin: data.Measured}})
 		}
 		t.Rows = append(t.Rows, cells)
 	}
+	t.Foot = "Intervals are of random error, from the scatter of blocks of beats; calibration is not in them."
 	return t
+}
+
+// indexColumn is the measures of one signal's average beat, and those with one
+// block of beats left out in turn.
+type indexColumn struct {
+	measures beat.Measures
+	leftOut  []beat.Measures
+}
+
+// estimate is an index with its interval.
+func (c indexColumn) estimate(row indexRow) data.Estimate {
+	values := make([]float64, len(c.leftOut))
+	for i, m := range c.leftOut {
+		values[i] = row.of(m)
+	}
+	interval := beat.JackknifeInterval(row.of(c.measures), values)
+	return data.Estimate{Value: row.of(c.measures), Total: interval, Random: interval, Identified: true, Why: c.measures.Remark(row.index)}
 }
 
 // indexRow is one row of the table of indices.
@@ -74,14 +92,14 @@ func indexRows() []indexRow {
 		{"maximum", "", func(m beat.Measures) float64 { return m.Max }},
 		{"minimum", "", func(m beat.Measures) float64 { return m.Min }},
 		{"maximum less minimum", "", func(m beat.Measures) float64 { return m.Amplitude }},
-		{"Gosling PI, (max-min)/mean, no unit", beat.GoslingPI, func(m beat.Measures) float64 { return m.GoslingPI }},
-		{"Pourcelot RI, (max-min)/max, no unit", beat.PourcelotRI, func(m beat.Measures) float64 { return m.PourcelotRI }},
-		{"S/D, max/min, no unit", beat.SystolicRatio, func(m beat.Measures) float64 { return m.SystolicRatio }},
-		{"form factor, (mean-min)/(max-min), no unit", beat.FormFactor, func(m beat.Measures) float64 { return m.FormFactor }},
-		{"pulsatile power index, sum (A_k/A_0)^2, no unit", beat.PulsatilePower, func(m beat.Measures) float64 { return m.PulsatilePower }},
+		{"Gosling PI, (max-min)/mean", beat.GoslingPI, func(m beat.Measures) float64 { return m.GoslingPI }},
+		{"Pourcelot RI, (max-min)/max", beat.PourcelotRI, func(m beat.Measures) float64 { return m.PourcelotRI }},
+		{"S/D, max/min", beat.SystolicRatio, func(m beat.Measures) float64 { return m.SystolicRatio }},
+		{"form factor, (mean-min)/(max-min)", beat.FormFactor, func(m beat.Measures) float64 { return m.FormFactor }},
+		{"pulsatile power index, sum (A_k/A_0)^2", beat.PulsatilePower, func(m beat.Measures) float64 { return m.PulsatilePower }},
 		{"time to peak, s", beat.TimeToPeak, func(m beat.Measures) float64 { return m.TimeToPeak }},
 		{"maximum slope, per s", beat.MaxSlope, func(m beat.Measures) float64 { return m.MaxSlope }},
-		{"augmentation index, no unit", beat.Augmentation, func(m beat.Measures) float64 { return m.Augmentation }},
+		{"augmentation index", beat.Augmentation, func(m beat.Measures) float64 { return m.Augmentation }},
 	}
 }
 

@@ -201,6 +201,7 @@ func (b *Beats) cut(pressure, flow []float64) {
 	default:
 		b.Beats = beat.Match(b.Pulses[b.Lead], b.Pulses[b.FlowInfo.Channel])
 	}
+	b.Beats = t.byHand(b.Beats)
 	if t.Case.OneBeat {
 		if len(signals) > 1 {
 			signals[1] = later(flow, b.Delay.Value*t.Grid.Rate)
@@ -210,6 +211,21 @@ func (b *Beats) cut(pressure, flow []float64) {
 		b.Ensemble = beat.Cut(b.Beats, t.Grid.Rate, delayed(signals, b.Delay.Value)...)
 	}
 	b.average(pressure != nil, flow != nil)
+}
+
+// byHand drops and keeps the beats that the case says to.
+func (t Intake) byHand(beats []beat.Beat) []beat.Beat {
+	out := slices.Clone(beats)
+	for i, b := range out {
+		within := func(at float64) bool { return t.Grid.At(b.From) <= at && at < t.Grid.At(b.To) }
+		switch {
+		case slices.ContainsFunc(t.Case.Drop, within):
+			out[i].Rejected = beat.ByHand
+		case slices.ContainsFunc(t.Case.Keep, within) && b.Rejected != beat.Gap:
+			out[i].Rejected = ""
+		}
+	}
+	return out
 }
 
 // delayed makes signals of a leading channel and, where there is a second, of

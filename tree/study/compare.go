@@ -42,6 +42,7 @@ func Compare(ctx context.Context, f Fit) (Comparison, error) {
 		if err != nil {
 			return c, err
 		}
+		a.OutflowOrigin = origin(f.Beats.Intake.Case.OutflowPressure != nil)
 		if a, err = a.WithIntervals(ctx, r.Model, r.Replicates); err != nil {
 			return c, err
 		}

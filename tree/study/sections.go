@@ -40,17 +40,20 @@ func (b Beats) sections() []casenote.Section {
 // sections describe every fit, the estimators beside them, what the assumptions
 // do, and the recommendation.
 func (f Fit) sections() []casenote.Section {
+	if f.Reason != "" {
+		return []casenote.Section{{Title: "Fit", Words: []data.Text{data.Clean("There is none: " + f.Reason + ".")}}}
+	}
 	settings, _ := fitSettings(f.Beats.Intake.Case) // checked before the fit
 	settings = settings.WithDefaults()
 	out := []casenote.Section{f.Beats.assumptionSection(int(settings.Seed), settings.Replicates)}
-	if f.Reason != "" {
-		return append(out, casenote.Section{Title: "Fit", Words: []data.Text{data.Clean("There is none: " + f.Reason + ".")}})
-	}
 	for _, r := range f.Results {
 		out = append(out, r.Section())
 	}
 	if len(f.Results) > 0 {
-		out = append(out, f.choiceSection(), f.sensitivitySection())
+		out = append(out, f.choiceSection())
+	}
+	if len(f.Sensitivity) > 0 {
+		out = append(out, f.sensitivitySection())
 	}
 	return append(out, f.estimatorSection())
 }
@@ -89,7 +92,8 @@ func (f Fit) sensitivitySection() casenote.Section {
 	t := casenote.Table{Header: []string{"assumption", "change", "R, %", "C, %", "Zc, %"}}
 	for _, s := range f.Sensitivity {
 		t.Rows = append(t.Rows, []casenote.Cell{
-			{Words: data.Clean(s.Assumption)}, {Words: data.Clean(s.Change)},
+			{Words: data.Clean(s.Assumption)},
+			{Words: data.Clean(s.Change)},
 			plain(s.Percent.R), plain(s.Percent.C), plain(s.Percent.Zc),
 		})
 	}
@@ -111,10 +115,13 @@ func (f Fit) estimatorSection() casenote.Section {
 }
 
 func remark(e fitting.Estimator) string {
-	if e.Reason != "" {
+	switch {
+	case e.Reason != "":
 		return e.Reason
+	case math.IsNaN(e.R):
+		return "R and C need a flow"
 	}
-	return "no interval"
+	return "-"
 }
 
 // unitOf is the unit of a parameter of the fits.

@@ -9,7 +9,9 @@ import (
 type Answer struct {
 	Load            fitting.Load
 	OutflowPressure float64 // Pv, mmHg
-	Posing          Posing
+	// OutflowOrigin says where Pv comes from; Pose leaves it assumed.
+	OutflowOrigin data.Origin
+	Posing        Posing
 	// PerArea tells that the flow is a velocity, in cm/s, and the load one per
 	// unit area. Pose leaves it false; only units in print depend on it.
 	PerArea bool
@@ -28,7 +30,7 @@ func Pose(l fitting.Load, flow data.Period, pv float64, posing Posing, shares []
 	if err != nil {
 		return Answer{}, err
 	}
-	a := Answer{Load: l, OutflowPressure: pv, Posing: posing, Native: Native(l, flow, pv), Supported: supported}
+	a := Answer{Load: l, OutflowPressure: pv, OutflowOrigin: data.Assumed, Posing: posing, Native: Native(l, flow, pv), Supported: supported}
 	for _, s := range supported {
 		a.Comparisons = append(a.Comparisons, Compare(a.Native, s))
 	}

@@ -21,7 +21,7 @@ func (a Answer) Held() []Held {
 		{"total resistance Z(0)", a.Load.Resistance(), u.resistance, data.Estimated},
 		{"compliance", a.Load.Compliance(), u.compliance, data.Estimated},
 		{"characteristic impedance", a.Load.CharacteristicImpedance(), u.resistance, data.Estimated},
-		{"outflow pressure", a.OutflowPressure, "mmHg", data.Assumed},
+		{"outflow pressure", a.OutflowPressure, "mmHg", a.OutflowOrigin},
 		{"heart period", a.Native.Flow.Duration(), "s", data.Measured},
 		{"mean flow", a.Native.Flow.Mean(), u.flow, data.Measured},
 	}

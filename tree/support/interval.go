@@ -52,7 +52,7 @@ func (a Answer) rows(ctx context.Context, m fitting.Model, set []fitting.Replica
 func spread(fields [figureCount]*data.Estimate, state int, random, total [][]numbers) {
 	for f, e := range fields {
 		of := func(row []numbers) float64 { return row[state][f] }
-		doubt(e, interval(random, of), interval(total, of))
+		doubt(e, interval(e.Value, random, of), interval(e.Value, total, of))
 	}
 }
 
@@ -63,7 +63,7 @@ func (c *Comparison) spread(state int, random, total [][]numbers) {
 	}
 	for i, e := range c.fields() {
 		of := func(row []numbers) float64 { return compare(row[0], row[state])[i] }
-		doubt(e, interval(random, of), interval(total, of))
+		doubt(e, interval(e.Value, random, of), interval(e.Value, total, of))
 		if ratio(i) == pressureChange && e.Total.Defined() {
 			e.Identified, e.Why = true, "" // a change may be small beside its interval
 		}
@@ -86,9 +86,12 @@ func doubt(e *data.Estimate, random, total data.Interval) {
 	}
 }
 
-// interval is the 95 % interval of a quantity over rows, between the percentiles
-// 2.5 and 97.5; none where it is undefined in a row.
-func interval(rows [][]numbers, of func(row []numbers) float64) data.Interval {
+// interval is the 95 % interval about the value of a quantity: the distances of
+// the percentiles 2.5 and 97.5 of its values in rows from their median, laid
+// about the value. Noise that is left in a drawn beat raises its swing, and so
+// shifts all replicates together; that shift is no doubt about the value. There
+// is none where the quantity is undefined in a row.
+func interval(value float64, rows [][]numbers, of func(row []numbers) float64) data.Interval {
 	values := make([]float64, len(rows))
 	for i, row := range rows {
 		if values[i] = of(row); math.IsNaN(values[i]) {
@@ -96,8 +99,7 @@ func interval(rows [][]numbers, of func(row []numbers) float64) data.Interval {
 		}
 	}
 	slices.Sort(values)
-	return data.Interval{
-		Low:  stat.Quantile(0.025, stat.LinInterp, values, nil),
-		High: stat.Quantile(0.975, stat.LinInterp, values, nil),
-	}
+	quantile := func(p float64) float64 { return stat.Quantile(p, stat.LinInterp, values, nil) }
+	shift := value - quantile(0.5)
+	return data.Interval{Low: quantile(0.025) + shift, High: quantile(0.975) + shift}
 }

@@ -147,11 +147,11 @@ func TestIntervalOfRows(t *testing.T) {
 		rows[i][0][eep] = float64((i * 387) % 1000) // 0 .. 999 in another order
 	}
 	of := func(row []numbers) float64 { return row[0][eep] }
-	got := interval(rows, of)
-	near(t, "low", got.Low, 24.5, 0.5)
-	near(t, "high", got.High, 974.5, 0.5)
+	got := interval(600, rows, of) // about 600 instead of the median, 499.5
+	near(t, "low", got.Low, 125, 0.5)
+	near(t, "high", got.High, 1075, 0.5)
 	rows[500][0][eep] = math.NaN()
-	if got := interval(rows, of); got.Defined() {
+	if got := interval(600, rows, of); got.Defined() {
 		t.Errorf("interval %v with a row undefined", got)
 	}
 }

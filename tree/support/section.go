@@ -9,8 +9,12 @@ import (
 )
 
 // Sections describe the answer for a note: the states, what is retained, and the
-// power. What is held equal, the same for every posing, is [Answer.HeldSection].
+// power; of an identity no more than the rule, since its numbers follow from it.
+// What is held equal, the same for every posing, is [Answer.HeldSection].
 func (a Answer) Sections() []casenote.Section {
+	if a.Posing.ByConstruction() {
+		return []casenote.Section{{Title: fmt.Sprintf("By construction: %s", a.Posing), Words: texts(a.Posing.words())}}
+	}
 	return []casenote.Section{a.StateSection(), a.ComparisonSection(), a.PowerSection()}
 }
 
@@ -31,7 +35,7 @@ func (a Answer) HeldSection() casenote.Section {
 // words say what a posing is, and what it may claim.
 func (p Posing) words() string {
 	if p.ByConstruction() {
-		return "Posing scaled: the native flow times 1-s, and a steady flow of s times its mean. On any linear load retained pulse is then 1-s, and retained surplus energy and pulsatile power (1-s)^2, by construction: an identity and a yardstick, never a forecast."
+		return "Posing scaled: the native flow times 1-s, and a steady flow of s times its mean. On any linear load retained pulse is then 1-s, and retained surplus energy and pulsatile power (1-s)^2, by construction: an identity and a yardstick, never a forecast. At s = 0.5 half of the pulse is left, and a quarter of the surplus energy and of the pulsatile power."
 	}
 	return "Posing late-valve: what the native flow has above a threshold is ejected, the pump is steady, mean flow is kept; the valve opens later and closes earlier. No ventricle answers to the load: a yardstick, and no forecast of a ventricle and a pump."
 }
@@ -92,14 +96,9 @@ func (a Answer) ComparisonSection() casenote.Section {
 	if a.Posing.ByConstruction() {
 		s.Words = texts("These ratios follow from the posing alone and hold for every linear load: an identity, never a forecast, and so without an interval.")
 	}
-	s.Tables = []casenote.Table{
-		a.ratioTable("Supported over native, at equal mean flow",
-			[]ratio{retainedPressure, retainedFlow},
-			"retained pulse of pressure", "retained swing of root flow"),
-		a.ratioTable("Native over supported, at equal mean flow",
-			[]ratio{flowAmplitude, powerRatio},
-			"swing of root flow, native/supported", "pulsatile power in, native/supported"),
-	}
+	s.Tables = []casenote.Table{a.ratioTable("Supported over native, at equal mean flow",
+		[]ratio{retainedPressure, retainedFlow},
+		"retained pulse of pressure", "retained swing of root flow")}
 	return s
 }
 
