@@ -36,9 +36,11 @@ func (e usageError) Unwrap() error { return e.err }
 // exitCode sorts an error into the table of exit codes.
 func exitCode(err error) int {
 	var (
-		none noAnswer
-		file *data.FileError
-		path *fs.PathError
+		none    noAnswer
+		unknown *data.UnknownNameError
+		several *data.AmbiguousError
+		file    *data.FileError
+		path    *fs.PathError
 	)
 	switch {
 	case err == nil:
@@ -47,6 +49,8 @@ func exitCode(err error) int {
 		return exitInterrupted
 	case errors.As(err, &none):
 		return exitNoAnswer
+	case errors.As(err, &unknown), errors.As(err, &several): // a name of the command line, though a file may be named too
+		return exitUsage
 	case errors.As(err, &file), errors.As(err, &path):
 		return exitFile
 	}

@@ -40,7 +40,7 @@ func caseFile(p demo.Patient) []byte {
 	return fmt.Appendf(nil, `# %s
 # The data are invented: no patient, made by cmd/demodata, seed %d.
 recording = %q
-label = "demo-01"
+label = "invented-demo-1"
 
 pressure = %q
 velocity = %q

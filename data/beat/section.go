@@ -38,6 +38,9 @@ func (p Pulse) Section(channel data.Text, unit string) casenote.Section {
 	return s
 }
 
+// HeartRateEstimate is the heart rate, 1/min, with its interval of random error.
+func (p Pulse) HeartRateEstimate() data.Estimate { return p.heartRate(used(p.Beats)) }
+
 // heartRate is 60 over the median interval, and so are the ends of its interval.
 func (p Pulse) heartRate(good []Beat) data.Estimate {
 	interval, why := medianInterval(each(good, func(b Beat) float64 { return b.Interval }))

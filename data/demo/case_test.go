@@ -19,7 +19,7 @@ func TestCaseIsRead(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	if c.Recording != RecordingName || c.Label != "demo-01" || delay != p.Delay {
+	if c.Recording != RecordingName || c.Label != "invented-demo-1" || delay != p.Delay {
 		t.Errorf("recording %q, label %q, delay %v", c.Recording, c.Label, delay)
 	}
 	if c.DiameterCM == nil || *c.DiameterCM != p.Diameter || c.OutflowPressure == nil || *c.OutflowPressure != p.OutflowPressure {

@@ -11,6 +11,9 @@ import (
 // The same study gives the same note, byte for byte.
 func (s Study) Note() casenote.Note {
 	n := s.emptyNote("Note of a study")
+	if short := s.shortSection(); len(short.Rows) > 0 {
+		n.Sections = append(n.Sections, short)
+	}
 	if s.Intake != nil {
 		n.Sections = append(n.Sections, recordingSection(*s.Intake))
 	}
@@ -54,6 +57,7 @@ func (s Study) emptyNote(title string) casenote.Note {
 		Program: "afterbeat", Version: Version,
 		Title:    data.Clean(title),
 		Warnings: s.Warnings(),
+		Remark:   data.Clean(s.Inputs.Case.Remark),
 	}
 }
 

@@ -1,8 +1,6 @@
 package study
 
 import (
-	"slices"
-
 	"afterbeat/data"
 	"afterbeat/data/casenote"
 	"afterbeat/tree/support"
@@ -101,7 +99,7 @@ func (s SolvedLoad) Note() casenote.Note {
 	}
 	n.Sections = append(n.Sections, s.givenSection(), solvedSection(s.Native))
 	if s.Answer != nil {
-		n.Sections = slices.Concat(n.Sections, s.Answer.Sections())
+		n.Sections = append(n.Sections, s.Answer.StateSection(), s.Answer.ComparisonSection(), s.Answer.PowerSection())
 	}
 	return n
 }
