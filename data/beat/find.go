@@ -15,6 +15,8 @@ const (
 	leastBeats  = 2
 	// windowsAround is how many windows on either side share in the period.
 	windowsAround = 2
+	// silentWindows in a row without a period are a stretch without a pulse.
+	silentWindows = 2
 )
 
 // Find finds the beats of a uniform trace sampled at rate, in Hz; NaN (and ±Inf)
@@ -72,14 +74,13 @@ func unfit(values []float64, rate float64, q unit.Quantity) string {
 // onsets returns the onset of every beat, or says why there is no pulse.
 func onsets(values []float64, rate float64) (onsets []float64, reason string) {
 	t := newTrace(values, rate)
+	fs := t.rateOfCoarse()
 	windows, regular := t.periods()
 	y, ssf := t.slopeSum()
-	period := func(int) float64 { return 0 }
+	var ends []int
 	if regular {
-		period = periodAt(windows, t.rateOfCoarse())
-	}
-	ends := t.upstrokes(ssf, period)
-	if !regular && !alike(y, ends, t.rateOfCoarse()) {
+		ends = withoutNoise(y, t.upstrokes(ssf, periodAt(windows, fs)), windows, fs)
+	} else if ends = t.upstrokes(ssf, nil); !alike(y, ends, fs) {
 		return nil, fmt.Sprintf("no periodic component between %g and %g Hz", 1/longestPeriod, 1/shortestPeriod)
 	}
 	onsets = t.feet(ends)
@@ -87,6 +88,38 @@ func onsets(values []float64, rate float64) (onsets []float64, reason string) {
 		return nil, fmt.Sprintf("too few samples: %d onsets, and %d beats are needed", len(onsets), leastBeats)
 	}
 	return onsets, ""
+}
+
+// withoutNoise drops the upstrokes of the stretches in which two windows in a
+// row, or more, have no period and the upstrokes do not resemble one another: a
+// transducer that hangs free.
+func withoutNoise(y []float64, ends []int, windows []window, fs float64) []int {
+	var out []int
+	from := 0
+	for i := 0; i < len(windows); i++ {
+		first := i
+		for i < len(windows) && windows[i].period == 0 {
+			i++
+		}
+		if i-first < silentWindows {
+			continue
+		}
+		quarter := (windows[first].to - windows[first].from) / 4
+		begin, end := windows[first].from+quarter, windows[i-1].to-quarter
+		if first == 0 {
+			begin = 0
+		}
+		if i == len(windows) {
+			end = len(y)
+		}
+		a, _ := slices.BinarySearch(ends, begin)
+		b, _ := slices.BinarySearch(ends, end)
+		if r, _ := likeness(y, ends[a:b], fs); len(r) >= leastUpstrokes && median(r) < leastAlike {
+			out = append(out, ends[from:a]...)
+			from = b
+		}
+	}
+	return append(out, ends[from:]...)
 }
 
 // periodAt gives the period at a sample of the coarse trace, in samples: the

@@ -19,29 +19,38 @@ const (
 // alike tells whether the upstrokes that end at the given samples of y, sampled
 // at fs, resemble one another and follow at the intervals of a pulse.
 func alike(y []float64, ends []int, fs float64) bool {
-	before, after := samplesIn(beforeEnd, fs), samplesIn(afterEnd, fs)
-	var pieces [][]float64
-	var intervals []float64
-	for i, e := range ends {
-		if e < before || e+after >= len(y) {
-			continue
-		}
-		pieces = append(pieces, normalise(straightened(slices.Clone(y[e-before:e+after]))))
-		if i > 0 {
-			intervals = append(intervals, float64(e-ends[i-1])/fs)
-		}
-	}
-	if len(pieces) < leastUpstrokes {
+	r, middle := likeness(y, ends, fs)
+	if len(r) < leastUpstrokes {
 		return false
 	}
-	middle := medianShape(pieces)
-	r := make([]float64, len(pieces))
-	for i, p := range pieces {
-		r[i] = dot(p, middle)
+	intervals := make([]float64, len(ends)-1)
+	for i := range intervals {
+		intervals[i] = float64(ends[i+1]-ends[i]) / fs
 	}
 	interval := median(intervals)
 	return median(r) >= leastAlike && quantile(r, 0.2) >= fewAlike &&
 		rises(middle) <= mostRises && interval >= shortestPeriod && interval <= longestPeriod
+}
+
+// likeness is the correlation of each upstroke, straightened, with the median
+// one. Upstrokes at the very ends of y are left out.
+func likeness(y []float64, ends []int, fs float64) (r, middle []float64) {
+	before, after := samplesIn(beforeEnd, fs), samplesIn(afterEnd, fs)
+	var pieces [][]float64
+	for _, e := range ends {
+		if e >= before && e+after < len(y) {
+			pieces = append(pieces, normalise(straightened(slices.Clone(y[e-before:e+after]))))
+		}
+	}
+	if len(pieces) == 0 {
+		return nil, nil
+	}
+	middle = medianShape(pieces)
+	r = make([]float64, len(pieces))
+	for i, p := range pieces {
+		r[i] = dot(p, middle)
+	}
+	return r, middle
 }
 
 // straightened takes the straight line of least squares off x, in place: a

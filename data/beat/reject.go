@@ -18,6 +18,7 @@ const (
 	leastShape    = 0.9 // correlation with the median beat
 	scatterShape  = 5.0 // robust standard deviations of the correlations
 	shapePoints   = 64
+	shapeBlock    = 60 // beats that share a median beat
 )
 
 // reject marks the beats that cannot be used, in the order of the reasons: one
@@ -93,6 +94,8 @@ func rejectByLevel(beats []Beat) {
 	}
 }
 
+// rejectByShape compares the beats with the median beat of the shapeBlock or so
+// around them, since the shape changes slowly, with the heart rate for one.
 func rejectByShape(beats []Beat, values []float64) {
 	var shapes [][]float64
 	var which []int
@@ -102,8 +105,20 @@ func rejectByShape(beats []Beat, values []float64) {
 			which = append(which, i)
 		}
 	}
+	blocks := max(1, len(shapes)/shapeBlock)
+	for k := range blocks {
+		from, to := k*len(shapes)/blocks, (k+1)*len(shapes)/blocks
+		for _, odd := range oddShapes(shapes[from:to]) {
+			beats[which[from+odd]].Rejected = Shape
+		}
+	}
+}
+
+// oddShapes lists those that are unlike the median of all. Fewer than three have
+// no odd one.
+func oddShapes(shapes [][]float64) []int {
 	if len(shapes) < 3 {
-		return
+		return nil
 	}
 	middle := medianShape(shapes)
 	r := make([]float64, len(shapes))
@@ -112,11 +127,13 @@ func rejectByShape(beats []Beat, values []float64) {
 	}
 	m := median(r)
 	limit := min(leastShape, m-scatterShape*spread(r, m))
-	for k, i := range which {
+	var odd []int
+	for k := range r {
 		if r[k] < limit {
-			beats[i].Rejected = Shape
+			odd = append(odd, k)
 		}
 	}
+	return odd
 }
 
 // shape is the beat as means over shapePoints equal parts of it (or samples

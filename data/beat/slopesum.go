@@ -14,7 +14,10 @@ const (
 	faintest     = 0.1   // the local reference is at least this part of the median one
 	closest      = 0.22  // s, between upstrokes
 	fastest      = 0.7   // of the period, where that is less
-	refractory   = 0.35  // of the period, where that is more
+	// secondary waves (dicrotic, reversal) rise by at most this part of the
+	// lower of the two upstrokes around, which are one period apart.
+	secondaryPart = 0.75
+	onePeriod     = 0.2 // within this part of it
 	// Of the peaks, those above a part of the reference are upstrokes. The part
 	// is where fewest peaks lie: between those of dicrotic waves and those of
 	// weak beats. (Zong 2003 takes 60 % of an average that it follows.)
@@ -23,12 +26,18 @@ const (
 )
 
 // upstrokes returns the indices in the coarse trace of the peaks of the slope
-// sum function that are upstrokes, which lie at their ends. period is in
-// samples of the coarse trace; 0 where it is not known.
+// sum function that are upstrokes; the peaks lie at their ends. period gives the
+// period there, in samples of the coarse trace; nil where the rhythm is not
+// regular.
 func (t *trace) upstrokes(ssf []float64, period func(i int) float64) []int {
 	fs := t.rateOfCoarse()
 	reference := references(ssf, samplesIn(blockLength, fs))
-	peaks := highest(ssf, func(i int) int { return apart(period(i), fs) })
+	peaks := highest(ssf, func(i int) int {
+		if period == nil {
+			return samplesIn(closest, fs)
+		}
+		return max(1, int(min(closest*fs, fastest*period(i))))
+	})
 	heights := make([]float64, len(peaks))
 	for i, p := range peaks {
 		heights[i] = ssf[p] / reference[p]
@@ -40,17 +49,35 @@ func (t *trace) upstrokes(ssf []float64, period func(i int) float64) []int {
 			out = append(out, p)
 		}
 	}
-	return out
+	if period == nil {
+		return out
+	}
+	return primary(out, ssf, period)
 }
 
-// apart is how far, in samples, two upstrokes lie from each other at least; the
-// period is in samples, 0 where it is not known.
-func apart(period, fs float64) int {
-	distance := closest * fs
-	if period > 0 {
-		distance = max(min(distance, fastest*period), refractory*period)
+// primary leaves out the secondary waves: an upstroke that lies between two
+// higher ones which are one period apart. An early beat is none: the upstrokes
+// around it are farther apart.
+func primary(peaks []int, ssf []float64, period func(i int) float64) []int {
+	var out []int
+	for k, p := range peaks {
+		higher := ssf[p] / secondaryPart
+		before, after := k-1, k+1
+		for before >= 0 && ssf[peaks[before]] < higher {
+			before--
+		}
+		for after < len(peaks) && ssf[peaks[after]] < higher {
+			after++
+		}
+		if before >= 0 && after < len(peaks) {
+			apart := float64(peaks[after]-peaks[before]) / period(p)
+			if math.Abs(apart-1) <= onePeriod {
+				continue
+			}
+		}
+		out = append(out, p)
 	}
-	return max(1, int(distance))
+	return out
 }
 
 // slopeSum returns the smoothed trace and its slope sum function.
