@@ -1,0 +1,51 @@
+package layout
+
+import (
+	"strings"
+
+	"github.com/charmbracelet/x/ansi"
+
+	"afterbeat/tui"
+)
+
+// Fit joins lines to a view of at most the area: surplus lines are left out
+// from below, surplus cells from the right. Spaces at the end of a line go.
+func Fit(lines []string, a tui.Area) string {
+	lines = lines[:min(len(lines), max(a.Height, 0))]
+	var b strings.Builder
+	for i, line := range lines {
+		if i > 0 {
+			b.WriteByte('\n')
+		}
+		if ansi.StringWidth(line) > a.Width {
+			line = ansi.Truncate(line, max(a.Width, 0), "")
+		}
+		b.WriteString(strings.TrimRight(line, " "))
+	}
+	return b.String()
+}
+
+// Lines are the lines of a block of exactly height lines.
+func Lines(block string, height int) []string {
+	lines := strings.Split(block, "\n")
+	for len(lines) < height {
+		lines = append(lines, "")
+	}
+	return lines[:max(height, 0)]
+}
+
+// Beside sets right beside left, which gets width cells.
+func Beside(left, right []string, width int) []string {
+	out := make([]string, max(len(left), len(right)))
+	for i := range out {
+		line := ""
+		if i < len(left) {
+			line = left[i]
+		}
+		if i < len(right) && right[i] != "" {
+			line += blanks(width-ansi.StringWidth(line)) + right[i]
+		}
+		out[i] = line
+	}
+	return out
+}

@@ -1,0 +1,13 @@
+// Package trace is a window on a long recording, with a cursor: a component
+// that the screens of intake and beats share. It knows samples, times and
+// marks, and no channel.
+//
+// What is drawn, a [chart.Plot] of one value a column, is prepared in a command
+// and kept by source, window and size, so that a view costs the drawing alone
+// and going back costs nothing. Until a new window is ready the old one stays.
+// A prepared picture carries what it was made from; one that is no longer
+// wanted is kept for later and not shown.
+//
+// The cursor is a sample. It moves by columns of the picture; where it leaves
+// the window, the window follows by half its length.
+package trace
