@@ -44,28 +44,27 @@ func (s Study) Pending() Stage {
 	return StageDone
 }
 
-// Next computes the pending stage. The Study given is not changed.
+// Next computes the pending stage. The Study given is not changed; where the
+// stage gives an error, it is returned as it was.
 func (s Study) Next(ctx context.Context) (Study, error) {
+	next, err := s, error(nil)
 	switch s.Pending() {
 	case StageIntake:
-		t, err := TakeIn(s.Inputs)
-		s.Intake = &t
-		return s, err
+		next.Intake, err = pointer(TakeIn(s.Inputs))
 	case StageBeats:
-		b, err := FindBeats(ctx, *s.Intake)
-		s.Beats = &b
-		return s, err
+		next.Beats, err = pointer(FindBeats(ctx, *s.Intake))
 	case StageFit:
-		f, err := FitLoad(ctx, *s.Beats)
-		s.Fit = &f
-		return s, err
+		next.Fit, err = pointer(FitLoad(ctx, *s.Beats))
 	case StageSupport:
-		c, err := Compare(ctx, *s.Fit)
-		s.Comparison = &c
+		next.Comparison, err = pointer(Compare(ctx, *s.Fit))
+	}
+	if err != nil {
 		return s, err
 	}
-	return s, nil
+	return next, nil
 }
+
+func pointer[T any](v T, err error) (*T, error) { return &v, err }
 
 // Run computes a study up to and with the stage last; StageDone for all.
 func Run(ctx context.Context, in Inputs, last Stage) (Study, error) {
@@ -84,17 +83,46 @@ func Run(ctx context.Context, in Inputs, last Stage) (Study, error) {
 }
 
 // With is the study after a change of the case: the stages that the change
-// bears on are to be computed again, the others stay.
+// bears on are to be computed again, the others stay, and speak of the case as
+// it is now. Files are not read again: where the change names others, or says
+// otherwise how they are read, [Read] them and begin anew.
 func (s Study) With(c casefile.Case) Study {
-	before := s.Inputs.Case
+	touched := firstTouched(s.Inputs.Case, c)
 	s.Inputs.Case = c
-	switch firstTouched(before, c) {
-	case StageIntake:
+	if touched == StageIntake {
 		return Study{Inputs: s.Inputs}
-	case StageFit:
-		s.Fit, s.Comparison = nil, nil
-	case StageSupport:
+	}
+	if touched == StageFit {
+		s.Fit = nil
+	}
+	if touched != StageDone {
 		s.Comparison = nil
+	}
+	return s.carrying()
+}
+
+// carrying is the study with the case of its inputs in every stage: each holds
+// those before it.
+func (s Study) carrying() Study {
+	if s.Intake != nil {
+		t := *s.Intake
+		t.Case = s.Inputs.Case
+		s.Intake = &t
+	}
+	if s.Beats != nil {
+		b := *s.Beats
+		b.Intake = *s.Intake
+		s.Beats = &b
+	}
+	if s.Fit != nil {
+		f := *s.Fit
+		f.Beats = *s.Beats
+		s.Fit = &f
+	}
+	if s.Comparison != nil {
+		k := *s.Comparison
+		k.Fit = *s.Fit
+		s.Comparison = &k
 	}
 	return s
 }

@@ -25,7 +25,7 @@ func firstTouched(a, b casefile.Case) Stage {
 
 // withoutWords is the case without what changes no number.
 func withoutWords(c casefile.Case) casefile.Case {
-	c.Label = ""
+	c.Label, c.Remark = "", ""
 	return c
 }
 
