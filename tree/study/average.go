@@ -4,6 +4,7 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/beat"
 	"afterbeat/data/casenote"
+	"afterbeat/data/unit"
 )
 
 // some is the average beat of the pressure, or of the flow where there is none.
@@ -105,8 +106,8 @@ func indexRows() []indexRow {
 
 // pressureUnit is the unit of the pressure: its own where it is uncalibrated.
 func (b Beats) pressureUnit() string {
-	if ch, ok := b.Intake.Chosen(b.Intake.Selection.Pressure); ok && !ch.Unit.Calibrated {
-		return ch.Unit.Name
+	if ch, ok := b.Intake.Chosen(b.Intake.Selection.Pressure); ok {
+		return unitOfValues(ch)
 	}
-	return "mmHg"
+	return unit.Internal(unit.Pressure).Name
 }

@@ -153,7 +153,11 @@ func (b *Beats) fromVelocity(ch data.Channel, widths map[string]float64) ([]floa
 	}
 	flow, conversion, err := doppler.ToFlow(ch, settings)
 	if err != nil {
-		return nil, &ChoiceError{Key: "diameter_cm", What: err.Error()}
+		key := "diameter_cm"
+		if settings.Diameter > 0 { // and the factor is sound, too
+			key = "angle_deg"
+		}
+		return nil, &ChoiceError{Key: key, What: err.Error(), Hint: "a diameter in cm above 0, an angle from 0 to below 90 degrees"}
 	}
 	b.FlowInfo.Conversion = &conversion
 	b.FlowInfo.ConversionErrors = doppler.Errors{Diameter: widths["diameter"], Angle: widths["angle"]}

@@ -31,12 +31,6 @@ func Compare(ctx context.Context, f Fit) (Comparison, error) {
 	}
 	r := f.Results[f.Chosen]
 	flow := f.Beats.Flow.Period
-	c.Native = support.Native(r.Load(), flow, r.OutflowPressure)
-	c.Warnings = append(c.Warnings, c.Native.Warnings...)
-	if !(flow.Mean() > 0) {
-		c.Reason = fmt.Sprintf("mean flow is %.3g mL/s, not positive: a share of it means nothing; check its sign (--invert) and zero (--offset)", flow.Mean())
-		return c, nil
-	}
 	for _, posing := range support.Posings() {
 		a, err := support.Pose(r.Load(), flow, r.OutflowPressure, posing, wanted)
 		if err != nil {
@@ -59,6 +53,9 @@ func notComparable(f Fit) string {
 	switch {
 	case len(f.Results) == 0:
 		return "nothing was fitted to the beats"
+	case !(f.Beats.Flow.Period.Mean() > 0):
+		return fmt.Sprintf("mean flow is %.3g %s, not positive: a share of it means nothing; check its sign (--invert) and zero (--offset)",
+			f.Beats.Flow.Period.Mean(), f.Beats.flowUnit())
 	case f.Chosen < 0:
 		return f.Recommended.Why + "; name a model with --model to go on all the same"
 	case f.Beats.FlowInfo.PerArea:

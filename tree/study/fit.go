@@ -193,9 +193,13 @@ func siteOfFit(s data.Site) data.Site {
 	return s
 }
 
-// flowUnit is the unit of the flow that was fitted.
+// flowUnit is the unit of the average beat of the flow: that of a velocity
+// where the fit is per unit area, that of the channel where it is uncalibrated.
 func (b Beats) flowUnit() string {
-	if b.FlowInfo.PerArea {
+	switch ch, ok := b.Intake.flowChannel(); {
+	case ok && !ch.Unit.Calibrated:
+		return ch.Unit.Name
+	case b.FlowInfo.PerArea:
 		return unit.Internal(unit.Velocity).Name
 	}
 	return unit.Internal(unit.Flow).Name

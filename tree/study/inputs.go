@@ -3,8 +3,7 @@ package study
 import (
 	"bytes"
 	"fmt"
-	"path"
-	"strings"
+	"path/filepath"
 
 	"afterbeat/data"
 	"afterbeat/data/casefile"
@@ -49,4 +48,4 @@ func Read(c casefile.Case, read func(name string) ([]byte, error)) (Inputs, erro
 }
 
 // baseName is the file name without its folder: a note carries no path.
-func baseName(name string) string { return path.Base(strings.ReplaceAll(name, `\`, "/")) }
+func baseName(name string) string { return filepath.Base(name) }

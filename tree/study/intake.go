@@ -10,6 +10,7 @@ import (
 
 	"afterbeat/data"
 	"afterbeat/data/casefile"
+	"afterbeat/data/unit"
 )
 
 // Intake is the recording made ready: calibrated, on an even clock, with the
@@ -66,7 +67,7 @@ func TakeIn(in Inputs) (Intake, error) {
 		out.mask(channels[i].Values)
 	}
 	out.Channels = channels
-	out.Warnings = slices.Concat(in.Recording.Warnings, out.Selection.Guessed, siteWarnings(out))
+	out.Warnings = slices.Concat(in.Recording.Warnings, guesses(out), siteWarnings(out))
 	return out, nil
 }
 
@@ -196,7 +197,7 @@ func siteWarnings(t Intake) []data.Warning {
 			Cure: "for the load of the body, record flow at the root or in the outflow tract",
 		})
 	}
-	if hasPressure && p.Site != data.SiteRoot && (!hasFlow || q.Site.Systemic() || q.Site == data.SiteOther) {
+	if hasPressure && hasFlow && p.Site != data.SiteRoot && (q.Site.Systemic() || q.Site == data.SiteOther) {
 		out = append(out, standIn(p))
 	}
 	return out
@@ -217,12 +218,41 @@ func standIn(p data.Channel) data.Warning {
 	}
 }
 
+// guesses are the warnings of channels that were guessed among several of their
+// quantity. Where there was no other, the table of channels says enough.
+func guesses(t Intake) []data.Warning {
+	var out []data.Warning
+	for _, w := range t.Selection.Guessed {
+		of := map[unit.Quantity]int{}
+		var guessed unit.Quantity
+		for _, ch := range t.Channels {
+			of[ch.Quantity]++
+			if ch.Name == w.Channel {
+				guessed = ch.Quantity
+			}
+		}
+		if of[guessed] > 1 {
+			out = append(out, w)
+		}
+	}
+	return out
+}
+
 // flowChannel is the channel that gives the flow: a flow, or a velocity.
 func (t Intake) flowChannel() (data.Channel, bool) {
 	if ch, ok := t.Chosen(t.Selection.Flow); ok {
 		return ch, true
 	}
 	return t.Chosen(t.Selection.Velocity)
+}
+
+// unitOfValues is the unit of a channel's values: the internal one, whatever
+// the file has, or the channel's own where it is uncalibrated.
+func unitOfValues(ch data.Channel) string {
+	if ch.Unit.Calibrated {
+		return unit.Internal(ch.Quantity).Name
+	}
+	return ch.Unit.Name
 }
 
 // list joins names for a sentence.

@@ -14,7 +14,7 @@ func (b Beats) checkSections() []casenote.Section {
 	var out []casenote.Section
 	for i, ch := range b.Intake.Channels {
 		if pulsatile(ch.Quantity) {
-			out = append(out, b.Pulses[i].Section(ch.Name, ch.Unit.Name))
+			out = append(out, b.Pulses[i].Section(ch.Name, unitOfValues(ch)))
 		}
 	}
 	return out
@@ -26,7 +26,7 @@ func (b Beats) sections() []casenote.Section {
 	var out []casenote.Section
 	for _, i := range b.chosen() {
 		ch := b.Intake.Channels[i]
-		out = append(out, b.Pulses[i].Section(ch.Name, ch.Unit.Name))
+		out = append(out, b.Pulses[i].Section(ch.Name, unitOfValues(ch)))
 	}
 	if b.FlowInfo.Conversion != nil {
 		out = append(out, b.FlowInfo.Conversion.Section(b.FlowInfo.ConversionErrors))
@@ -89,13 +89,17 @@ func (f Fit) modelTable() casenote.Table {
 
 // sensitivitySection says what one assumption at a time does to the fit used.
 func (f Fit) sensitivitySection() casenote.Section {
-	t := casenote.Table{Header: []string{"assumption", "change", "R, %", "C, %", "Zc, %"}}
+	t := casenote.Table{Header: []string{"assumption", "change"}}
+	parameters := f.Results[f.Chosen].Model.Parameters()
+	for _, p := range parameters {
+		t.Header = append(t.Header, p.Name+", %")
+	}
 	for _, s := range f.Sensitivity {
-		t.Rows = append(t.Rows, []casenote.Cell{
-			{Words: data.Clean(s.Assumption)},
-			{Words: data.Clean(s.Change)},
-			plain(s.Percent.R), plain(s.Percent.C), plain(s.Percent.Zc),
-		})
+		row := []casenote.Cell{{Words: data.Clean(s.Assumption)}, {Words: data.Clean(s.Change)}}
+		for _, p := range parameters {
+			row = append(row, plain(s.Percent.Of(p.Name)))
+		}
+		t.Rows = append(t.Rows, row)
 	}
 	return casenote.Section{
 		Title:  "What one assumption does",

@@ -7,6 +7,7 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/beat"
 	"afterbeat/data/casenote"
+	"afterbeat/data/unit"
 	"afterbeat/tree/support"
 )
 
@@ -45,13 +46,16 @@ func (b Beats) measuredRows() []casenote.Row {
 		c := indexColumn{beat.Measure(b.Pressure.Period), b.Ensemble.LeaveOut(next)}
 		next++
 		scale, offset := widths["pressure-scale"], widths["pressure-offset"]
+		if !b.Intake.Channels[b.Intake.Selection.Pressure].Unit.Calibrated {
+			scale, offset = 0, 0 // they are those of a calibration
+		}
 		mean := withSystematic(c.estimate(indexRow{of: func(m beat.Measures) float64 { return m.Mean }}), scale, offset)
 		pulse := withSystematic(c.estimate(indexRow{of: func(m beat.Measures) float64 { return m.Amplitude }}), scale, 0)
 		rows = append(rows,
 			casenote.Quantity("mean pressure", mean, b.pressureUnit(), data.Measured),
 			casenote.Quantity("pulse pressure", pulse, b.pressureUnit(), data.Measured))
 	}
-	if b.Flow.Count > 0 && !b.FlowInfo.PerArea {
+	if b.Flow.Count > 0 && b.flowUnit() == unit.Internal(unit.Flow).Name {
 		c := indexColumn{beat.Measure(b.Flow.Period), b.Ensemble.LeaveOut(next)}
 		mean := c.estimate(indexRow{of: func(m beat.Measures) float64 { return litresPerMinute * m.Mean }})
 		rows = append(rows, casenote.Quantity("mean flow", withSystematic(mean, b.FlowInfo.Error, 0), "L/min", data.Measured))
