@@ -278,7 +278,7 @@ func TestReadWarnings(t *testing.T) {
 		{"time_s,P\n0,80\n0.01,81\n", ReadOptions{}, CodeNoUnit, "a pressure in mmHg was taken", "--unit P=UNIT"},
 		{"time_s,my P\n0,80\n0.01,81\n", ReadOptions{}, CodeNoUnit, "a pressure in mmHg was taken", "--unit 'my P'=UNIT"},
 		{"time,abp_mmHg\n0,80\n8,81\n", ReadOptions{}, CodeNoUnit, "seconds were taken, which makes 0.125 rows a second", "--unit time=ms"},
-		{"time_s,P_V\n0,80\n0.01,81\n", ReadOptions{}, CodeUncalibrated, "a pressure in V", "--calibrate P_V=SYS/DIA"},
+		{"time_s,P_V\n0,80\n0.01,81\n", ReadOptions{}, CodeUncalibrated, "a pressure in V", "--scale P_V=FACTOR (mmHg for 1 V)"},
 		{"time_s,flow_adu\n0,80\n0.01,81\n", ReadOptions{}, CodeUncalibrated, "a flow in adu", "--scale"},
 		{"time_s,abp_mmHg\n0,80\n0.01,81\n", ReadOptions{Rate: 50}, CodeGivenRate, "the given rate is 50 Hz; by time_s there are 100 rows a second", "leave out --rate"},
 		{"time_s,abp_mmHg\n0,1\n0.01,1\n0.02,1\n1.02,1\n1.03,1\n", ReadOptions{}, CodeHole, "jumps over 1 s at 0.02 s (97 % of the recording)", "--from"},

@@ -124,14 +124,11 @@ func noUnit(ch Channel) Warning {
 }
 
 func uncalibrated(ch Channel) Warning {
-	cure := "state its unit with --unit %s=UNIT and the factor with --scale"
-	if ch.Quantity == unit.Pressure {
-		cure = "calibrate it with --calibrate %s=SYS/DIA (mmHg, from a cuff)"
-	}
 	return Warning{
 		Code: CodeUncalibrated, Channel: ch.Name,
 		Text: fmt.Sprintf("a %s in %s: shape and times can be used, absolute values cannot", ch.Quantity, ch.Unit.Name),
-		Cure: fmt.Sprintf(cure, shellWord(ch.Name.String())),
+		Cure: fmt.Sprintf("state --unit %[1]s=%[2]s, with --scale %[1]s=FACTOR (%[2]s for 1 %[3]s) and --offset %[1]s=VALUE",
+			shellWord(ch.Name.String()), unit.Internal(ch.Quantity).Name, ch.Unit.Name),
 	}
 }
 

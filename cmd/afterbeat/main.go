@@ -12,8 +12,6 @@ import (
 	"os"
 	"os/signal"
 	"syscall"
-
-	"afterbeat/data/casenote"
 )
 
 func main() {
@@ -50,6 +48,3 @@ type stream struct {
 	in       io.Reader
 	out, err io.Writer
 }
-
-// caution precedes every printed result.
-func (s stream) caution() { fmt.Fprintln(s.out, casenote.Caution) }

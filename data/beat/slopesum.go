@@ -131,7 +131,7 @@ func references(ssf []float64, size int) []float64 {
 func between(x []float64, at float64) float64 {
 	at = max(0, min(at, float64(len(x)-1)))
 	k := min(int(at), len(x)-1)
-	if k+1 == len(x) {
+	if k+1 == len(x) || at == float64(k) { // the next sample may be missing
 		return x[k]
 	}
 	return x[k] + (at-float64(k))*(x[k+1]-x[k])

@@ -122,14 +122,15 @@ func channelTable(t Intake) casenote.Table {
 			{Words: data.Clean(ch.Unit.Name)},
 			{Words: data.Clean(string(ch.Site))},
 			{Number: &casenote.Number{Estimate: missing, Origin: data.Measured}},
-			{Words: data.Clean(t.role(i))},
+			{Words: data.Clean(t.roleWords(i))},
 		})
 	}
 	return table
 }
 
-// role is what a channel is used as.
-func (t Intake) role(i int) string {
+// Role is what channel i is used as: "pressure", "flow" or "velocity"; empty
+// where it is not used.
+func (t Intake) Role(i int) string {
 	switch i {
 	case t.Selection.Pressure:
 		return "pressure"
@@ -140,5 +141,18 @@ func (t Intake) role(i int) string {
 			return "velocity"
 		}
 	}
-	return "-"
+	return ""
+}
+
+// roleWords says what a channel is used as, and whether that was guessed.
+func (t Intake) roleWords(i int) string {
+	role := t.Role(i)
+	stated := map[string]string{"pressure": t.Case.Pressure, "flow": t.Case.Flow, "velocity": t.Case.Velocity}[role]
+	switch {
+	case role == "":
+		return "-"
+	case stated == "":
+		return role + " (guessed)"
+	}
+	return role
 }
