@@ -19,10 +19,11 @@
 //	r(L) = sum z(t) z(t+L) / sqrt(sum z(t)² sum z(t+L)²)
 //
 // has a peak at the period of a pulse, while the slope of a random walk is
-// white and has none. A period between 0.25 and 2.5 s counts if r reaches 0.5
-// there (more where the window is shorter than 8 s), r has fallen to half of that
-// before it, and no other lag does much better. An irregular rhythm shows no
-// such peak; it is recognised by upstrokes that resemble one another.
+// white and has none. A period between 0.25 and 2.5 s counts if r reaches 0.55
+// there (more where the window is shorter than 8.5 s), r has fallen to half of
+// that before it, no other lag does much better, and the next window agrees. An
+// irregular rhythm shows no such peak; it is recognised by upstrokes that
+// resemble one another.
 //
 // # Onsets
 //
@@ -41,6 +42,10 @@
 // first sample of the rise. On a rise (1 - cos)/2 it lies 18 % of the rise time
 // after its very beginning, which is a property of the method.
 //
+// Where the rhythm is regular, an upstroke between two higher ones that are one
+// period apart is a secondary wave (dicrotic, the end of a reversal) and no
+// onset.
+//
 // # Beats
 //
 // A beat is the samples From <= i < To, from onset to onset. Every beat is
@@ -56,4 +61,12 @@
 // length, linearly between samples; other signals at the same instants, or
 // later by their delay. Value(To) - value(From), averaged over the beats, is
 // kept: it is what a periodic fit would have to force shut.
+//
+// # What it cannot do
+//
+// A lasting bigeminy, or pulses of which every other one is weaker than half,
+// count as one beat of two pulses. A pump that changes its speed in a cycle of
+// 0.25 to 2.5 s by more than the heart's own pulse is taken for the pulse. With a
+// balloon that lifts diastole as high as systole nearly every beat is rejected.
+// A trace that is upside down has onsets, in the wrong places.
 package beat

@@ -238,3 +238,40 @@ func TestFindPanicsWithoutRate(t *testing.T) {
 		}()
 	}
 }
+
+// Whatever the samples, Find returns, and what it returns is in order.
+func TestFindOfAnything(t *testing.T) {
+	sample := rapid.OneOf(rapid.Float64Range(-200, 200), rapid.Just(math.NaN()), rapid.Just(math.Inf(1)), rapid.Float64(), rapid.Just(80.0))
+	found := 0
+	rapid.Check(t, func(t *rapid.T) {
+		rate := rapid.Float64Range(15, 400).Draw(t, "rate")
+		v := invented{rate: rate, seconds: rapid.Float64Range(0, 15).Draw(t, "seconds"), heartRate: rapid.Float64Range(20, 250).Draw(t, "heart rate"), amplitude: 40}
+		x, _ := v.make(rapid.Uint64().Draw(t, "seed"))
+		for _, fault := range rapid.SliceOfN(sample, 0, 30).Draw(t, "faults") {
+			if len(x) > 0 {
+				x[rapid.IntRange(0, len(x)-1).Draw(t, "at")] = fault
+			}
+		}
+		p := Find(x, rate, unit.Pressure)
+		if p.Found == (p.Reason != "") {
+			t.Fatalf("found %t, reason %q", p.Found, p.Reason)
+		}
+		if p.Found {
+			found++
+		}
+		for i, b := range p.Beats {
+			if b.From < 0 || b.From >= b.To || b.To >= len(x) || i > 0 && b.From != p.Beats[i-1].To {
+				t.Fatalf("beat %d: %+v", i, b)
+			}
+			if b.Rejected == "" && !(b.Min <= b.Mean && b.Mean <= b.Max) {
+				t.Fatalf("beat %d: %+v", i, b)
+			}
+		}
+		Cut(Match(p, p), rate, Signal{Values: x, Delay: 0.01}).Average(0)
+		p.Section(channelName, "mmHg")
+		p.Warnings(channelName)
+	})
+	if found == 0 {
+		t.Error("no pulse was found in any")
+	}
+}

@@ -138,3 +138,70 @@ func TestBreathingIsNoFault(t *testing.T) {
 		}
 	}
 }
+
+// Secondary waves are no onsets: a dicrotic wave of half the pulse, and the end
+// of the reversal in a leg's flow.
+func TestSecondaryWaves(t *testing.T) {
+	hump := func(u, at, width float64) float64 { return math.Exp(-(u - at) * (u - at) / (width * width)) }
+	for name, of := range map[string]func(u float64) float64{
+		"dicrotic": func(u float64) float64 { return 70 + 40*hump(u, 0.16, 0.07) + 20*hump(u, 0.48, 0.07) },
+		"triphasic": func(u float64) float64 {
+			return 5 + 100*hump(u, 0.15, 0.06) - 40*hump(u, 0.35, 0.06) + 20*hump(u, 0.52, 0.06)
+		},
+	} {
+		rng := rand.New(rand.NewPCG(2, 2))
+		x := make([]float64, 125*60)
+		for i := range x {
+			x[i] = of(math.Mod(float64(i)/125, 0.8)) + 0.5*rng.NormFloat64()
+		}
+		p := Find(x, 125, unit.Flow)
+		if math.Abs(p.HeartRate()-75) > 0.5 || p.Used() < 70 || len(p.Beats) > 76 {
+			t.Errorf("%s: %.1f/min, %d of %d used: %s", name, p.HeartRate(), p.Used(), len(p.Beats), Tally(p.Beats))
+		}
+	}
+}
+
+// A transducer that hangs free for part of the recording, with whatever noise,
+// gives no used beats there.
+func TestNoiseInPartOfARecording(t *testing.T) {
+	v := invented{rate: 125, seconds: 120, heartRate: 75, scatter: 0.03, amplitude: 40, noise: 1, offset: 60}
+	const noisy = 60 * 125
+	for name, noise := range map[string][]float64{
+		"white":       autoregressive(1, 125, 60, 0),
+		"random walk": autoregressive(1, 125, 60, 1),
+		"rounding":    flicker(1, 125, 60),
+	} {
+		x, _ := v.make(7)
+		copy(x, noise)
+		p := Find(x, v.rate, unit.Pressure)
+		inNoise := 0
+		for _, b := range used(p.Beats) {
+			if b.To < noisy {
+				inNoise++
+			}
+		}
+		if inNoise > 2 || p.Used() < 70 || math.Abs(p.HeartRate()-75) > 1 {
+			t.Errorf("%s: %d beats used in noise, %d in all, %.1f/min", name, inNoise, p.Used(), p.HeartRate())
+		}
+	}
+}
+
+// The heart rate may change within a recording, and the shape with it.
+func TestRisingHeartRate(t *testing.T) {
+	v := invented{rate: 125, amplitude: 40}
+	x := make([]float64, 300*125)
+	n := 0
+	for at := 0.0; at < 300; n++ {
+		interval := 60 / (60 + 90*at/300)
+		v.add(x, at, interval)
+		at += interval
+	}
+	rng := rand.New(rand.NewPCG(1, 1))
+	for i := range x {
+		x[i] += rng.NormFloat64()
+	}
+	p := Find(x, v.rate, unit.Pressure)
+	if len(p.Beats) < n-3 || len(p.Beats) > n || p.Used() < n-10 {
+		t.Errorf("%d of %d used, of %d: %s", p.Used(), len(p.Beats), n, Tally(p.Beats))
+	}
+}
