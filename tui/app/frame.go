@@ -1,0 +1,277 @@
+package app
+
+import (
+	"fmt"
+	"strings"
+	"unicode/utf8"
+
+	"github.com/charmbracelet/bubbles/key"
+	"github.com/charmbracelet/x/ansi"
+
+	"afterbeat/data"
+	"afterbeat/data/casenote"
+	"afterbeat/tui"
+	"afterbeat/tui/layout"
+)
+
+// The smallest terminal that the screens fit into, and the width from which
+// the caution fits on one row.
+const (
+	leastWidth  = 60
+	leastHeight = 15
+	oneRow      = len(casenote.Caution)
+)
+
+// View is the whole frame.
+func (m Model) View() (frame string) {
+	size := m.size
+	if size == (tui.Area{}) {
+		size = tui.Area{Width: 80, Height: 24}
+	}
+	defer caught(func(at string) { frame = clamp(m.faultRows(at), size, m.theme) })
+	switch {
+	case m.size == (tui.Area{}):
+		return clamp([]string{casenote.Caution}, size, m.theme)
+	case m.small():
+		return clamp(m.smallRows(), size, m.theme)
+	}
+	rows := append(m.head(), m.body()...)
+	return clamp(append(rows, m.status(size.Width), m.keyRow(size.Width)), size, m.theme)
+}
+
+// small tells that the screens do not fit.
+func (m Model) small() bool {
+	return m.size.Width < leastWidth || m.size.Height < leastHeight
+}
+
+// area is what a screen gets: two rows above it and two below are the root's.
+func (m Model) area() tui.Area {
+	return tui.Area{Width: m.size.Width, Height: max(m.size.Height-4, 1)}
+}
+
+// head is the caution, and the stages. Where the caution takes two rows, the
+// stages stand behind its end, short.
+func (m Model) head() []string {
+	if m.size.Width >= oneRow {
+		return []string{casenote.Caution, m.title(m.size.Width-cellsOfStages) + m.stages(true)}
+	}
+	rows := layout.Wrap(data.Clean(casenote.Caution), m.size.Width)
+	rows[1] += "  " + m.stages(false)
+	return rows[:2]
+}
+
+// cellsOfStages is the width of the stages with their names.
+const cellsOfStages = 53
+
+// title is program and label, or file, in width cells.
+func (m Model) title(width int) string {
+	name := m.options.Title.String()
+	if m.present.Label != "" {
+		name = m.present.Label
+	}
+	return layout.Pad(layout.Clean("afterbeat "+name, m.theme), width-1) + " "
+}
+
+// stages are the six stages: [3 Fit] is open, (4 Tree) not possible yet.
+func (m Model) stages(named bool) string {
+	var b strings.Builder
+	for _, s := range tui.Stages() {
+		name := fmt.Sprint(int(s))
+		if named || s == m.open {
+			name += " " + s.String()
+		}
+		switch {
+		case s == m.open:
+			name = "[" + name + "]"
+		case s.Missing(m.study) != "":
+			name = "(" + name + ")"
+		default:
+			name = " " + name + " "
+		}
+		b.WriteString(name)
+	}
+	return b.String()
+}
+
+// body is the open stage or the help, with an error over its last rows.
+func (m Model) body() []string {
+	a := m.area()
+	var rows []string
+	if m.helping {
+		rows = m.helpRows()
+		rows = rows[min(m.scroll, len(rows)):]
+	} else {
+		rows = strings.Split(m.screens[m.open].View(), "\n")
+	}
+	rows = append(rows[:min(len(rows), a.Height)], make([]string, max(a.Height-len(rows), 0))...)
+	over := m.errorRows(a.Width)
+	over = over[:min(len(over), a.Height)]
+	copy(rows[len(rows)-len(over):], over)
+	return rows
+}
+
+// keyRow lists the keys that work now, those of the screen first; the last ones
+// of the root are always there.
+func (m Model) keyRow(width int) string {
+	always, more := m.keysNow()
+	end := listed(always, width, "")
+	return listed(more, width, end)
+}
+
+// keysNow are the keys that work now, in two parts of which the first is always
+// listed.
+func (m Model) keysNow() (always, more []key.Binding) {
+	switch {
+	case m.naming:
+		return []key.Binding{keys.confirm, keys.back}, nil
+	case m.leaving == asks:
+		return []key.Binding{keys.first, keys.discard, keys.stay}, nil
+	case m.helping:
+		return keys.helpKeys(), nil
+	case m.typing():
+		return nil, m.screens[m.open].Keys()
+	case m.offer != nil:
+		return []key.Binding{keys.resume, keys.ignore, keys.interrupt}, nil
+	case m.small():
+		return []key.Binding{keys.quit}, nil
+	}
+	everywhere := m.everywhere()
+	n := len(everywhere) - 3 // save, help, quit
+	return everywhere[n:], append(m.screens[m.open].Keys(), everywhere[:n]...)
+}
+
+// listed is as many keys with their words as fit into width before end, which
+// follows them.
+func listed(bindings []key.Binding, width int, end string) string {
+	var b strings.Builder
+	room := width
+	if end != "" {
+		room -= len(end) + 2
+	}
+	for _, k := range bindings {
+		h := k.Help()
+		if !k.Enabled() || h.Key == "" {
+			continue
+		}
+		words := h.Key + " " + h.Desc
+		if b.Len() > 0 {
+			words = "  " + words
+		}
+		if ansi.StringWidth(b.String()+words) > room {
+			break
+		}
+		b.WriteString(words)
+	}
+	if b.Len() > 0 && end != "" {
+		b.WriteString("  ")
+	}
+	return b.String() + end
+}
+
+// smallRows say what to do in a terminal that is too small.
+func (m Model) smallRows() []string {
+	rows := layout.Wrap(data.Clean(casenote.Caution), m.size.Width)
+	words := func(s string) {
+		if s != "" {
+			rows = append(rows, layout.Wrap(layout.Clean(s, m.theme), m.size.Width)...)
+		}
+	}
+	words(fmt.Sprintf("This terminal is %dx%d; the screens need %dx%d.", m.size.Width, m.size.Height, leastWidth, leastHeight))
+	if m.options.Screenless.Width() > 0 {
+		words("Without a screen: " + m.options.Screenless.String())
+	}
+	rows = append(rows, m.errorRows(m.size.Width)...)
+	if m.naming || m.leaving == asks || m.offer != nil {
+		words(m.status(max(m.size.Width, 40)))
+	}
+	words(m.keyRow(max(m.size.Width, 40)))
+	return rows
+}
+
+// faultRows stand where a frame could not be made.
+func (m Model) faultRows(at string) []string {
+	return []string{
+		casenote.Caution,
+		"The program has a fault at " + at + ".",
+		"Nothing is lost. Another digit opens another stage; q quits.",
+	}
+}
+
+// clamp cuts a frame to the size, from below and from the right, so that the
+// caution stays. It lets no control byte through but colours, and in ASCII no
+// byte from 0x80 on.
+func clamp(rows []string, a tui.Area, t tui.Theme) string {
+	var b strings.Builder
+	for i, row := range rows[:min(len(rows), a.Height)] {
+		if i > 0 {
+			b.WriteByte('\n')
+		}
+		if !harmless(row, t) {
+			row = defused(row, t)
+		}
+		if len(row) > a.Width && ansi.StringWidth(row) > a.Width {
+			row = ansi.Truncate(row, a.Width, "")
+		}
+		b.WriteString(strings.TrimRight(row, " "))
+	}
+	return b.String()
+}
+
+// harmless tells that a row has printable ASCII only, or, where the theme has
+// it, Unicode without control characters.
+func harmless(row string, t tui.Theme) bool {
+	for i := range len(row) {
+		switch c := row[i]; {
+		case c < ' ', c == 0x7f, c >= 0x80 && t.ASCII:
+			return false
+		case c == 0xc2 && i+1 < len(row) && row[i+1] < 0xa0: // U+0080 to U+009F
+			return false
+		}
+	}
+	return t.ASCII || utf8.ValidString(row)
+}
+
+// defused is a row with everything but text and colours made visible.
+func defused(row string, t tui.Theme) string {
+	var b strings.Builder
+	for len(row) > 0 {
+		if n := colour(row); n > 0 {
+			b.WriteString(row[:n])
+			row = row[n:]
+			continue
+		}
+		n := strings.IndexByte(row[1:], '\x1b') + 1
+		if n == 0 {
+			n = len(row)
+		}
+		b.WriteString(visible(row[:n], t))
+		row = row[n:]
+	}
+	return b.String()
+}
+
+// visible is text that keeps its spaces.
+func visible(s string, t tui.Theme) string {
+	parts := strings.Split(s, " ")
+	for i, p := range parts {
+		parts[i] = layout.Clean(p, t).String()
+	}
+	return strings.Join(parts, " ")
+}
+
+// colour is the length of the escape sequence for colour that s begins with; 0
+// where it begins with none.
+func colour(s string) int {
+	if !strings.HasPrefix(s, "\x1b[") {
+		return 0
+	}
+	for i := 2; i < len(s); i++ {
+		switch c := s[i]; {
+		case c == 'm':
+			return i + 1
+		case c != ';' && (c < '0' || c > '9'):
+			return 0
+		}
+	}
+	return 0
+}

@@ -1,0 +1,490 @@
+package app
+
+import (
+	"context"
+	"strings"
+	"testing"
+	"time"
+
+	tea "github.com/charmbracelet/bubbletea"
+
+	"afterbeat/data"
+	"afterbeat/data/casefile"
+	"afterbeat/data/casenote"
+	"afterbeat/tree/study"
+	"afterbeat/tui"
+)
+
+func TestStartsOnTheFit(t *testing.T) {
+	d := started(t, nil)
+	d.wantView("[3 Fit]")
+	d.wantView("(4 Tree)")
+	d.wantStatus("used: ")
+	for _, s := range tui.Stages() {
+		if s == tui.Tree {
+			continue
+		}
+		if got := d.screen(s); got.shown < 5 || got.study.Comparison == nil || got.area != (tui.Area{Width: 80, Height: 20}) {
+			t.Errorf("%s: shown %d times, area %v", s, got.shown, got.area)
+		}
+	}
+}
+
+func TestEveryStageIsShownAtOnce(t *testing.T) {
+	d := newDriver(t, nil)
+	d.hold = true
+	d.do(d.m.Init())
+	var seen []study.Stage
+	for len(d.waiting) > 0 {
+		d.step(0)
+		if p := d.screen(tui.Note).study.Pending(); len(seen) == 0 || seen[len(seen)-1] != p {
+			seen = append(seen, p)
+		}
+	}
+	want := []study.Stage{study.StageIntake, study.StageBeats, study.StageFit, study.StageSupport, study.StageDone}
+	if len(seen) != len(want) {
+		t.Errorf("shown with pending %v, want %v", seen, want)
+	}
+}
+
+func TestStartsWhereAPersonIsNeeded(t *testing.T) {
+	for _, c := range []struct {
+		name string
+		next func(context.Context, study.Study) (study.Study, error)
+		want string
+		said string
+	}{
+		{"a choice", func(_ context.Context, s study.Study) (study.Study, error) {
+			s.Intake = &study.Intake{}
+			return s, &data.AmbiguousError{Role: "pressure", Names: []data.Text{data.Clean("a"), data.Clean("b\x1b")}, Flag: "--pressure"}
+		}, "[1 Intake]", `Error: the pressure could be a or b\x1b`},
+		{"no pulse", func(ctx context.Context, s study.Study) (study.Study, error) {
+			s, err := revealed(ctx, s)
+			if s.Beats != nil && s.Fit == nil {
+				b := *s.Beats
+				b.Reason = "no pulse in q"
+				s.Beats = &b
+			}
+			return s, err
+		}, "[2 Beats]", "no pulse in q"},
+	} {
+		d := newDriver(t, nil)
+		d.m.next = c.next
+		d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+		d.do(d.m.Init())
+		d.wantView(c.want)
+		d.wantView(c.said)
+	}
+	d := newDriver(t, nil)
+	d.m.next = func(_ context.Context, s study.Study) (study.Study, error) { return s, errAny }
+	d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+	d.keys("6")
+	d.do(d.m.Init())
+	d.wantView("[6 Note]")
+}
+
+func TestStages(t *testing.T) {
+	d := started(t, nil)
+	for _, step := range []struct{ key, want string }{
+		{"1", "[1 Intake]"},
+		{"tab", "[2 Beats]"},
+		{"6", "[6 Note]"},
+		{"tab", "[1 Intake]"},
+		{"shift+tab", "[6 Note]"},
+		{"shift+tab", "[5 Support]"},
+		{"4", "[4 Tree]"},
+		{"3", "[3 Fit]"},
+	} {
+		d.keys(step.key)
+		d.wantView(step.want)
+	}
+	d.keys("4")
+	d.wantStatus("Tree: the tree of arteries comes")
+	d.wantView("\nthe tree of arteries comes")
+	d.keys("2 n")
+	d.wantView("[6 Note]")
+	if d.screen(tui.Beats).study.Comparison == nil {
+		t.Error("a screen lost its study")
+	}
+}
+
+func TestCommandsComeBackToTheirScreen(t *testing.T) {
+	d := started(t, nil)
+	d.hold = true
+	d.keys("2 w 3")
+	d.hold = false
+	d.run()
+	if got := d.screen(tui.Beats).got; strings.Join(got, " ") != strings.Repeat("shown ", len(got)-2)+"beats beats" {
+		t.Errorf("beats got %q", got)
+	}
+	if got := strings.Join(d.screen(tui.Fit).got, " "); strings.Contains(got, "beats") {
+		t.Errorf("fit got %q", got)
+	}
+}
+
+func TestBurstsAndPastes(t *testing.T) {
+	d := started(t, nil)
+	d.keys("1")
+	d.burst("il2d")
+	if n := len(d.m.past); n != 3 {
+		t.Errorf("%d changes of 3 in a burst", n)
+	}
+	d.wantView("[2 Beats]")
+	d.burst("/qu 12?")
+	if s := d.screen(tui.Beats); s.typed != "qu 12?" || d.quits {
+		t.Errorf("typed %q, quits %v", s.typed, d.quits)
+	}
+	d.send(tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("pasted q"), Paste: true})
+	if s := d.screen(tui.Beats); s.typed != "qu 12?pasted q" || s.pasted != 1 {
+		t.Errorf("typed %q", s.typed)
+	}
+	d.keys("tab ctrl+z")
+	d.wantView("[2 Beats]")
+	d.keys("esc")
+	d.send(tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("q"), Paste: true})
+	d.send(tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("1uu"), Paste: true})
+	d.wantView("[2 Beats]")
+	d.wantStatus("pasted text goes into text fields only")
+	if d.quits || len(d.m.past) != 3 {
+		t.Error("a paste was taken for keys")
+	}
+}
+
+func TestUndoAndRedo(t *testing.T) {
+	d := started(t, nil)
+	first := d.m.present
+	d.keys("1 i 2 d d")
+	last := d.m.present
+	if len(last.Drop) != 2 || len(last.Invert) != 1 {
+		t.Fatalf("%+v", last)
+	}
+	d.keys("u u u")
+	if !same(d.m.present, first) {
+		t.Errorf("%+v", d.m.present)
+	}
+	d.wantStatus("undone: intake inverted")
+	d.keys("u")
+	d.wantStatus("nothing to undo")
+	d.keys("ctrl+r ctrl+r ctrl+r")
+	if !same(d.m.present, last) || !same(d.screen(tui.Fit).study.Inputs.Case, last) {
+		t.Errorf("%+v", d.m.present)
+	}
+	d.keys("ctrl+r")
+	d.wantStatus("nothing to redo")
+	d.keys("u i ctrl+r")
+	d.wantStatus("nothing to redo")
+	if len(d.m.present.Drop) != 1 {
+		t.Errorf("%+v", d.m.present)
+	}
+}
+
+func TestQuickChangesDoNotTakeEachOtherBack(t *testing.T) {
+	d := started(t, nil)
+	d.hold = true
+	d.burst("1i2i")
+	d.hold = false
+	d.run()
+	if got := strings.Join(d.m.present.Invert, " "); got != "intake beats" {
+		t.Errorf("inverted: %q", got)
+	}
+	if got := strings.Join(d.screen(tui.Fit).study.Inputs.Case.Invert, " "); got != "intake beats" {
+		t.Errorf("shown inverted: %q", got)
+	}
+}
+
+func TestWhatTakesLongerIsTakenLater(t *testing.T) {
+	d := started(t, nil)
+	d.m.moment = time.Millisecond
+	c := d.m.present
+	c.Label = "slow-1"
+	release := make(chan bool)
+	slow := d.m.of(tui.Beats, tea.Batch(tui.Say("at once"), func() tea.Msg {
+		<-release
+		return tui.ChangeMsg{Said: data.Clean("slow"), Case: c}
+	}))
+	m, rest := d.m.atOnce(slow)
+	d.m = m
+	if rest == nil || d.m.present.Label == "slow-1" {
+		t.Fatal("waited for")
+	}
+	d.keys("1 i")
+	close(release)
+	d.do(rest)
+	d.run()
+	if d.m.present.Label != "slow-1" || len(d.m.present.Invert) != 1 {
+		t.Errorf("%+v", d.m.present)
+	}
+}
+
+func TestAKeyIsDoneBeforeTheNext(t *testing.T) {
+	d := started(t, nil)
+	d.hold = true
+	d.burst("1iiidddq")
+	if n := len(d.m.present.Drop); n != 3 || len(d.m.present.Invert) != 1 || d.m.leaving != asks {
+		t.Errorf("dropped %d, inverted %v, leaving %v", n, d.m.present.Invert, d.m.leaving)
+	}
+}
+
+func TestLateResultsAreDropped(t *testing.T) {
+	d := started(t, nil)
+	d.hold = true
+	number := d.m.job.number
+	c := d.m.present
+	c.Model = "wk2"
+	m, _ := d.m.change(data.Clean("model"), c)
+	d.m = m
+	fit := d.m.study
+	d.send(stageMsg{number: number, study: study.Study{}})
+	d.send(loadedMsg{number: number, inputs: study.Inputs{}})
+	d.send(stageMsg{number: number, err: errAny})
+	d.send(tickMsg{number})
+	if d.m.study.Beats == nil || d.m.study.Beats != fit.Beats || len(d.m.errors) > 0 || d.m.job.shown != "" {
+		t.Error("a late result was taken over")
+	}
+}
+
+func TestOnlyWhatAChangeBearsOnIsComputed(t *testing.T) {
+	loads, stages := 0, []study.Stage{}
+	d := newDriver(t, func(o *Options) {
+		load := o.Load
+		o.Load = func(ctx context.Context, c casefile.Case) (study.Inputs, error) { loads++; return load(ctx, c) }
+	})
+	d.m.next = func(ctx context.Context, s study.Study) (study.Study, error) {
+		stages = append(stages, s.Pending())
+		return revealed(ctx, s)
+	}
+	d.do(d.m.Init())
+	for _, c := range []struct {
+		change func(*casefile.Case)
+		loads  int
+		stages int
+	}{
+		{func(c *casefile.Case) { c.Share = []float64{0.3} }, 0, 1},
+		{func(c *casefile.Case) { c.Model = "wk2" }, 0, 2},
+		{func(c *casefile.Case) { c.Invert = []string{"x"} }, 0, 4},
+		{func(c *casefile.Case) { c.Unit = map[string]string{"x": "kPa"} }, 1, 4},
+		{func(c *casefile.Case) { c.Label = "p-1" }, 0, 0},
+	} {
+		loads, stages = 0, nil
+		next := d.m.present
+		c.change(&next)
+		m, cmd := d.m.change(data.Clean("changed"), next)
+		d.m = m
+		d.do(cmd)
+		if loads != c.loads || len(stages) != c.stages {
+			t.Errorf("read %d times, want %d; computed %v, want %d", loads, c.loads, stages, c.stages)
+		}
+		if d.m.study.Comparison == nil {
+			t.Error("not computed to the end")
+		}
+	}
+}
+
+func TestProgressAndCancel(t *testing.T) {
+	d := newDriver(t, nil)
+	d.hold = true
+	d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+	d.send(startMsg{})
+	if strings.Contains(d.m.View(), "computing") || strings.Contains(d.m.View(), "reading") && !strings.Contains(d.m.View(), "esc") {
+		t.Error("progress in the first moments")
+	}
+	d.send(tickMsg{d.m.job.number})
+	d.wantStatus("reading the recording 1/5, esc cancels")
+	for d.m.study.Beats == nil {
+		d.step(0)
+	}
+	d.wantStatus("reading") // no sooner than the next tick
+	d.send(tickMsg{d.m.job.number})
+	d.wantStatus("computing fit 4/5, esc cancels")
+	ctx := d.m.job.ctx
+	d.keys("esc")
+	if ctx.Err() == nil || d.m.job.running {
+		t.Error("not cancelled")
+	}
+	d.hold = false
+	d.run()
+	if d.m.study.Fit != nil || d.m.study.Beats == nil {
+		t.Error("computed on after esc")
+	}
+	d.wantStatus("stopped")
+	d.keys("s")
+	d.wantStatus("once everything is computed")
+	d.keys("5")
+	if d.m.study.Comparison == nil {
+		t.Error("the digit of a stage that is missing does not compute on")
+	}
+}
+
+func TestEscGoesToTheScreenThatListsIt(t *testing.T) {
+	d := started(t, nil)
+	d.hold = true
+	d.keys("1 o i")
+	d.run()
+	d.hold = true
+	d.keys("i")
+	for !d.m.job.running {
+		d.step(0)
+	}
+	d.keys("esc")
+	if d.screen(tui.Intake).inner || !d.m.job.running {
+		t.Error("esc did not go to the screen")
+	}
+	d.keys("esc")
+	if d.m.job.running {
+		t.Error("esc did not cancel")
+	}
+}
+
+func TestErrorsStayUntilAnswered(t *testing.T) {
+	d := newDriver(t, nil)
+	fails := true
+	d.m.next = func(ctx context.Context, s study.Study) (study.Study, error) {
+		if s.Pending() == study.StageFit && fails {
+			s.Fit = &study.Fit{}
+			return s, errChoice
+		}
+		return revealed(ctx, s)
+	}
+	d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+	d.do(d.m.Init())
+	d.wantView(`Error: --site abp: "x" is no site`)
+	d.wantView("Hint: sites: root, lvot")
+	if d.m.study.Fit != nil || d.m.study.Beats == nil {
+		t.Error("the study does not stay as far as it came")
+	}
+	d.keys("1 2 e ?")
+	d.wantView("Error (1 of 2): --site")
+	d.keys("esc esc")
+	d.wantView(`Error: beats: that is not possible\x1b[2J`)
+	d.keys("enter")
+	if strings.Contains(d.m.View(), "Error") {
+		t.Error(d.m.View())
+	}
+	d.keys("i")
+	d.wantView("Error: --site")
+	fails = false
+	d.keys("i")
+	if strings.Contains(d.m.View(), "Error") || d.m.study.Fit == nil {
+		t.Error("an error of the case before still stands")
+	}
+}
+
+func TestAFirstReadingThatFailsEndsIt(t *testing.T) {
+	broken := &data.FileError{File: "a.csv", Line: 3, What: "flow is not a number"}
+	d := newDriver(t, func(o *Options) {
+		o.Load = func(context.Context, casefile.Case) (study.Inputs, error) { return study.Inputs{}, broken }
+	})
+	d.do(d.m.Init())
+	if _, err := d.m.finish(nil); !d.quits || err != error(broken) {
+		t.Errorf("quits %v with %v", d.quits, err)
+	}
+}
+
+func TestAFaultIsAPlaceWithoutAValue(t *testing.T) {
+	d := started(t, nil)
+	d.keys("1 d")
+	for _, k := range []string{"p", "P"} {
+		d.keys(k)
+		d.wantView("Error: the program has a fault at app.stub")
+		if v := d.m.View(); strings.Contains(v, secret) || !strings.Contains(v, "stub_test.go:") {
+			t.Errorf("%s", v)
+		}
+		d.keys("esc")
+	}
+	if len(d.m.present.Drop) != 1 {
+		t.Error("a choice was lost")
+	}
+	d.m.next = func(context.Context, study.Study) (study.Study, error) { panic(secret) }
+	d.keys("i")
+	d.wantView("fault at app.Test")
+	d.keys("esc u")
+	d.keys("3 V")
+	d.wantView("Nothing is lost.")
+	d.wantView("fault at app.stub.View")
+	if rows := d.rows(); rows[0] != casenote.Caution {
+		t.Error(rows[0])
+	}
+	d.keys("2")
+	d.wantView("[2 Beats]")
+}
+
+func TestHelpIsMadeFromTheKeys(t *testing.T) {
+	d := started(t, nil)
+	d.keys("2 d ?")
+	for _, b := range append(d.m.everywhere(), d.screen(tui.Beats).Keys()...) {
+		if b.Enabled() {
+			d.send(keyOf("g"))
+			found := false
+			for range 40 {
+				found = found || strings.Contains(d.m.View(), b.Help().Desc)
+				d.keys("j")
+			}
+			if !found {
+				t.Errorf("the help does not list %q", b.Help())
+			}
+		}
+	}
+	d.keys("G")
+	bottom := d.m.scroll
+	d.keys("j pgdown")
+	if d.m.scroll != bottom || bottom == 0 {
+		t.Errorf("scrolled to %d and %d", bottom, d.m.scroll)
+	}
+	d.wantView("the tree of arteries comes")
+	d.keys("pgup home k")
+	d.wantView("Keys of 2 Beats")
+	d.keys("i")
+	if len(d.m.past) != 1 {
+		t.Error("a key went through the help")
+	}
+	d.keys("?")
+	if d.m.helping {
+		t.Error("? does not close the help")
+	}
+}
+
+func TestASCII(t *testing.T) {
+	d := started(t, func(o *Options) { o.Title, o.Case.Label = data.Clean("münchen-07.csv"), "" })
+	d.wantView("münchen")
+	d.keys("A")
+	if !d.screen(tui.Note).theme.ASCII {
+		t.Error("the screens keep their theme")
+	}
+	d.wantView(`m\u{fc}n`)
+	d.keys("A")
+	d.wantView("münchen")
+}
+
+func TestSuspendAndRedraw(t *testing.T) {
+	d := started(t, nil)
+	d.keys("ctrl+l")
+	if d.clears != 1 {
+		t.Error("ctrl+l does not redraw")
+	}
+	_, cmd := d.m.one(keyOf("ctrl+z"))
+	if cmd == nil || typeName(cmd()) != "tea.SuspendMsg" {
+		t.Error("ctrl+z does not go to the shell")
+	}
+	d.m.leader = true
+	_, cmd = d.m.one(keyOf("ctrl+z"))
+	if cmd != nil {
+		t.Error("ctrl+z stops a program that nobody can wake")
+	}
+	d.keys("ctrl+z")
+	d.wantStatus("no shell to return to")
+}
+
+func TestSmall(t *testing.T) {
+	d := started(t, nil)
+	d.send(tea.WindowSizeMsg{Width: 40, Height: 12})
+	d.wantView("This terminal is 40x12")
+	d.wantView("Without a screen: afterbeat study")
+	d.keys("1 i")
+	if len(d.m.past) > 0 || d.m.open != tui.Fit {
+		t.Error("a key worked that nobody sees the effect of")
+	}
+	d.keys("q")
+	if !d.quits {
+		t.Error("q does not quit")
+	}
+}
