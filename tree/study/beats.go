@@ -142,7 +142,7 @@ func (b *Beats) fromVelocity(ch data.Channel, widths map[string]float64) ([]floa
 	}
 	k, err := doppler.ParseProfile(c.Profile)
 	if err != nil {
-		return nil, &ChoiceError{Key: "profile", What: err.Error()}
+		return nil, &ChoiceError{Key: "profile", What: err.Error(), Hint: "a factor, mean over measured velocity; leave it out for that of the site"}
 	}
 	if !ch.Unit.Calibrated {
 		return ch.Values, nil // refused with its reason by the fit

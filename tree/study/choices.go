@@ -56,6 +56,14 @@ type errorKind struct {
 	standard float64
 }
 
+// example is how a half-width of this error may be written.
+func (k errorKind) example() string {
+	if k.relative {
+		return fmt.Sprintf("--error %s=%g%%", k.name, 100*k.standard)
+	}
+	return fmt.Sprintf("--error %s=%g (%s)", k.name, k.standard, k.unit)
+}
+
 // errorKinds lists the systematic errors that this stage of the work uses.
 func errorKinds() []errorKind {
 	return []errorKind{
@@ -78,7 +86,8 @@ func halfWidths(c casefile.Case) (map[string]float64, error) {
 		widths[k.name] = k.standard
 		known = append(known, k.name)
 	}
-	for name, written := range c.Error {
+	for _, name := range sorted(c.Error) {
+		written := c.Error[name]
 		i := slices.Index(known, name)
 		key := "error." + name
 		if i < 0 {
@@ -86,7 +95,7 @@ func halfWidths(c casefile.Case) (map[string]float64, error) {
 		}
 		w, err := parseHalfWidth(written, errorKinds()[i])
 		if err != nil {
-			return nil, &ChoiceError{Key: key, What: err.Error()}
+			return nil, &ChoiceError{Key: key, What: err.Error(), Hint: "a 95 % half-width, for instance " + errorKinds()[i].example()}
 		}
 		widths[name] = w
 	}
@@ -112,7 +121,8 @@ func parseHalfWidth(s string, k errorKind) (float64, error) {
 // sites checks the sites that the case states, by channel name.
 func sites(c casefile.Case) (map[string]data.Site, error) {
 	out := map[string]data.Site{}
-	for name, s := range c.Site {
+	for _, name := range sorted(c.Site) {
+		s := c.Site[name]
 		if !slices.Contains(data.Sites(), data.Site(s)) {
 			return nil, &ChoiceError{Key: "site." + name, What: fmt.Sprintf("%q is no site", data.Clean(s)), Hint: "sites: " + joinSites()}
 		}
@@ -169,7 +179,7 @@ func shares(c casefile.Case) ([]float64, error) {
 	}
 	for _, s := range c.Share {
 		if !(s >= 0 && s <= 1) {
-			return nil, &ChoiceError{Key: "share", What: fmt.Sprintf("%v is not between 0 and 1", s)}
+			return nil, &ChoiceError{Key: "share", What: fmt.Sprintf("%v is not between 0 and 1", s), Hint: "the pump's part of the mean flow, for instance --share 0.5"}
 		}
 	}
 	out := slices.Clone(c.Share)
@@ -179,9 +189,9 @@ func shares(c casefile.Case) ([]float64, error) {
 
 // unitOf checks a unit that the case states for a channel.
 func unitOf(c casefile.Case) error {
-	for name, u := range c.Unit {
-		if _, ok := unit.Parse(u); !ok {
-			return &ChoiceError{Key: "unit." + name, What: fmt.Sprintf("%q is no unit", data.Clean(u)), Hint: "for instance mmHg, kPa, mL/s, L/min, cm/s, m/s"}
+	for _, name := range sorted(c.Unit) {
+		if _, ok := unit.Parse(c.Unit[name]); !ok {
+			return &ChoiceError{Key: "unit." + name, What: fmt.Sprintf("%q is no unit", data.Clean(c.Unit[name])), Hint: "for instance mmHg, kPa, mL/s, L/min, cm/s, m/s"}
 		}
 	}
 	return nil

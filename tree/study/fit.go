@@ -43,6 +43,10 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 	if err := checkModel(b.Intake.Case); err != nil {
 		return f, err
 	}
+	settings, err := fitSettings(b.Intake.Case)
+	if err != nil {
+		return f, err
+	}
 	if b.Intake.Ambiguous != nil && b.NoPulse() == "" {
 		return f, b.Intake.Ambiguous
 	}
@@ -67,10 +71,6 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 		return f, nil
 	}
 	beats, err := fitData(b)
-	if err != nil {
-		return f, err
-	}
-	settings, err := fitSettings(b.Intake.Case)
 	if err != nil {
 		return f, err
 	}
@@ -210,13 +210,13 @@ func fitSettings(c casefile.Case) (fitting.Settings, error) {
 	var s fitting.Settings
 	if n := c.Replicates; n != nil {
 		if *n < 1 || *n > 1_000_000 {
-			return s, &ChoiceError{Key: "replicates", What: fmt.Sprintf("%d is not between 1 and 1000000", *n)}
+			return s, &ChoiceError{Key: "replicates", What: fmt.Sprintf("%d is not between 1 and 1000000", *n), Hint: "leave it out for 1000"}
 		}
 		s.Replicates = *n
 	}
 	if n := c.Seed; n != nil {
 		if *n < 1 {
-			return s, &ChoiceError{Key: "seed", What: fmt.Sprintf("%d is not a whole number from 1", *n)}
+			return s, &ChoiceError{Key: "seed", What: fmt.Sprintf("%d is not a whole number from 1", *n), Hint: "leave it out for 1"}
 		}
 		s.Seed = uint64(*n)
 	}

@@ -27,7 +27,7 @@ func Read(c casefile.Case, read func(name string) ([]byte, error)) (Inputs, erro
 	rate := 0.0
 	if c.Rate != nil {
 		if rate = *c.Rate; !(rate > 0) {
-			return in, &ChoiceError{Key: "rate", What: fmt.Sprintf("%v is not a rate above 0 Hz", rate)}
+			return in, &ChoiceError{Key: "rate", What: fmt.Sprintf("%v is not a rate above 0 Hz", rate), Hint: "the samples a second, for instance --rate 200"}
 		}
 	}
 	content, err := read(c.Recording)

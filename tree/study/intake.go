@@ -86,12 +86,12 @@ func corrected(channels []data.Channel, c casefile.Case) ([]data.Channel, error)
 	if err != nil {
 		return nil, err
 	}
-	for name, s := range stated {
+	for _, name := range sorted(stated) {
 		i, err := data.FindChannel(channels, name, "--site")
 		if err != nil {
-			return nil, &ChoiceError{Key: "site." + name, What: err.Error()}
+			return nil, noColumn("site."+name, err, channels)
 		}
-		out[i].Site = s
+		out[i].Site = stated[name]
 	}
 	return out, nil
 }
@@ -105,25 +105,38 @@ func calibrations(channels []data.Channel, c casefile.Case) ([]calibration, erro
 	for _, name := range sorted(c.Scale) {
 		i, err := data.FindChannel(channels, name, "--scale")
 		if err != nil {
-			return nil, &ChoiceError{Key: "scale." + name, What: err.Error()}
+			return nil, noColumn("scale."+name, err, channels)
+		}
+		if c.Scale[name] == 0 {
+			return nil, &ChoiceError{Key: "scale." + name, What: "a factor of 0 leaves nothing of a channel", Hint: "to change its sign, --invert"}
 		}
 		out[i].scale = c.Scale[name]
 	}
 	for _, name := range sorted(c.Offset) {
 		i, err := data.FindChannel(channels, name, "--offset")
 		if err != nil {
-			return nil, &ChoiceError{Key: "offset." + name, What: err.Error()}
+			return nil, noColumn("offset."+name, err, channels)
 		}
 		out[i].shift = c.Offset[name] * channels[i].Unit.Factor
 	}
 	for _, name := range c.Invert {
 		i, err := data.FindChannel(channels, name, "--invert")
 		if err != nil {
-			return nil, &ChoiceError{Key: "invert", What: err.Error()}
+			return nil, noColumn("invert", err, channels)
 		}
 		out[i].scale = -out[i].scale
 	}
 	return out, nil
+}
+
+// noColumn is the error of a choice about a column that is not there, or not
+// the only one of its name.
+func noColumn(key string, err error, channels []data.Channel) error {
+	var names []string
+	for _, ch := range channels {
+		names = append(names, ch.Name.String())
+	}
+	return &ChoiceError{Key: key, What: err.Error(), Hint: "columns: " + list(names)}
 }
 
 // calibration turns a value into scale times itself plus shift.
@@ -157,6 +170,16 @@ func span(rec *data.Recording, c casefile.Case) (data.Span, error) {
 		return s, &ChoiceError{Key: "to", What: fmt.Sprintf("%g s lies before the start", s.To), Hint: hint}
 	case s.To <= s.From:
 		return s, &ChoiceError{Key: "to", What: fmt.Sprintf("%g s is not after --from %g s", s.To, s.From), Hint: hint}
+	}
+	for i, at := range slices.Concat(c.Drop, c.Keep) {
+		if first <= at && at <= last {
+			continue
+		}
+		key := "drop"
+		if i >= len(c.Drop) {
+			key = "keep"
+		}
+		return s, &ChoiceError{Key: key, What: fmt.Sprintf("%g s lies outside the recording", at), Hint: hint}
 	}
 	return s, nil
 }
