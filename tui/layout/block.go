@@ -17,7 +17,7 @@ func Fit(lines []string, a tui.Area) string {
 		if i > 0 {
 			b.WriteByte('\n')
 		}
-		if ansi.StringWidth(line) > a.Width {
+		if len(line) > a.Width && ansi.StringWidth(line) > a.Width {
 			line = ansi.Truncate(line, max(a.Width, 0), "")
 		}
 		b.WriteString(strings.TrimRight(line, " "))

@@ -1,0 +1,56 @@
+package intake
+
+import (
+	"github.com/charmbracelet/bubbles/key"
+
+	"afterbeat/tui/trace"
+	"afterbeat/tui/warnlist"
+)
+
+// keyMap are the keys of the screen; those of the trace and of the list of
+// warnings are their own.
+type keyMap struct {
+	Down, Up, Use, Site, SiteBack, Unit, Calibrate, Invert, Start, End, Clear key.Binding
+	Set, Cancel                                                               key.Binding // in a text field
+	Trace                                                                     trace.Keys
+	List                                                                      warnlist.Keys
+}
+
+func newKeys() keyMap {
+	bind := func(shown, does string, keys ...string) key.Binding {
+		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
+	}
+	return keyMap{
+		Down:      bind("j", "next channel", "j", "down"),
+		Up:        bind("k", "channel before", "k", "up"),
+		Use:       bind("enter", "use it", "enter"),
+		Site:      bind("o", "next site", "o"),
+		SiteBack:  bind("O", "site before", "O"),
+		Unit:      bind("e", "unit", "e"),
+		Calibrate: bind("c", "calibrate", "c"),
+		Invert:    bind("i", "invert", "i"),
+		Start:     bind("[", "span starts at cursor", "["),
+		End:       bind("]", "span ends at cursor", "]"),
+		Clear:     bind("w", "whole span", "w"),
+		Set:       bind("enter", "set", "enter"),
+		Cancel:    bind("esc", "cancel", "esc"),
+		Trace:     trace.NewKeys(),
+		List:      warnlist.NewKeys(),
+	}
+}
+
+// Keys are the bindings that work now.
+func (m Model) Keys() []key.Binding {
+	k := m.keys
+	switch {
+	case m.question.open():
+		return []key.Binding{k.Set, k.Cancel}
+	case m.list.Open():
+		return k.List.Bindings()
+	case len(m.ready.channels) == 0:
+		return []key.Binding{k.List.Open}
+	}
+	own := []key.Binding{k.Down, k.Up, k.Use, k.Site, k.Unit, k.Invert, k.Calibrate, k.Start, k.End, k.Clear}
+	own = append(own, k.Trace.Bindings()...)
+	return append(own, k.List.Open, k.SiteBack)
+}
