@@ -1,0 +1,300 @@
+package fit_test
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+	"sync"
+	"testing"
+
+	"github.com/charmbracelet/bubbles/key"
+
+	"afterbeat/data"
+	"afterbeat/data/casefile"
+	"afterbeat/data/casenote"
+	"afterbeat/fitting"
+	"afterbeat/tree/study"
+	"afterbeat/tui"
+	"afterbeat/tui/fit"
+	"afterbeat/tui/screentest"
+)
+
+var (
+	once sync.Once
+	demo study.Study
+)
+
+// computed is the demo, computed once for all tests.
+func computed(t testing.TB) study.Study {
+	t.Helper()
+	once.Do(func() { demo = screentest.Demo(t, nil) })
+	return demo
+}
+
+var small = tui.Area{Width: 80, Height: 20}
+
+func open(s study.Study, keys ...string) *screentest.Bench {
+	return screentest.New(fit.New(), s, small, tui.Theme{}).Press(keys...)
+}
+
+func TestGolden(t *testing.T) {
+	s := computed(t)
+	views := func(s study.Study, keys ...string) func(tui.Area, tui.Theme) string {
+		return func(a tui.Area, theme tui.Theme) string {
+			return screentest.New(fit.New(), s, a, theme).Press(keys...).View()
+		}
+	}
+	screentest.Golden(t, "fit", views(s))
+	screentest.Golden(t, "what-if", views(s, "]"), small)
+	screentest.Golden(t, "opened", views(s, "down", "x"), small)
+	screentest.Golden(t, "table", views(s, "t"), small)
+	screentest.Golden(t, "flow", views(s, "f"), small)
+	screentest.Golden(t, "pressure-only", views(screentest.Pressure(t, "aortic_pressure", true)), small)
+	screentest.Golden(t, "no-pulse", views(screentest.Pressure(t, "aortic_pressure", false)), small)
+}
+
+func says(t *testing.T, view string, words ...string) {
+	t.Helper()
+	flat := strings.Join(strings.Fields(view), " ")
+	for _, w := range words {
+		if !strings.Contains(flat, w) {
+			t.Errorf("%q is missing in\n%s", w, view)
+		}
+	}
+}
+
+func silent(t *testing.T, view, words string) {
+	t.Helper()
+	if strings.Contains(view, words) {
+		t.Errorf("%q stands in\n%s", words, view)
+	}
+}
+
+// The numbers on the screen are those of the study, as the note prints them.
+func TestNumbersAreThoseOfTheStudy(t *testing.T) {
+	s := computed(t)
+	b := open(s)
+	b.Press("right") // from the chosen, the last, round to the first
+	for i, r := range s.Fit.Results {
+		says(t, b.View(), fmt.Sprintf("%s, systemic load (%d of %d)", r.Model.Name, i+1, len(s.Fit.Results)))
+		for _, p := range r.Parameters {
+			says(t, b.View(), p.Name+" "+casenote.Format(p.Value, p.Total)+" "+p.Unit+" "+casenote.FormatRange(p.Value, p.Total))
+		}
+		says(t, b.View(), "Rtotal "+casenote.Format(r.TotalResistance.Value, r.TotalResistance.Total))
+		b.Press("right")
+	}
+	if len(s.Fit.Results) < 2 {
+		t.Fatal("there is nothing to step through")
+	}
+}
+
+func TestSteppingKeepsBoundsAndLabels(t *testing.T) {
+	b := open(computed(t))
+	axis := func(view string) (labels []string) {
+		for _, line := range strings.Split(view, "\n")[:12] {
+			labels = append(labels, strings.TrimRight(line[:4], " "))
+		}
+		return labels
+	}
+	first, before := b.View(), axis(b.View())
+	b.Press("left")
+	if !slices.Equal(axis(b.View()), before) {
+		t.Errorf("labels moved:\n%s\n%s", first, b.View())
+	}
+	if b.View() == first {
+		t.Error("another model looks the same")
+	}
+	b.Press("right")
+	if b.View() != first {
+		t.Error("back at the first model, it looks different")
+	}
+}
+
+// changes are the cases that were asked for.
+func changes(t *testing.T, b *screentest.Bench) []casefile.Case {
+	t.Helper()
+	var all []casefile.Case
+	for _, msg := range b.Told {
+		c, ok := msg.(tui.ChangeMsg)
+		if !ok || c.Said.String() == "" {
+			t.Fatalf("%#v", msg)
+		}
+		all = append(all, c.Case)
+	}
+	return all
+}
+
+func TestEnterChoosesAndTakesBack(t *testing.T) {
+	s := computed(t)
+	b := open(s, "left", "enter") // wk2 stands before the recommended wk3
+	got := changes(t, b)
+	if len(got) != 1 || got[0].Model != "wk2" || s.Inputs.Case.Model != "" {
+		t.Fatalf("asked for %v", got)
+	}
+	chosen := screentest.Demo(t, func(c *casefile.Case) { c.Model = "wk2" })
+	b.Show(chosen)
+	says(t, b.View(), "in use wk2, chosen")
+	b.Press("enter")
+	if got = changes(t, b); len(got) != 2 || got[1].Model != "" {
+		t.Fatalf("asked for %v", got)
+	}
+	b.Show(s)
+	says(t, b.View(), "(1 of", "in use wk3")
+}
+
+func TestWhatIfStandsBesideTheNumbers(t *testing.T) {
+	s := computed(t)
+	b := open(s)
+	for i, move := range s.Fit.Sensitivity {
+		b.Press("]")
+		r := s.Fit.Results[s.Fit.Chosen]
+		p, _ := r.Parameter("R")
+		says(t, b.View(), "What if "+strings.ReplaceAll(move.Assumption, "-", " ")+" "+move.Change)
+		says(t, b.View(), casenote.Format(move.Values.R, p.Total)+" (")
+		if i == 0 {
+			silent(t, b.View(), "random")
+		}
+	}
+	b.Press("]")
+	says(t, b.View(), "What if: ]")
+	b.Press("[")
+	last := s.Fit.Sensitivity[len(s.Fit.Sensitivity)-1]
+	says(t, b.View(), last.Change)
+	b.Press("left")
+	says(t, b.View(), "moves the model in use only")
+}
+
+func TestAnyNumberOpens(t *testing.T) {
+	b := open(computed(t), "x")
+	says(t, b.View(), "R of wk3: peripheral resistance", "Z(w) = Zc + R/(1 + i w R C)", "Westerhof 1969", "blocks-of-beats", "0.6 to 1.8 mmHg s/mL")
+	b.Press("down")
+	says(t, b.View(), "C of wk3: compliance")
+	b.Press("left")
+	says(t, b.View(), "C of wk2", "Frank 1899")
+	b.Press("up", "up", "x")
+	silent(t, b.View(), "Frank")
+}
+
+// Every model of package fitting has its equation here.
+func TestEveryModelHasItsEquation(t *testing.T) {
+	s := computed(t)
+	for _, m := range fitting.Models() {
+		b := open(s, "x")
+		for range s.Fit.Results {
+			if strings.Contains(b.View(), "of "+m.Name+":") {
+				break
+			}
+			b.Press("right")
+		}
+		says(t, b.View(), "of "+m.Name+":", "Z(w) = ")
+	}
+}
+
+func TestNotIdentifiedIsNeverBare(t *testing.T) {
+	s := computed(t)
+	f := *s.Fit
+	f.Results = slices.Clone(f.Results)
+	r := &f.Results[f.Chosen]
+	r.Parameters = slices.Clone(r.Parameters)
+	r.Parameters[2].Identified, r.Parameters[2].Why = false, "it is 0, the end\x1b[2J"
+	s.Fit = &f
+	b := open(s)
+	says(t, b.View(), `Zc not identified (it is 0, the end\x1b[2J)`)
+	silent(t, b.View(), "Zc     0.0")
+	screentest.Fits(t, b.View(), small, tui.Theme{})
+	b.Press("down", "down", "x")
+	says(t, b.View(), "range 0.06")
+}
+
+func TestPressureAlone(t *testing.T) {
+	b := open(screentest.Pressure(t, "aortic_pressure", true))
+	says(t, b.View(), "tau", "no interval", "cardiac output even within 20 %", "R and C are not known from pressure alone")
+	b.Press("x")
+	says(t, b.View(), "ln(P - Pv) = a - t/tau", "Frank 1899")
+	b.Press("enter", "]", "right")
+	if len(b.Told) > 0 {
+		t.Errorf("there is no model to choose: %v", b.Told)
+	}
+}
+
+func TestWithoutAFitTheReasonAndTheCure(t *testing.T) {
+	b := open(screentest.Pressure(t, "P\x1b[31mress\u202e", false))
+	says(t, b.View(), "Nothing could be fitted: no pulse in", `\x1b[31m`, "What cures it", "Intake (1)")
+	screentest.Fits(t, b.View(), small, tui.Theme{})
+	for _, theme := range []tui.Theme{{}, {ASCII: true}} {
+		b := screentest.New(fit.New(), screentest.Pressure(t, "Füllung_pressure", false), small, theme)
+		screentest.Fits(t, b.View(), small, theme)
+	}
+}
+
+func TestStillComputing(t *testing.T) {
+	b := open(study.Study{})
+	says(t, b.View(), tui.Fit.Missing(study.Study{})[1:])
+	if len(b.Screen.Keys()) > 2 {
+		t.Errorf("keys that do nothing: %v", b.Screen.Keys())
+	}
+	b.Show(computed(t))
+	b.Show(study.Study{})
+	says(t, b.View(), tui.Fit.Missing(study.Study{})[1:])
+}
+
+// A picture that was asked for before a change is not shown after it.
+func TestLatePicturesAreDropped(t *testing.T) {
+	screen, late := fit.New().Show(computed(t))
+	screen, _ = screen.Resize(small, tui.Theme{})
+	screen, _ = screen.Update(late())
+	silent(t, screen.View(), "measured")
+}
+
+func TestWarningsOpenWithTheirCures(t *testing.T) {
+	s := screentest.Demo(t, func(c *casefile.Case) { c.OutflowPressure = nil })
+	b := open(s)
+	says(t, b.View(), "warning")
+	b.Press("v")
+	says(t, b.View(), string(data.CodeOutflow), "cure: ")
+	b.Press("v")
+	says(t, b.View(), "measured")
+}
+
+func TestKeysAreListedOnceAndNoneOfTheRoots(t *testing.T) {
+	roots := []string{"1", "2", "3", "4", "5", "6", "tab", "shift+tab", "?", "u", "ctrl+r", "s", "q", "ctrl+c", "ctrl+l", "ctrl+z", "esc", "A"}
+	for _, s := range []study.Study{computed(t), screentest.Pressure(t, "aortic_pressure", true), {}} {
+		seen := map[string]key.Binding{}
+		for _, b := range open(s).Screen.Keys() {
+			for _, k := range b.Keys() {
+				if _, twice := seen[k]; twice || slices.Contains(roots, k) {
+					t.Errorf("key %q", k)
+				}
+				seen[k] = b
+			}
+		}
+	}
+}
+
+func TestSurvives(t *testing.T) {
+	fresh := func() tui.Screen { return fit.New() }
+	studies := []study.Study{
+		computed(t),
+		{},
+		screentest.Pressure(t, "aortic_pressure", true), screentest.Pressure(t, "P\x1b[31m", false),
+		screentest.Demo(t, func(c *casefile.Case) { c.DiameterCM = nil }),
+		screentest.Demo(t, func(c *casefile.Case) { c.Model = "wk2"; c.OutflowPressure = nil }),
+	}
+	screentest.Survives(t, fresh, studies, "left", "right", "up", "down", "enter", "x", "[", "]", "f", "t", "v")
+}
+
+func BenchmarkView(b *testing.B) {
+	s := computed(b)
+	for _, c := range []struct {
+		name string
+		area tui.Area
+	}{{"80x20", small}, {"200x56", tui.Area{Width: 200, Height: 56}}} {
+		b.Run(c.name, func(b *testing.B) {
+			screen := screentest.New(fit.New(), s, c.area, tui.Theme{Colours: 256}).Screen
+			b.ReportAllocs()
+			for b.Loop() {
+				screen.View()
+			}
+		})
+	}
+}

@@ -1,0 +1,146 @@
+package fit
+
+import (
+	"fmt"
+	"strings"
+
+	"afterbeat/tui"
+	"afterbeat/tui/chart"
+	"afterbeat/tui/layout"
+)
+
+// View puts together what is there.
+func (m Model) View() string {
+	switch {
+	case m.warnings.Open():
+		return m.warnings.View()
+	case m.fit == nil, len(m.sheets) == 0:
+		return layout.Fit(m.absent(), m.area)
+	case m.view == tabled:
+		return layout.Fit(strings.Split(m.table(), "\n"), m.area)
+	}
+	p := m.plan()
+	lines := layout.Lines(m.above(p), p.plot)
+	lines = append(lines, m.below(p)...)
+	return layout.Fit(lines, m.area)
+}
+
+// above is what stands above the numbers: curves, or a number opened.
+func (m Model) above(p plan) string {
+	switch {
+	case m.view == opened:
+		return strings.Join(m.opened(p), "\n")
+	case m.flow:
+		return m.pictures.flow
+	case m.shown < len(m.pictures.models):
+		return m.pictures.models[m.shown]
+	}
+	return ""
+}
+
+// table is the curves as numbers, in words.
+func (m Model) table() string {
+	b := m.fit.Beats
+	p := chart.Plot{X: timeAxis(b.Pressure.Period), Y: chart.Axis{Unit: "mmHg"}}
+	p.Series = []chart.Series{{Name: "measured", Values: b.Pressure.Period.Samples}}
+	switch {
+	case m.flow:
+		p = chart.Plot{X: timeAxis(b.Flow.Period), Y: chart.Axis{Unit: flowUnit(*m.fit)}}
+		p.Series = []chart.Series{{Name: "flow", Values: b.Flow.Period.Samples}}
+	case m.count() > 0:
+		r := m.result()
+		p.Title = title(*m.fit, m.shown)
+		p.Series = append(
+			p.Series,
+			chart.Series{Name: r.Model.Name, Values: r.Modelled.Samples},
+			chart.Series{Name: "difference", Values: r.Residual},
+		)
+	}
+	return p.Table(m.area.Width, m.area.Height, m.theme.Chart())
+}
+
+// below is the numbers and what speaks of them.
+func (m Model) below(p plan) []string {
+	lines := m.numbers(p)
+	if p.beside {
+		lines = layout.Beside(lines, m.comparison(p), m.numbersWidth(p))
+	}
+	lines = layout.Lines(strings.Join(lines, "\n"), p.numbers)
+	if p.compare > 0 {
+		lines = append(lines, m.comparison(p)...)
+	}
+	lines = append(lines, m.assumptions(p)...)
+	if p.advice > 0 {
+		advice := layout.Wrap(layout.Clean(m.advice(), m.theme), p.width)
+		lines = append(lines, layout.Lines(strings.Join(advice, "\n"), p.advice)...)
+	}
+	return append(lines, m.status(p))
+}
+
+// advice is the recommendation and its reason.
+func (m Model) advice() string {
+	if m.count() == 0 {
+		return turning(m.fit.Warnings)
+	}
+	r := m.fit.Recommended
+	if r.Model == "" {
+		return "No model is recommended: " + r.Why + "."
+	}
+	return fmt.Sprintf("Recommended: %s.", strings.TrimSuffix(r.Why, "."))
+}
+
+// turning says what would turn a time constant into R and C.
+func turning(warnings []warning) string {
+	for _, w := range warnings {
+		if w.Code == noFlow {
+			return "R and C are not known from pressure alone: " + w.Cure + "."
+		}
+	}
+	return ""
+}
+
+// status is the line of what is moved, and the count of warnings.
+func (m Model) status(p plan) string {
+	count := m.warnings.Count()
+	words := layout.Clean(m.whatIf(p), m.theme)
+	return layout.Pad(words, max(p.width-len(count)-2, 0)) + "  " + count
+}
+
+// whatIf says what moving one assumption does.
+func (m Model) whatIf(p plan) string {
+	switch {
+	case m.count() == 0:
+		return ""
+	case m.moved == 0 && p.advice == 0:
+		return fmt.Sprintf("recommended %s, in use %s", m.recommended(), m.used())
+	case len(m.fit.Sensitivity) == 0:
+		return ""
+	case m.moved == 0:
+		return "What if: ] moves one assumption at a time"
+	case m.shown != m.fit.Chosen:
+		return fmt.Sprintf("What if: moves the model in use only, %s", m.fit.Results[m.fit.Chosen].Model.Name)
+	}
+	s := m.fit.Sensitivity[m.moved-1]
+	return fmt.Sprintf("What if %s (%d of %d)", assumption(s), m.moved, len(m.fit.Sensitivity))
+}
+
+// absent says why there is nothing, and what cures it.
+func (m Model) absent() []string {
+	if m.fit == nil {
+		why := tui.Fit.Missing(m.study)
+		return []string{sentence(why) + "."}
+	}
+	var lines []string
+	say := func(indent, text string) {
+		for _, line := range layout.Wrap(layout.Clean(text, m.theme), m.area.Width-len(indent)) {
+			lines = append(lines, indent+line)
+		}
+	}
+	say("", "Nothing could be fitted: "+m.fit.Reason+".")
+	lines = append(lines, "")
+	say("", "What cures it is chosen on Intake (1): channels, units, sites, the span. Beats (2) shows which beats are used, and why the others are not.")
+	if list := upToFit(m.study); len(list) > 0 {
+		lines = append(lines, "", m.warnings.Count())
+	}
+	return lines
+}

@@ -1,0 +1,66 @@
+package note
+
+import (
+	"slices"
+
+	"github.com/charmbracelet/bubbles/key"
+
+	"afterbeat/tui/field"
+	"afterbeat/tui/page"
+)
+
+// keyMap are the keys of the screen.
+type keyMap struct {
+	page           page.Keys
+	remark, search key.Binding
+	next, previous key.Binding // of what was searched for
+	left, right    key.Binding
+	accept, cancel key.Binding // of a text field
+}
+
+func newKeys() keyMap {
+	bind := func(shown, does string, keys ...string) key.Binding {
+		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
+	}
+	return keyMap{
+		page:     page.NewKeys(),
+		remark:   bind("r", "remark", "r"),
+		search:   bind("/", "search", "/"),
+		next:     bind("n", "next match", "n"),
+		previous: bind("N", "match before", "N"),
+		left:     bind("left", "to the left", "left", "h"),
+		right:    bind("right", "to the right", "right", "l"),
+		accept:   bind("enter", "accept", "enter"),
+		cancel:   bind("esc", "cancel", "esc"),
+	}
+}
+
+// bindings are the keys as they work now.
+func (m Model) bindings() keyMap {
+	k := newKeys()
+	there := m.there()
+	k.remark.SetEnabled(there)
+	k.search.SetEnabled(there)
+	k.next.SetEnabled(len(m.matches) > 0)
+	k.previous.SetEnabled(len(m.matches) > 0)
+	wide := there && m.widest > m.textWidth()
+	k.left.SetEnabled(wide)
+	k.right.SetEnabled(wide)
+	return k
+}
+
+// Keys are the bindings that work now, the most useful first.
+func (m Model) Keys() []key.Binding {
+	k := m.bindings()
+	var all []key.Binding
+	switch {
+	case m.typing != nothing:
+		all = slices.Concat([]key.Binding{k.accept, k.cancel}, field.Keys())
+	case m.there():
+		p := k.page
+		all = []key.Binding{
+			k.next, p.Down, p.Up, p.PageDown, k.remark, k.search, k.previous, p.PageUp, p.First, p.Last, k.right, k.left,
+		}
+	}
+	return slices.DeleteFunc(all, func(b key.Binding) bool { return !b.Enabled() })
+}

@@ -1,0 +1,157 @@
+package support
+
+import (
+	"fmt"
+	"strings"
+
+	"afterbeat/data"
+	"afterbeat/data/casenote"
+	"afterbeat/tree/support"
+	"afterbeat/tui"
+	"afterbeat/tui/chart"
+	"afterbeat/tui/layout"
+)
+
+// View puts together what is there.
+func (m Model) View() string {
+	switch {
+	case m.warnings.Open():
+		return m.warnings.View()
+	case !m.there():
+		return layout.Fit(m.absent(), m.area)
+	case m.view == held:
+		return layout.Fit(append(m.page.Window(), m.page.Position()), m.area)
+	}
+	p := m.plan()
+	lines := m.headline(p)
+	body := p.height - p.head - p.status
+	switch m.view {
+	case sweep:
+		lines = append(lines, layout.Lines(strings.Join(m.sweep(p, m.sweepQuantity()), "\n"), body)...)
+	case energy:
+		lines = append(lines, layout.Lines(strings.Join(m.energy(p), "\n"), body)...)
+	case indices:
+		lines = append(lines, layout.Lines(strings.Join(m.indices(), "\n"), body)...)
+	default:
+		lines = append(lines, layout.Lines(m.waves(p), p.plot)...)
+		if p.figures > 0 {
+			lines = append(lines, m.figures(m.waveFigures())...)
+		}
+	}
+	return layout.Fit(append(lines, m.status(p)), m.area)
+}
+
+// headline says what is shown: posing, share, mean pressure and what is
+// retained, the 95 % interval in brackets; and below what kind of statement it
+// is, and what the valve does.
+func (m Model) headline(p plan) []string {
+	a := m.shown()
+	s := a.Supported[m.state]
+	first := fmt.Sprintf("%-10s  share %-*s  %s  %s", a.Posing, m.shareWidth(), share(s.Share), m.mean(), m.retained())
+	second := "a yardstick, no forecast: no ventricle answers to the load"
+	if a.Posing.ByConstruction() {
+		second = "by construction: an identity, never a forecast"
+	}
+	if m.view == sweep || m.view == energy { // both posings are shown
+		second = "scaled: by construction: an identity, never a forecast"
+		if p.width >= besideWidth {
+			return []string{first, second + "; late-valve: a yardstick"}
+		}
+	}
+	if p.width < besideWidth {
+		return []string{fmt.Sprintf("%-10s %-*s  %s", a.Posing, m.shareWidth(), share(s.Share), m.retained()), second}
+	}
+	return []string{first, second + "; " + m.valve()}
+}
+
+// shareWidth is the width of the widest share.
+func (m Model) shareWidth() int {
+	n := 0
+	for _, s := range m.shown().Supported {
+		n = max(n, len(share(s.Share)))
+	}
+	return n
+}
+
+func (m Model) mean() string {
+	e := m.shown().Supported[m.state].MeanPressure
+	return "mean " + casenote.Format(e.Value, e.Total) + " mmHg"
+}
+
+// retained is what is retained of the pulse shown.
+func (m Model) retained() string {
+	c := m.shown().Comparisons[m.state]
+	e, what := c.RetainedPressure, "retained pulse "
+	if m.flow {
+		e, what = c.RetainedFlow, "retained swing "
+	}
+	switch {
+	case m.shown().Posing.ByConstruction(), c.Share == 0:
+		return what + casenote.Format(e.Value, data.NoInterval())
+	case e.Identified:
+		return what + estimate(e)
+	}
+	n := casenote.Number{Estimate: e, Origin: data.Estimated}
+	return what + strings.TrimSuffix(n.String(), ", estimated")
+}
+
+// valve says what still passes it.
+func (m Model) valve() string {
+	s := m.shown().Supported[m.state]
+	if s.Share >= 1 {
+		return "valve shut"
+	}
+	return fmt.Sprintf("valve passes %.0f %%", 100*(1-s.Share))
+}
+
+func share(v float64) string { return fmt.Sprintf("%.4g", v) }
+
+// status is the line of what is the same, and the count of warnings.
+func (m Model) status(p plan) string {
+	count := m.warnings.Count()
+	words := data.Clean("Same R, C, Zc, outflow pressure, period and mean flow (h)")
+	if p.width < besideWidth {
+		words = data.Clean(m.mean() + "; h: what is held")
+	}
+	return layout.Pad(words, max(p.width-len(count)-2, 0)) + "  " + count
+}
+
+// waves are native and supported over one another, or as a table.
+func (m Model) waves(p plan) string {
+	t, of := m.curves.pressure, func(s support.State) data.Period { return s.Pressure }
+	if m.flow {
+		t, of = m.curves.flow, func(s support.State) data.Period { return s.Flow }
+	}
+	if !m.curves.ready {
+		return ""
+	}
+	plot := t.plot(t.name)
+	if m.table {
+		plot.Series = []chart.Series{
+			{Name: "native", Values: of(m.shown().Native).Samples},
+			{Name: "supported", Values: of(m.shown().Supported[m.state]).Samples},
+		}
+		return plot.Table(p.width, p.plot, m.theme.Chart())
+	}
+	plot.Series = []chart.Series{
+		{Name: "native", Values: t.native},
+		{Name: "supported", Values: t.supported[m.answer][m.state]},
+	}
+	return plot.Draw(p.width, p.plot, m.theme.Chart())
+}
+
+// absent says why there is nothing, and what cures it.
+func (m Model) absent() []string {
+	if m.comparison == nil {
+		why := tui.Support.Missing(m.study)
+		return []string{strings.ToUpper(why[:1]) + why[1:] + "."}
+	}
+	var lines []string
+	say := func(text string) {
+		lines = append(lines, layout.Wrap(layout.Clean(text, m.theme), m.area.Width)...)
+	}
+	say("There is no comparison: " + m.comparison.Reason + ".")
+	lines = append(lines, "")
+	say("What cures it is chosen on Intake (1): the flow, its unit and site, a diameter for a velocity. Fit (3) says what the load is.")
+	return append(lines, "", m.warnings.Count())
+}
