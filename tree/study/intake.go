@@ -9,6 +9,7 @@ import (
 	"strings"
 
 	"afterbeat/data"
+	"afterbeat/data/beat"
 	"afterbeat/data/casefile"
 	"afterbeat/data/unit"
 )
@@ -23,6 +24,9 @@ type Intake struct {
 	// Channels are those of the recording with sites, calibration and clock of
 	// the case applied: Values are on Grid, NaN where unusable.
 	Channels  []data.Channel
+	// Filled counts, for each channel, the missing samples that were filled by a
+	// straight line, because their hole is no longer than 20 ms.
+	Filled    []int
 	Selection data.Selection
 	// Ambiguous is set, and nothing selected, where only a person can choose
 	// between columns. The beats of every channel can be looked at all the same.
@@ -63,8 +67,10 @@ func TakeIn(in Inputs) (Intake, error) {
 	}
 	out.Grid = grid
 	for i, cal := range calibrations {
-		channels[i].Values = calibrated(values[i], cal.scale, cal.shift)
+		whole, filled := beat.Bridge(values[i], grid.Rate)
+		channels[i].Values = calibrated(whole, cal.scale, cal.shift)
 		out.mask(channels[i].Values)
+		out.Filled = append(out.Filled, filled)
 	}
 	out.Channels = channels
 	out.Warnings = slices.Concat(in.Recording.Warnings, guesses(out), siteWarnings(out))
