@@ -316,6 +316,21 @@ func TestAWrongSiteStillShowsTheChannels(t *testing.T) {
 	}
 }
 
+// TestAStepChangesFewLines: what changes is sent over a slow link.
+func TestAStepChangesFewLines(t *testing.T) {
+	b := demoed(t)
+	before := strings.Split(b.View(), "\n")
+	changed := 0
+	for i, line := range strings.Split(b.Press("l").View(), "\n") {
+		if line != before[i] {
+			changed++
+		}
+	}
+	if changed != 2 {
+		t.Errorf("a step changes %d lines; the row of marks and the line of the cursor are 2", changed)
+	}
+}
+
 func TestKeysAreListedOnceAndAreNotTheRoots(t *testing.T) {
 	root := []string{"1", "2", "3", "4", "5", "6", "tab", "shift+tab", "?", "u", "ctrl+r", "s", "q", "ctrl+c", "ctrl+l", "ctrl+z", "esc", "A"}
 	seen := map[string]string{}

@@ -204,9 +204,6 @@ func (r ready) marks(values []float64, grid data.Grid, in study.Inputs) []chart.
 	if len(in.Excluded) > 0 {
 		excluded.Name = "left out"
 	}
-	if len(outside.Spans)+len(excluded.Spans)+len(missing.Spans) == 0 {
-		return nil // no row of marks
-	}
 	return append([]chart.Mark{outside, excluded, missing}, ends...)
 }
 

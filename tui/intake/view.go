@@ -7,12 +7,13 @@ import (
 
 	"afterbeat/data"
 	"afterbeat/data/casenote"
+	"afterbeat/tui/chart"
 	"afterbeat/tui/layout"
 )
 
 // shares is how the height is divided.
 type shares struct {
-	head  bool // the line about the file
+	head  bool // the line about the file, and the heads of the table
 	notes int  // lines of what is to be settled
 	rows  int  // of the table, without its heads
 	plot  int
@@ -21,16 +22,16 @@ type shares struct {
 const (
 	leastPlot = 6  // lines
 	easyPlot  = 10 // what the table leaves the plot, if it can
-	lowScreen = 14 // lines; below, there is no line about the file
+	lowScreen = 14 // lines; below, there are no heads
 	mostNotes = 3
 )
 
 // divide gives each part its lines.
 func (m Model) divide() shares {
 	s := shares{head: m.area.Height >= lowScreen, notes: min(len(m.notes()), mostNotes)}
-	free := m.area.Height - 3 - s.notes
+	free := m.area.Height - 2 - s.notes
 	if s.head {
-		free--
+		free -= 2
 	}
 	n := len(m.ready.channels)
 	s.rows = max(0, min(n, max(2, free-easyPlot)))
@@ -77,15 +78,28 @@ func (m Model) View() string {
 	if s.head {
 		lines = append(lines, m.head())
 	}
-	lines = append(lines, m.table(s.rows)...)
+	table := m.table(s.rows)
+	if !s.head {
+		table = table[1:]
+	}
+	lines = append(lines, table...)
 	if s.plot > 0 {
-		lines = append(lines, layout.Lines(m.trace.View(m.trace.Cursor()), s.plot)...)
+		lines = append(lines, layout.Lines(m.trace.View(m.cursorMark()), s.plot)...)
 	}
 	last := []string{m.cursorLine(), m.list.Count()}
 	if m.question.open() {
 		last = m.question.lines(m.area.Width, m.theme)
 	}
 	return layout.Fit(append(lines, last...), m.area)
+}
+
+// cursorMark shows where the cursor is, under the trace.
+func (m Model) cursorMark() chart.Mark {
+	mark := chart.Mark{Name: "cursor", Char: '^'}
+	if i := m.trace.Cursor(); i >= 0 {
+		mark.At = []float64{m.ready.channels[m.chosen].source.Grid.At(i)}
+	}
+	return mark
 }
 
 // head says what the file is and what of it is used.

@@ -17,12 +17,17 @@ func Fit(lines []string, a tui.Area) string {
 		if i > 0 {
 			b.WriteByte('\n')
 		}
-		if len(line) > a.Width && ansi.StringWidth(line) > a.Width {
-			line = ansi.Truncate(line, max(a.Width, 0), "")
-		}
-		b.WriteString(strings.TrimRight(line, " "))
+		b.WriteString(strings.TrimRight(Clip(line, a.Width), " "))
 	}
 	return b.String()
+}
+
+// Clip cuts a line, which may have colours, to width cells.
+func Clip(line string, width int) string {
+	if len(line) > width && ansi.StringWidth(line) > width {
+		return ansi.Truncate(line, max(width, 0), "")
+	}
+	return line
 }
 
 // Lines are the lines of a block of exactly height lines.

@@ -8,6 +8,7 @@
 // A prepared picture carries what it was made from; one that is no longer
 // wanted is kept for later and not shown.
 //
-// The cursor is a sample. It moves by columns of the picture; where it leaves
+// The cursor is a sample, and who shows it gives it to View as a mark, so that a
+// step changes one row of the picture and few bytes are sent. It moves by columns of the picture; where it leaves
 // the window, the window follows by half its length.
 package trace

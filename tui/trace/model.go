@@ -7,6 +7,7 @@ import (
 	tea "github.com/charmbracelet/bubbletea"
 
 	"afterbeat/tui"
+	"afterbeat/tui/chart"
 )
 
 // Model is the window. Every method that changes it returns the changed one,
@@ -183,9 +184,9 @@ func (m Model) Ready() bool {
 // Table tells whether the trace is shown as a table.
 func (m Model) Table() bool { return m.table }
 
-// View is the picture with broken lines at the samples given, in exactly the
-// area of the last Resize.
-func (m Model) View(lines ...int) string {
+// View is the picture with more marks in its row, in exactly the area of the
+// last Resize. The cursor is such a mark: one row changes where it moves.
+func (m Model) View(more ...chart.Mark) string {
 	p := m.shown
 	switch {
 	case p.order.id == "":
@@ -193,8 +194,6 @@ func (m Model) View(lines ...int) string {
 	case p.order.table:
 		return p.table
 	}
-	for _, i := range lines {
-		p.plot.Cursors = append(p.plot.Cursors[:len(p.plot.Cursors):len(p.plot.Cursors)], m.source.Grid.At(i))
-	}
+	p.plot.Marks = append(p.plot.Marks[:len(p.plot.Marks):len(p.plot.Marks)], more...)
 	return p.plot.Draw(m.area.Width, m.area.Height, m.theme.Chart())
 }

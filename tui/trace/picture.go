@@ -74,10 +74,10 @@ func (s Source) prepare(o order) picture {
 		p.Series = []chart.Series{{Name: s.Name, Values: values}}
 		return picture{order: o, plot: p, table: p.Table(o.area.Width, o.area.Height, o.theme.Chart())}
 	}
-	p.Marks = s.Marks
+	p.Marks = []chart.Mark{{}} // there is always a row of marks, for the cursor
 	columns, _ := p.Area(o.area.Width, o.area.Height)
 	p.Series = []chart.Series{{Values: chart.Columns(s.Values, w.from, w.from+w.n, columns, 0)}}
-	p.Marks = inColumns(s.Marks, p.X, columns)
+	p.Marks = append(p.Marks, inColumns(s.Marks, p.X, columns)...)
 	return picture{order: o, plot: p, columns: columns}
 }
 

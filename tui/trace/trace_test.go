@@ -174,8 +174,8 @@ func TestMarksAreOneAColumn(t *testing.T) {
 	}
 	s.Marks = []chart.Mark{{Name: "onset", Char: '^', At: at}, {Char: '?', Spans: spans}}
 	m := shown(t, s)
-	if got := m.shown.plot.Marks; len(got[0].At) > m.shown.columns || len(got[1].Spans) != 1 {
-		t.Errorf("%d places and %d stretches in %d columns", len(got[0].At), len(got[1].Spans), m.shown.columns)
+	if got := m.shown.plot.Marks; len(got[1].At) > m.shown.columns || len(got[2].Spans) != 1 {
+		t.Errorf("%d places and %d stretches in %d columns", len(got[1].At), len(got[2].Spans), m.shown.columns)
 	}
 	direct := m.shown.plot
 	direct.Marks = s.Marks
@@ -215,7 +215,7 @@ func TestAnyKeysAndSizes(t *testing.T) {
 			if n := len(m.source.Values); m.Cursor() >= n || n > 0 && m.Cursor() < 0 {
 				t.Fatalf("cursor %d of %d samples", m.Cursor(), n)
 			}
-			m.View(m.Cursor())
+			m.View(chart.Mark{Char: '^', At: []float64{5}})
 		}
 	})
 }
@@ -226,6 +226,6 @@ func BenchmarkView(b *testing.B) {
 	m, _ = m.Update(cmd())
 	b.ReportAllocs()
 	for b.Loop() {
-		m.View(m.Cursor())
+		m.View(chart.Mark{Char: '^', At: []float64{5}})
 	}
 }

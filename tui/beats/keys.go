@@ -1,0 +1,77 @@
+package beats
+
+import (
+	"slices"
+
+	"github.com/charmbracelet/bubbles/key"
+
+	"afterbeat/tui/trace"
+	"afterbeat/tui/warnlist"
+)
+
+// keyMap are the keys of the screen; those of the trace and of the list of
+// warnings are their own.
+type keyMap struct {
+	Next, Previous, NextUnused, PreviousUnused, First, Last key.Binding
+	Drop, Channel, Overlay, Over, All                       key.Binding
+	Trace                                                   trace.Keys
+	List                                                    warnlist.Keys
+}
+
+func newKeys() keyMap {
+	bind := func(shown, does string, keys ...string) key.Binding {
+		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
+	}
+	return keyMap{
+		Next:           bind("n", "next beat", "n", "right", "l", "down", "j"),
+		Previous:       bind("p", "beat before", "p", "left", "h", "up", "k"),
+		NextUnused:     bind("N", "next beat not used", "N"),
+		PreviousUnused: bind("P", "beat not used before", "P"),
+		First:          bind("g", "first beat", "g", "home"),
+		Last:           bind("G", "last beat", "G", "end"),
+		Drop:           bind("d", "drop or restore", "d"),
+		Channel:        bind("c", "other channel", "c", "enter"),
+		Overlay:        bind("o", "trace or overlay", "o"),
+		Over:           bind("b", "beat over average", "b"),
+		All:            bind("i", "all indices", "i"),
+		Trace:          trace.NewKeys(),
+		List:           warnlist.NewKeys(),
+	}
+}
+
+// bindings are the keys as they work now: what has no effect is disabled, and
+// what goes back says so.
+func (m Model) bindings() keyMap {
+	k := m.keys
+	k.Trace.Table.SetHelp("t", "table")
+	if m.trace.Table() {
+		k.Trace.Table.SetHelp("t", "picture")
+	}
+	if m.all {
+		k.All.SetHelp("i", "back to the picture")
+	}
+	if len(m.ready.signals) == 0 {
+		return k
+	}
+	averaged := m.signal().ensemble >= 0
+	overlay := averaged && (m.divide().both || m.aside) && !m.all
+	k.Channel.SetEnabled(len(m.ready.signals) > 1)
+	k.All.SetEnabled(len(m.signal().rows) > 0)
+	k.Overlay.SetEnabled(averaged && !m.divide().both && !m.all)
+	k.Over.SetEnabled(overlay && !m.trace.Table())
+	return k
+}
+
+// Keys are the bindings that work now.
+func (m Model) Keys() []key.Binding {
+	k := m.bindings()
+	switch {
+	case m.list.Open():
+		return k.List.Bindings()
+	case len(m.ready.signals) == 0:
+		return []key.Binding{k.List.Open}
+	}
+	all := []key.Binding{k.Next, k.Previous, k.Drop, k.Overlay, k.Over, k.Channel, k.All, k.NextUnused, k.PreviousUnused}
+	all = append(all, k.Trace.In, k.Trace.Out, k.Trace.Whole, k.Trace.Table, k.List.Open, k.First, k.Last)
+	return slices.DeleteFunc(all, func(b key.Binding) bool { return !b.Enabled() })
+}
