@@ -133,13 +133,13 @@ func TestEnterChoosesAndTakesBack(t *testing.T) {
 	}
 	chosen := screentest.Demo(t, func(c *casefile.Case) { c.Model = "wk2" })
 	b.Show(chosen)
-	says(t, b.View(), "in use wk2, chosen")
+	says(t, b.View(), "wk2, systemic load (1 of", "recommended wk3", "in use wk2, chosen")
 	b.Press("enter")
 	if got = changes(t, b); len(got) != 2 || got[1].Model != "" {
 		t.Fatalf("asked for %v", got)
 	}
 	b.Show(s)
-	says(t, b.View(), "(1 of", "in use wk3")
+	says(t, b.View(), "wk2, systemic load (1 of", "in use wk3")
 }
 
 func TestWhatIfStandsBesideTheNumbers(t *testing.T) {
@@ -204,6 +204,29 @@ func TestNotIdentifiedIsNeverBare(t *testing.T) {
 	screentest.Fits(t, b.View(), small, tui.Theme{})
 	b.Press("down", "down", "x")
 	says(t, b.View(), "range 0.06")
+}
+
+// undecided is a study of which no model is recommended, and none was chosen.
+func undecided(t *testing.T) study.Study {
+	t.Helper()
+	s := computed(t)
+	f := *s.Fit
+	f.Chosen, f.Recommended, f.Sensitivity = -1, fitting.Recommendation{Why: "C of wk2 is not identified (it has no effect)"}, nil
+	s.Fit = &f
+	return s
+}
+
+func TestNoneRecommendedAndNoneInUse(t *testing.T) {
+	b := open(undecided(t))
+	says(t, b.View(), "recommended none", "in use none", "None is recommended, and none in use before enter chooses one: C of wk2")
+	b.Press("]", "x", "down", "right", "enter")
+	if got := changes(t, b); len(got) != 1 || got[0].Model != "wk3" {
+		t.Errorf("asked for %v", got)
+	}
+	for _, a := range screentest.Areas() {
+		b.Resize(a, tui.Theme{})
+		screentest.Fits(t, b.View(), a, tui.Theme{})
+	}
 }
 
 func TestPressureAlone(t *testing.T) {

@@ -37,7 +37,7 @@ func (m Model) bindings() keyMap {
 	k.next.SetEnabled(models > 1)
 	k.choose.SetEnabled(models > 0)
 	if m.takesBack() {
-		k.choose.SetHelp("enter", "all models again")
+		k.choose.SetHelp("enter", "the recommended one")
 	}
 	numbers := len(m.rows())
 	k.up.SetEnabled(numbers > 1)

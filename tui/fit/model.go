@@ -153,7 +153,7 @@ func (m Model) choose() (tui.Screen, tea.Cmd) {
 	m.name = m.result().Model.Name
 	if m.takesBack() {
 		c.Model = ""
-		return m, tui.Change(fmt.Sprintf("%s is no longer chosen: all models are fitted, the recommended one is used", m.name), c)
+		return m, tui.Change(fmt.Sprintf("%s is no longer chosen: the recommended model is used", m.name), c)
 	}
 	c.Model = m.name
 	return m, tui.Change(fmt.Sprintf("%s chosen for the next stages; enter again takes it back", m.name), c)

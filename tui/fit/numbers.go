@@ -130,6 +130,9 @@ func (m Model) recommended() string { return cmp.Or(m.fit.Recommended.Model, "no
 
 // used is the name of the model that goes downstream, and whether by choice.
 func (m Model) used() string {
+	if m.fit.Chosen < 0 {
+		return "none"
+	}
 	used := m.fit.Results[m.fit.Chosen].Model.Name
 	if m.study.Inputs.Case.Model == used {
 		used += ", chosen"

@@ -45,7 +45,7 @@ func (m Model) plan() plan {
 	case rest-p.numbers-compare >= leastPlot:
 		p.compare = compare
 	}
-	if models > 0 && m.area.Height >= tallHeight {
+	if models > 0 && m.fit.Chosen >= 0 && m.area.Height >= tallHeight {
 		p.assumptions = 2 + len(m.fit.Sensitivity) + len(m.fit.Estimators)
 	}
 	p.plot = max(rest-p.numbers-p.compare-p.assumptions, 0)

@@ -86,10 +86,10 @@ func (w row) from(r fitting.Result, of func(fitting.Values) float64, moved []stu
 	}
 	var other []string
 	for _, o := range r.OutflowSensitivity {
-		other = append(other, fmt.Sprintf("%s at %s", movedWords(of(o.Values), w.number), exact(o.OutflowPressure)))
+		other = append(other, fmt.Sprintf("%s: %s", exact(o.OutflowPressure), movedWords(of(o.Values), w.number)))
 	}
 	if len(other) > 0 {
-		w.notes = append(w.notes, fmt.Sprintf("outflow pressure, now %s mmHg: %s", exact(r.OutflowPressure), strings.Join(other, ", ")))
+		w.notes = append(w.notes, fmt.Sprintf("at outflow pressure, mmHg, %s", strings.Join(other, ", ")))
 	}
 	return w
 }
@@ -130,18 +130,18 @@ func dominance(e data.Estimate) []string {
 	share := e.Random.Width() / e.Total.Width()
 	switch {
 	case share < 0.5:
-		return []string{fmt.Sprintf("systematic errors dominate: the random interval is %.0f %% as wide as the total", 100*share)}
+		return []string{fmt.Sprintf("mostly systematic: the random interval is %.0f %% as wide as the total", 100*share)}
 	case share > 0.9:
-		return []string{"random error dominates: the two intervals are about as wide"}
+		return []string{"mostly random: the two intervals are about as wide"}
 	}
-	return []string{fmt.Sprintf("both kinds of error count: the random interval is %.0f %% as wide as the total", 100*share)}
+	return []string{fmt.Sprintf("both kinds of error: the random interval is %.0f %% as wide as the total", 100*share)}
 }
 
 // intervalWords is how the intervals of a fit came about.
 func intervalWords(r fitting.Result) string {
 	switch r.IntervalMethod {
 	case fitting.IntervalBlocks:
-		return fmt.Sprintf("%s, %d replicates; total: calibration, delay and outflow pressure drawn as well", r.IntervalMethod, len(r.Replicates.Random))
+		return fmt.Sprintf("%s, %d replicates; systematic errors drawn on top", r.IntervalMethod, len(r.Replicates.Random))
 	case fitting.IntervalCovariance:
 		return r.IntervalMethod + ": from the residual and its autocorrelation, for there are few beats"
 	}

@@ -2,6 +2,7 @@ package fit
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"afterbeat/tui"
@@ -20,6 +21,11 @@ func (m Model) View() string {
 		return layout.Fit(strings.Split(m.table(), "\n"), m.area)
 	}
 	p := m.plan()
+	if m.view == opened {
+		if lines := m.opened(p); len(lines) > p.plot {
+			return layout.Fit(shortened(lines, m.area.Height), m.area)
+		}
+	}
 	lines := layout.Lines(m.above(p), p.plot)
 	lines = append(lines, m.below(p)...)
 	return layout.Fit(lines, m.area)
@@ -83,8 +89,11 @@ func (m Model) advice() string {
 		return turning(m.fit.Warnings)
 	}
 	r := m.fit.Recommended
-	if r.Model == "" {
-		return "No model is recommended: " + r.Why + "."
+	switch {
+	case r.Model == "" && m.fit.Chosen < 0:
+		return "None is recommended, and none in use before enter chooses one: " + r.Why + "."
+	case r.Model == "":
+		return "None is recommended: " + r.Why + "."
 	}
 	return fmt.Sprintf("Recommended: %s.", strings.TrimSuffix(r.Why, "."))
 }
@@ -139,8 +148,18 @@ func (m Model) absent() []string {
 	say("", "Nothing could be fitted: "+m.fit.Reason+".")
 	lines = append(lines, "")
 	say("", "What cures it is chosen on Intake (1): channels, units, sites, the span. Beats (2) shows which beats are used, and why the others are not.")
-	if list := upToFit(m.study); len(list) > 0 {
-		lines = append(lines, "", m.warnings.Count())
+	lines = append(lines, "")
+	for _, w := range upToFit(m.study) {
+		say("", w.Text)
+		say("  ", "cure: "+w.Cure)
 	}
-	return lines
+	return shortened(lines, m.area.Height)
+}
+
+// shortened is at most height lines; where some are left out, the last says so.
+func shortened(lines []string, height int) []string {
+	if len(lines) <= height || height < 1 {
+		return lines
+	}
+	return append(slices.Clone(lines[:height-1]), fmt.Sprintf("~ %d more lines, in a taller window", len(lines)-height+1))
 }

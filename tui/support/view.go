@@ -152,6 +152,11 @@ func (m Model) absent() []string {
 	}
 	say("There is no comparison: " + m.comparison.Reason + ".")
 	lines = append(lines, "")
-	say("What cures it is chosen on Intake (1): the flow, its unit and site, a diameter for a velocity. Fit (3) says what the load is.")
-	return append(lines, "", m.warnings.Count())
+	say("A comparison needs a fit, and the flow at the root. What cures it is chosen on Intake (1): the flow, its unit and site, a diameter for a velocity.")
+	lines = append(lines, "")
+	for _, w := range m.study.Warnings() {
+		say(w.Text)
+		say("cure: " + w.Cure)
+	}
+	return lines
 }
