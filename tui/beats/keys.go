@@ -23,15 +23,15 @@ func newKeys() keyMap {
 		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
 	}
 	return keyMap{
-		Next:           bind("n", "next beat", "n", "right", "l", "down", "j"),
+		Next:           bind("n/p", "beat", "n", "right", "l", "down", "j"),
 		Previous:       bind("p", "beat before", "p", "left", "h", "up", "k"),
 		NextUnused:     bind("N", "next beat not used", "N"),
 		PreviousUnused: bind("P", "beat not used before", "P"),
 		First:          bind("g", "first beat", "g", "home"),
 		Last:           bind("G", "last beat", "G", "end"),
-		Drop:           bind("d", "drop or restore", "d"),
-		Channel:        bind("c", "other channel", "c", "enter"),
-		Overlay:        bind("o", "trace or overlay", "o"),
+		Drop:           bind("d", "drop", "d"),
+		Channel:        bind("c", "channel", "c", "enter"),
+		Overlay:        bind("o", "overlay", "o"),
 		Over:           bind("b", "beat over average", "b"),
 		All:            bind("i", "all indices", "i"),
 		Trace:          trace.NewKeys(),
@@ -46,6 +46,12 @@ func (m Model) bindings() keyMap {
 	k.Trace.Table.SetHelp("t", "table")
 	if m.trace.Table() {
 		k.Trace.Table.SetHelp("t", "picture")
+	}
+	if m.aside {
+		k.Overlay.SetHelp("o", "trace")
+	}
+	if m.restores() {
+		k.Drop.SetHelp("d", "restore")
 	}
 	if m.all {
 		k.All.SetHelp("i", "back to the picture")
@@ -71,7 +77,7 @@ func (m Model) Keys() []key.Binding {
 	case len(m.ready.signals) == 0:
 		return []key.Binding{k.List.Open}
 	}
-	all := []key.Binding{k.Next, k.Previous, k.Drop, k.Overlay, k.Over, k.Channel, k.All, k.NextUnused, k.PreviousUnused}
-	all = append(all, k.Trace.In, k.Trace.Out, k.Trace.Whole, k.Trace.Table, k.List.Open, k.First, k.Last)
+	all := []key.Binding{k.Next, k.Drop, k.Overlay, k.Over, k.Channel, k.All, k.NextUnused, k.PreviousUnused}
+	all = append(all, k.Trace.In, k.Trace.Out, k.Trace.Whole, k.Trace.Table, k.List.Open, k.Previous, k.First, k.Last)
 	return slices.DeleteFunc(all, func(b key.Binding) bool { return !b.Enabled() })
 }

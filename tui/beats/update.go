@@ -116,6 +116,17 @@ func (m Model) byHand(i int) hand {
 	return nothing
 }
 
+// restores tells whether drop would use the beat under the cursor again.
+func (m Model) restores() bool {
+	switch m.byHand(m.at) {
+	case dropped:
+		return true
+	case kept:
+		return false
+	}
+	return m.ready.leads && m.at < len(m.ready.beats) && m.ready.beats[m.at].Rejected != ""
+}
+
 // drop leaves the beat under the cursor out, or uses it; what was said about it
 // by hand before is taken back first.
 func (m Model) drop() (Model, tea.Cmd) {

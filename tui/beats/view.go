@@ -169,8 +169,9 @@ func (m Model) overlayLines(s shares) []string {
 // listed is the list of the beats about the cursor.
 func (m Model) listed(width, height int) []string {
 	beats, grid := m.beatsShown(), m.ready.grid
-	lines := []string{fmt.Sprintf("  %5s %10s  %-19s%10s%10s%10s%10s %s",
-		"beat", "onset, s", "used, or why not", "length, s", "minimum", "maximum", "mean", m.signal().source.Unit)}
+	unit := m.clean(m.signal().source.Unit).Cut(5).String()
+	lines := []string{fmt.Sprintf("  %5s %10s  %-19s%9s%10s%10s%11s",
+		"beat", "onset, s", "used, or why not", "length, s", "min, "+unit, "max, "+unit, "mean, "+unit)}
 	rows := min(max(height-1, 0), len(beats))
 	first := max(0, min(m.at-rows/2, len(beats)-rows))
 	for i := first; i < first+rows; i++ {
@@ -180,7 +181,7 @@ func (m Model) listed(width, height int) []string {
 		}
 		write := func(v float64) string { return casenote.Format(v, data.NoInterval()) }
 		fate := strings.TrimPrefix(m.fateOf(i), "not used, ")
-		lines = append(lines, fmt.Sprintf("%s %5d %10.3f  %-19s%10.3f%10s%10s%10s", cursor, i+1, grid.At(b.From), fate,
+		lines = append(lines, fmt.Sprintf("%s %5d %10.3f  %-19s%9.3f%10s%10s%11s", cursor, i+1, grid.At(b.From), fate,
 			grid.At(b.To)-grid.At(b.From), write(b.Min), write(b.Max), write(b.Mean)))
 	}
 	for i, line := range lines {

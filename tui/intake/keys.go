@@ -21,16 +21,16 @@ func newKeys() keyMap {
 		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
 	}
 	return keyMap{
-		Down:      bind("j", "next channel", "j", "down"),
+		Down:      bind("j/k", "channel", "j", "down"),
 		Up:        bind("k", "channel before", "k", "up"),
-		Use:       bind("enter", "use it", "enter"),
-		Site:      bind("o", "next site", "o"),
+		Use:       bind("enter", "use", "enter"),
+		Site:      bind("o", "site", "o"),
 		SiteBack:  bind("O", "site before", "O"),
 		Unit:      bind("e", "unit", "e"),
 		Calibrate: bind("c", "calibrate", "c"),
 		Invert:    bind("i", "invert", "i"),
-		Start:     bind("[", "span starts at cursor", "["),
-		End:       bind("]", "span ends at cursor", "]"),
+		Start:     bind("[", "start span", "["),
+		End:       bind("]", "end span", "]"),
 		Clear:     bind("w", "whole span", "w"),
 		Set:       bind("enter", "set", "enter"),
 		Cancel:    bind("esc", "cancel", "esc"),
@@ -50,7 +50,7 @@ func (m Model) Keys() []key.Binding {
 	case len(m.ready.channels) == 0:
 		return []key.Binding{k.List.Open}
 	}
-	own := []key.Binding{k.Down, k.Up, k.Use, k.Site, k.Unit, k.Invert, k.Calibrate, k.Start, k.End, k.Clear}
+	own := []key.Binding{k.Down, k.Use, k.Site, k.Unit, k.Start, k.End, k.Clear, k.Invert, k.Calibrate}
 	own = append(own, k.Trace.Bindings()...)
-	return append(own, k.List.Open, k.SiteBack)
+	return append(own, k.List.Open, k.Up, k.SiteBack)
 }

@@ -8,6 +8,9 @@
 // A prepared picture carries what it was made from; one that is no longer
 // wanted is kept for later and not shown.
 //
+// Where a column holds more than half a second, so that beats cannot be told
+// apart, the lowest and the highest value of each column are drawn.
+//
 // The cursor is a sample, and who shows it gives it to View as a mark, so that a
 // step changes one row of the picture and few bytes are sent. It moves by columns of the picture; where it leaves
 // the window, the window follows by half its length.

@@ -76,9 +76,47 @@ func (s Source) prepare(o order) picture {
 	}
 	p.Marks = []chart.Mark{{}} // there is always a row of marks, for the cursor
 	columns, _ := p.Area(o.area.Width, o.area.Height)
-	p.Series = []chart.Series{{Values: chart.Columns(s.Values, w.from, w.from+w.n, columns, 0)}}
+	p.Series = s.series(w, columns)
 	p.Marks = append(p.Marks, inColumns(s.Marks, p.X, columns)...)
 	return picture{order: o, plot: p, columns: columns}
+}
+
+// crowded is the time in a column, s, above which beats cannot be told apart.
+const crowded = 0.5
+
+// series are the curve of a window, or, where a column holds too much time for
+// a curve, the highest and the lowest value of each column.
+func (s Source) series(w window, columns int) []chart.Series {
+	if float64(w.n)/float64(max(columns, 1)) < crowded*s.Grid.Rate {
+		return []chart.Series{{Values: chart.Columns(s.Values, w.from, w.from+w.n, columns, 0)}}
+	}
+	low, high := envelope(s.Values[w.from:w.from+w.n], columns)
+	return []chart.Series{
+		{Values: low, Glyph: chart.Line},
+		{Name: "lowest and highest", Values: high, Glyph: chart.Line},
+	}
+}
+
+// envelope is the lowest and the highest value of each column, by the map of
+// package chart; NaN where it has none.
+func envelope(values []float64, columns int) (low, high []float64) {
+	low, high = chart.Columns(nil, 0, 0, columns, 0), chart.Columns(nil, 0, 0, columns, 0)
+	for i, v := range values {
+		c := 0
+		if len(values) > 1 {
+			c = (2*i*(columns-1) + len(values) - 1) / (2 * (len(values) - 1))
+		}
+		if c >= columns || math.IsNaN(v) {
+			continue
+		}
+		if !(v >= low[c]) {
+			low[c] = v
+		}
+		if !(v <= high[c]) {
+			high[c] = v
+		}
+	}
+	return low, high
 }
 
 // inColumns keeps of each mark what can be told apart in the columns, so that

@@ -184,6 +184,30 @@ func TestMarksAreOneAColumn(t *testing.T) {
 	}
 }
 
+// TestEnvelope holds the envelope against the samples: a peak and a dip of one
+// sample each, in one column, are both there.
+func TestEnvelope(t *testing.T) {
+	s := source("a", 6000) // 60 s in 53 columns
+	s.Values[3000], s.Values[3001] = 250, -40
+	m := shown(t, s)
+	series := m.shown.plot.Series
+	if len(series) != 2 {
+		t.Fatalf("%d series", len(series))
+	}
+	at := int(math.Round(3000 * float64(m.shown.columns-1) / 5999))
+	if low, high := series[0].Values[at], series[1].Values[at]; low != -40 || high != 250 {
+		t.Errorf("column %d goes from %v to %v", at, low, high)
+	}
+	for c := range series[0].Values {
+		if !(series[0].Values[c] <= series[1].Values[c]) {
+			t.Errorf("column %d: lowest %v, highest %v", c, series[0].Values[c], series[1].Values[c])
+		}
+	}
+	if m = press(t, m, "+", "+"); len(m.shown.plot.Series) != 1 {
+		t.Error("beats that can be told apart are still an envelope")
+	}
+}
+
 func TestTable(t *testing.T) {
 	m := press(t, shown(t, source("a", 3000)), "t")
 	if v := m.View(); !m.Table() || !strings.Contains(v, "time (s)") || !strings.Contains(v, "highest 300.0 mmHg") {
