@@ -44,6 +44,13 @@ func TestWrapKeepsEveryWord(t *testing.T) {
 	})
 }
 
+func TestWrapOfWordsWithoutWidth(t *testing.T) {
+	got := strings.Join(Wrap(data.Clean("\u0300 abcd"), 2), "|")
+	if want := "\u0300|ab|cd"; got != want {
+		t.Errorf("%q, not %q", got, want)
+	}
+}
+
 func TestPad(t *testing.T) {
 	for _, c := range []struct{ got, want string }{
 		{Pad(data.Clean("ab"), 4), "ab  "},

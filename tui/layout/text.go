@@ -65,15 +65,15 @@ func Wrap(s data.Text, width int) []string {
 	}
 	for _, word := range strings.Fields(s.String()) {
 		w := data.Clean(word)
-		if used > 0 && used+1+w.Width() > width {
+		if line != "" && used+1+w.Width() > width {
 			end()
 		}
-		for ; used == 0 && w.Width() > width; w = data.Clean(word) {
+		for ; line == "" && w.Width() > width; w = data.Clean(word) {
 			head := prefix(word, width)
 			lines = append(lines, head)
 			word = word[len(head):]
 		}
-		if used > 0 {
+		if line != "" {
 			line, used = line+" ", used+1
 		}
 		line, used = line+word, used+w.Width()
