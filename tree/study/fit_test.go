@@ -43,11 +43,13 @@ func TestWhatTheDataAllow(t *testing.T) {
 		"flow alone":     {[]column{outflowTo("ao_flow_mL_s")}, nil, 0, 0, "no arterial pressure: a fit needs one; name it with --pressure", "nothing was fitted", ""},
 		"velocity alone": {[]column{velocity}, nil, 0, 0, "no arterial pressure", "nothing was fitted", data.CodePerArea},
 		"pressure in volts": {
-			[]column{{"ao_pressure_V", noisy(scaled(halfPressure, 0.01, 0.2), 0.003)}, outflowTo("ao_flow_mL_s")}, nil,
+			[]column{{"ao_pressure_V", noisy(scaled(halfPressure, 0.01, 0.2), 0.003)}, outflowTo("ao_flow_mL_s")},
+			nil,
 			0, 0, "ao_pressure_V is in V, without a scale", "nothing was fitted", data.CodeUncalibrated,
 		},
 		"flow in volts": {
-			[]column{aortic("ao_mmHg"), {"ao_flow_V", noisy(scaled(halfFlow, 0.01, 0), 0.01)}}, nil,
+			[]column{aortic("ao_mmHg"), {"ao_flow_V", noisy(scaled(halfFlow, 0.01, 0), 0.01)}},
+			nil,
 			0, 0, "ao_flow_V is in V, without a scale", "nothing was fitted", data.CodeUncalibrated,
 		},
 		"flow of a bed": {
@@ -58,7 +60,8 @@ func TestWhatTheDataAllow(t *testing.T) {
 			[]column{aortic("radial_mmHg"), outflowTo("ao_flow_mL_s")}, nil, 2, 1, "", "", data.CodeStandIn,
 		},
 		"flow upside down": {
-			[]column{aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")}, func(c *casefile.Case) { c.Invert = []string{"ao_flow"} },
+			[]column{aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")},
+			func(c *casefile.Case) { c.Invert = []string{"ao_flow"} },
 			2, 1, "", "mean flow is -87.5 mL/s, not positive: a share of it means nothing; check its sign (--invert)", data.CodeNegativeFlow,
 		},
 		"a flat pressure": {[]column{{"ao_mmHg", steady(80)}, outflowTo("ao_flow_mL_s")}, nil, 0, 0, "no pulse in ao_mmHg", "nothing was fitted", ""},

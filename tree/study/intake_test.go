@@ -21,31 +21,37 @@ func TestCalibration(t *testing.T) {
 		change         func(*casefile.Case)
 	}{
 		"kPa and L/min in the header": {
-			column{"ao_kPa", scaled(noisy(halfPressure, 0.3), kPa, 0)}, column{"ao_flow [L/min]", scaled(noisy(halfFlow, 1), 0.06, 0)},
+			column{"ao_kPa", scaled(noisy(halfPressure, 0.3), kPa, 0)},
+			column{"ao_flow [L/min]", scaled(noisy(halfFlow, 1), 0.06, 0)},
 			func(*casefile.Case) {},
 		},
 		"a unit stated over the header's": {
-			column{"ao_mmHg", scaled(noisy(halfPressure, 0.3), kPa, 0)}, column{"ao_flow", scaled(noisy(halfFlow, 1), 0.06, 0)},
+			column{"ao_mmHg", scaled(noisy(halfPressure, 0.3), kPa, 0)},
+			column{"ao_flow", scaled(noisy(halfFlow, 1), 0.06, 0)},
 			func(c *casefile.Case) { c.Unit = map[string]string{"ao_mmHg": "kPa", "ao_flow": "L/min"} },
 		},
 		"scale and offset": {
-			column{"ao_mmHg", scaled(noisy(halfPressure, 0.3), 0.5, -5)}, column{"ao_flow_mL_s", scaled(noisy(halfFlow, 1), 1/1.5, 0)},
+			column{"ao_mmHg", scaled(noisy(halfPressure, 0.3), 0.5, -5)},
+			column{"ao_flow_mL_s", scaled(noisy(halfFlow, 1), 1/1.5, 0)},
 			func(c *casefile.Case) {
 				c.Scale, c.Offset = map[string]float64{"ao": 2, "ao_flow": 1.5}, map[string]float64{"ao": 10}
 			},
 		},
 		"offset in the channel's unit, after scaling": {
-			column{"ao_kPa", scaled(noisy(halfPressure, 0.3), kPa/2, -0.75)}, column{"ao_flow_mL_s", noisy(halfFlow, 1)},
+			column{"ao_kPa", scaled(noisy(halfPressure, 0.3), kPa/2, -0.75)},
+			column{"ao_flow_mL_s", noisy(halfFlow, 1)},
 			func(c *casefile.Case) {
 				c.Scale, c.Offset = map[string]float64{"ao_kPa": 2}, map[string]float64{"ao_kPa": 1.5}
 			},
 		},
 		"inverted": {
-			column{"ao_mmHg", scaled(noisy(halfPressure, 0.3), -1, 0)}, column{"ao_flow_mL_s", scaled(noisy(halfFlow, 1), -1, 0)},
+			column{"ao_mmHg", scaled(noisy(halfPressure, 0.3), -1, 0)},
+			column{"ao_flow_mL_s", scaled(noisy(halfFlow, 1), -1, 0)},
 			func(c *casefile.Case) { c.Invert = []string{"ao", "ao_flow_mL_s"} },
 		},
 		"volts, with a unit and a scale stated": {
-			column{"ao_pressure_V", scaled(noisy(halfPressure, 0.3), 0.01, 0.2)}, column{"ao_flow_mL_s", noisy(halfFlow, 1)},
+			column{"ao_pressure_V", scaled(noisy(halfPressure, 0.3), 0.01, 0.2)},
+			column{"ao_flow_mL_s", noisy(halfFlow, 1)},
 			func(c *casefile.Case) {
 				c.Unit = map[string]string{"ao_pressure_V": "mmHg"}
 				c.Scale, c.Offset = map[string]float64{"ao_pressure_V": 100}, map[string]float64{"ao_pressure_V": -20}
