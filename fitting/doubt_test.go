@@ -137,7 +137,7 @@ func TestReplicatesCarryTheirFlow(t *testing.T) {
 	b := noisy(100, 24, 5)
 	b.Systematic = someErrors
 	r := fit(t, model(t, "wk3"), b, Settings{Replicates: 200})
-	if got := percentiles(r.Replicates.Total, func(v Values) float64 { return v.C }); got != r.Parameters[1].Total {
+	if got := percentiles(r.Values.C, r.Replicates.Total, func(v Values) float64 { return v.C }); got != r.Parameters[1].Total {
 		t.Errorf("interval %v, percentiles of the replicates %v", r.Parameters[1].Total, got)
 	}
 	one, total := r.Replicates.Random[17], r.Replicates.Total[17]

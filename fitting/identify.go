@@ -48,6 +48,8 @@ func (r *Result) unsure(e data.Estimate) string {
 		return "its replicates ended outside of numbers"
 	case e.Random.Width() > math.Abs(e.Value):
 		return fmt.Sprintf("its random interval is %.0f %% of it wide", 100*e.Random.Width()/math.Abs(e.Value))
+	case e.Total.Width() > math.Abs(e.Value):
+		return fmt.Sprintf("its interval is %.0f %% of it wide, systematic errors included", 100*e.Total.Width()/math.Abs(e.Value))
 	}
 	return ""
 }

@@ -43,12 +43,14 @@ func (p *pool) flow(starts []int32) []float64 {
 	n := p.beats.Count()
 	left := n
 	for _, from := range starts {
-		for j := range min(left, p.block) {
-			for i, v := range p.beats.Flow[(int(from)+j)%n] {
-				beat[i] += v
-			}
+		if left >= p.block {
+			addTo(beat, p.runs[from])
+			left -= p.block
+			continue
 		}
-		left -= p.block
+		for j := range left {
+			addTo(beat, p.beats.Flow[(int(from)+j)%n])
+		}
 	}
 	for i := range beat {
 		beat[i] = p.inflate*beat[i]/float64(n) + (1-p.inflate)*p.mean[i]

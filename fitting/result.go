@@ -117,14 +117,17 @@ func (r *Result) takeIntervals() {
 	for i := range r.Parameters {
 		p := &r.Parameters[i]
 		of := func(v Values) float64 { return v.Of(p.Name) }
-		p.Random, p.Total = percentiles(r.Replicates.Random, of), percentiles(r.Replicates.Total, of)
+		p.Random, p.Total = percentiles(p.Value, r.Replicates.Random, of), percentiles(p.Value, r.Replicates.Total, of)
 	}
 	t := &r.TotalResistance
-	t.Random, t.Total = percentiles(r.Replicates.Random, r.Model.Resistance), percentiles(r.Replicates.Total, r.Model.Resistance)
+	t.Random, t.Total = percentiles(t.Value, r.Replicates.Random, r.Model.Resistance), percentiles(t.Value, r.Replicates.Total, r.Model.Resistance)
 }
 
-// percentiles is the 95 % interval of a quantity over replicates.
-func percentiles(replicates []Replicate, of func(Values) float64) data.Interval {
+// percentiles is the 95 % interval about a value of 0 or more: the distances of
+// the percentiles 2.5 and 97.5 of the replicates from their median, laid about
+// the value. Drift, or a rhythm that changes, can shift all replicates together;
+// that shift is no doubt about the value.
+func percentiles(value float64, replicates []Replicate, of func(Values) float64) data.Interval {
 	all := make([]float64, len(replicates))
 	for i, one := range replicates {
 		if all[i] = of(one.Values); math.IsNaN(all[i]) {
@@ -132,5 +135,10 @@ func percentiles(replicates []Replicate, of func(Values) float64) data.Interval 
 		}
 	}
 	slices.Sort(all)
-	return data.Interval{Low: stat.Quantile(0.025, stat.LinInterp, all, nil), High: stat.Quantile(0.975, stat.LinInterp, all, nil)}
+	quantile := func(p float64) float64 { return stat.Quantile(p, stat.LinInterp, all, nil) }
+	shift := value - quantile(0.5)
+	if !finite(shift) {
+		return data.NoInterval()
+	}
+	return data.Interval{Low: max(0, quantile(0.025)+shift), High: max(0, quantile(0.975)+shift)}
 }

@@ -18,9 +18,10 @@ type source struct {
 // pool is the part of a source that its replicates keep.
 type pool struct {
 	beats   Beats
-	mean    []float64 // the average flow beat
-	block   int       // beats
-	inflate float64   // factor on the distance of a draw from the average
+	mean    []float64   // the average flow beat
+	block   int         // beats
+	inflate float64     // factor on the distance of a draw from the average
+	runs    [][]float64 // flow over time, summed over beats i .. i+block-1, counted round the end
 }
 
 func newSource(b Beats) *source {
@@ -69,6 +70,27 @@ func (s *source) useBlocks(block int, inflate float64) {
 			add(s.runFlow[i], s.flows[(i+j)%n])
 			add(s.runPress[i], s.presses[(i+j)%n])
 		}
+	}
+	s.runs = runSums(s.beats.Flow, block)
+}
+
+// runSums adds up every run of block successive beats, counted round the end.
+func runSums(beats [][]float64, block int) [][]float64 {
+	n := len(beats)
+	store := make([]float64, n*len(beats[0]))
+	runs := make([][]float64, n)
+	for i := range runs {
+		runs[i] = store[i*len(beats[0]) : (i+1)*len(beats[0])]
+		for j := range block {
+			addTo(runs[i], beats[(i+j)%n])
+		}
+	}
+	return runs
+}
+
+func addTo(to, x []float64) {
+	for i, v := range x {
+		to[i] += v
 	}
 }
 

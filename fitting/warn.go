@@ -2,6 +2,7 @@ package fitting
 
 import (
 	"fmt"
+	"math"
 	"strings"
 
 	"afterbeat/data"
@@ -54,7 +55,13 @@ func (f *beatFit) flowUnit() string {
 func (r *Result) outflowWords() string {
 	var parts []string
 	for _, row := range r.OutflowSensitivity {
+		if math.IsNaN(row.R) || math.IsNaN(row.C) {
+			continue
+		}
 		parts = append(parts, fmt.Sprintf("with %.3g mmHg R changes by %+.1f %% and C by %+.1f %%", row.OutflowPressure, 100*row.R, 100*row.C))
+	}
+	if len(parts) == 0 {
+		return "what another one would do cannot be said"
 	}
 	return strings.Join(parts, ", ")
 }

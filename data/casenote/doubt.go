@@ -27,6 +27,8 @@ func (n Number) String() string {
 // amount is [Number.String] without the origin.
 func (n Number) amount() string {
 	switch {
+	case !n.Identified && n.Total.Defined() && n.exact():
+		return "not identified (" + n.reason() + "), " + Format(n.Value, n.Total) + " in every replicate" + spaced(n.Unit)
 	case !n.Identified && n.Total.Defined():
 		return "not identified (" + n.reason() + "), range " + FormatRange(n.Value, n.Total) + spaced(n.Unit)
 	case !n.Identified:

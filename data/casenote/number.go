@@ -14,6 +14,7 @@ const (
 	intervalDigits = 2 // significant digits of the half-width of the interval
 	mostDigits     = 5 // significant digits of the value at most
 	bareDigits     = 4 // significant digits of a value without interval
+	exactDigits    = 7 // significant digits of a value without doubt at most
 
 	smallestPlain = 1e-4
 	plainPlaces   = 6
@@ -23,7 +24,7 @@ const (
 // Format writes v, rounded to two significant digits of the half-width of its
 // interval i, but to no more than five significant digits of its own. Without
 // an interval it keeps four significant digits. A value without doubt
-// (i.Low == i.High) is written out as far as five digits go, and a whole number
+// (i.Low == i.High) is written out as far as seven digits go, and a whole number
 // without doubt or without interval in full: 168000 rows are 168000 rows.
 //
 // There is no exponent from 1e-4 up to 1e9, nor where six decimal places are
@@ -117,7 +118,7 @@ func exponential(v float64, places int) string {
 	return mantissa + "e" + sign + strings.TrimLeft(power[1:], "0")
 }
 
-// shortest writes v with five significant digits, without trailing zeros.
+// shortest writes v with seven significant digits, without trailing zeros.
 func shortest(v float64) string {
 	if !finite(v) {
 		return decimal(v, 0)
