@@ -82,10 +82,13 @@ func (s LoadSpec) Load(file string) (fitting.Lumped, error) {
 		*into[p.Name] = *v
 		delete(given, p.Name)
 	}
-	for name, v := range given {
-		if v != nil {
+	for _, name := range sorted(given) {
+		if given[name] != nil {
 			return refuse("%s was given, but %s has none", name, m.Name)
 		}
+	}
+	if math.IsNaN(s.Pv) || math.IsInf(s.Pv, 0) {
+		return refuse("Pv = %v is not a number", s.Pv)
 	}
 	return fitting.Lumped{Model: m, Values: values}, nil
 }
