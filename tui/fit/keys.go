@@ -16,11 +16,11 @@ func newKeys() keyMap {
 	}
 	return keyMap{
 		previous: bind("left", "model before", "left", "h"),
-		next:     bind("right", "next model", "right", "l"),
-		choose:   bind("enter", "use this model", "enter"),
+		next:     bind("right", "model", "right", "l"),
+		choose:   bind("enter", "use it", "enter"),
 		up:       bind("up", "number above", "up", "k"),
 		down:     bind("down", "number below", "down", "j"),
-		number:   bind("x", "open the number", "x"),
+		number:   bind("x", "open number", "x"),
 		less:     bind("[", "what-if back", "["),
 		more:     bind("]", "what if", "]"),
 		flow:     bind("f", "flow", "f"),
@@ -67,7 +67,7 @@ func (m Model) Keys() []key.Binding {
 	k := m.bindings()
 	var on []key.Binding
 	for _, b := range []key.Binding{
-		k.next, k.choose, k.more, k.down, k.number, k.flow, k.table, m.warnings.Keys.Open, k.previous, k.less, k.up,
+		k.next, k.choose, k.more, k.number, k.flow, k.table, k.down, m.warnings.Keys.Open, k.previous, k.less, k.up,
 	} {
 		if b.Enabled() {
 			on = append(on, b)

@@ -84,7 +84,9 @@ func (d drawing) pressure(title string) chart.Plot {
 	}
 }
 
-// residual is that of a model, within bounds that hold that of every model.
+// residual is that of a model, within bounds that hold that of every model. It
+// is made of dots, of one byte each: a line of Unicode would be most of what a
+// step from model to model sends.
 func (d drawing) residual(r fitting.Result) chart.Plot {
 	var all [][]float64
 	for _, other := range d.fit.Results {
@@ -92,7 +94,7 @@ func (d drawing) residual(r fitting.Result) chart.Plot {
 	}
 	return chart.Plot{
 		Title: fmt.Sprintf("measured less %s, rms %s mmHg", r.Model.Name, bare(r.RMSE)),
-		Y:     chart.Covering("mmHg", all...), Series: []chart.Series{{Values: r.Residual}},
+		Y:     chart.Covering("mmHg", all...), Series: []chart.Series{{Values: r.Residual, Glyph: chart.Dots}},
 	}
 }
 

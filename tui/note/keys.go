@@ -59,7 +59,7 @@ func (m Model) Keys() []key.Binding {
 	case m.there():
 		p := k.page
 		all = []key.Binding{
-			k.next, p.Down, p.Up, p.PageDown, k.remark, k.search, k.previous, p.PageUp, p.First, p.Last, k.right, k.left,
+			k.next, p.PageDown, k.remark, k.search, p.Down, p.Up, k.previous, p.PageUp, p.First, p.Last, k.right, k.left,
 		}
 	}
 	return slices.DeleteFunc(all, func(b key.Binding) bool { return !b.Enabled() })

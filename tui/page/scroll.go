@@ -22,7 +22,7 @@ func NewKeys() Keys {
 	return Keys{
 		Down:     bind("j", "down", "j", "down"),
 		Up:       bind("k", "up", "k", "up"),
-		PageDown: bind("space", "page down", " ", "pgdown"),
+		PageDown: bind("space", "page", " ", "pgdown"),
 		PageUp:   bind("pgup", "page up", "pgup"),
 		First:    bind("g", "top", "g", "home"),
 		Last:     bind("G", "end", "G", "end"),

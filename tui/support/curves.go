@@ -83,7 +83,7 @@ func tracesOf(c study.Comparison, p plan, name, unit string, of func(support.Sta
 		}
 	}
 	t := traces{
-		name: name, y: chart.Covering(unit, all...),
+		name: name + " of " + c.Fit.Results[c.Fit.Chosen].Model.Name, y: chart.Covering(unit, all...),
 		x: chart.Axis{Low: 0, High: float64(len(native.Samples)-1) / native.Rate, Name: "time", Unit: "s"},
 	}
 	columns, _ := t.plot("").Area(p.width, p.plot)

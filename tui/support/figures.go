@@ -2,6 +2,7 @@ package support
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"afterbeat/data"
@@ -118,21 +119,22 @@ func estimate(e data.Estimate) string {
 }
 
 // energy is the figures of power of the state shown, with power over the share
-// above them where there is room.
+// above them where there is room; or, as a table, power over the share alone.
 func (m Model) energy(p plan) []string {
 	if m.table {
 		return m.sweep(p, pulsatilePower)
 	}
-	list := m.powerFigures()
-	below := append(m.figures(list), m.retainedLines(list)...)
-	for _, w := range m.shown().PowerSection().Words {
-		below = append(below, layout.Wrap(layout.Clean(w.String(), m.theme), p.width)...)
-	}
+	below := m.energyFigures()
 	if room := p.picture - len(below); room >= leastPicture {
 		p.picture = room
 		return append(layout.Lines(strings.Join(m.sweep(p, pulsatilePower), "\n"), room), below...)
 	}
 	return below
+}
+
+func (m Model) energyFigures() []string {
+	list := m.powerFigures()
+	return slices.Concat(m.figures(list), m.retainedLines(list), m.words[m.answer])
 }
 
 // sweepQuantity is what the sweep shows.
@@ -146,25 +148,29 @@ func (m Model) sweepQuantity() quantity {
 // sweep is a quantity over the share, under its title: as a picture and a table
 // beside it, or as one of them where there is no room for both.
 func (m Model) sweep(p plan, q quantity) []string {
-	if !m.curves.ready || p.picture < 2 {
+	if p.picture < 2 {
 		return nil
 	}
-	title := layout.Wrap(layout.Clean(q.title()+" against the pump's share of the flow", m.theme), p.width)[:1]
+	lines := layout.Wrap(layout.Clean(q.title()+" against the pump's share of the flow", m.theme), p.width)[:1]
 	p.picture--
-	if m.table && !p.beside {
-		return append(title, m.sweepTable(p, q)...)
+	switch {
+	case m.table && !p.beside:
+		return append(lines, m.sweepTable(p, q)...)
+	case !p.beside:
+		return append(lines, strings.Split(m.picture, "\n")...)
 	}
+	return append(lines, layout.Beside(strings.Split(m.picture, "\n"), m.sweepTable(p, q), p.sweep(q)+2)...)
+}
+
+// overShare draws a quantity over the share in some lines.
+func (m Model) overShare(p plan, q quantity, lines int) string {
 	l := m.curves.sweeps[q]
 	plot := frame(l.y)
 	for i, a := range m.comparison.Answers {
 		plot.Series = append(plot.Series, chart.Series{Name: string(a.Posing), Values: l.each[i]})
 	}
 	plot.Cursors = []float64{m.shown().Supported[m.state].Share}
-	picture := strings.Split(plot.Draw(p.sweep(q), p.picture, m.theme.Chart()), "\n")
-	if p.beside {
-		picture = layout.Beside(picture, m.sweepTable(p, q), p.sweep(q)+2)
-	}
-	return append(title, picture...)
+	return plot.Draw(p.sweep(q), lines, m.theme.Chart())
 }
 
 // sweepTable is a quantity for every share and posing.

@@ -16,10 +16,10 @@ func newKeys() keyMap {
 		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
 	}
 	return keyMap{
-		more:     bind("up", "larger share", "up", "k", "+"),
-		less:     bind("down", "smaller share", "down", "j", "-"),
-		next:     bind("right", "other posing", "right"),
-		previous: bind("left", "other posing", "left"),
+		more:     bind("up", "share up", "up", "k", "+"),
+		less:     bind("down", "share down", "down", "j", "-"),
+		next:     bind("right", "posing", "right"),
+		previous: bind("left", "posing before", "left"),
 		flow:     bind("f", "flow", "f"),
 		table:    bind("t", "table", "t"),
 		sweep:    bind("w", "sweep", "w"),
@@ -64,7 +64,7 @@ func (m Model) Keys() []key.Binding {
 		return m.warnings.Keys.Bindings()
 	}
 	k := m.bindings()
-	all := []key.Binding{k.more, k.less, k.next, k.sweep, k.energy, k.indices, k.flow, k.held, k.table, m.warnings.Keys.Open, k.previous}
+	all := []key.Binding{k.more, k.next, k.sweep, k.energy, k.flow, k.indices, k.held, k.table, k.less, m.warnings.Keys.Open, k.previous}
 	if m.view == held && m.there() {
 		all = append([]key.Binding{k.held}, m.pageKeys.Bindings()...)
 	}

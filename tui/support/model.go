@@ -10,6 +10,7 @@ import (
 	"afterbeat/tree/support"
 	"afterbeat/tui"
 	_ "afterbeat/tui/background"
+	"afterbeat/tui/layout"
 	"afterbeat/tui/page"
 	"afterbeat/tui/warnlist"
 )
@@ -46,7 +47,9 @@ type Model struct {
 	table      bool // numbers in place of the picture
 	flow       bool // in place of pressure
 	curves     curves
-	request    int // of the curves asked for last
+	picture    string     // of the view, the state and the size
+	words      [][]string // of each answer: what its power means, and what not
+	request    int        // of the curves asked for last
 	page       page.Scroll
 	pageKeys   page.Keys
 	warnings   warnlist.Model
@@ -71,7 +74,23 @@ func (m Model) Show(s study.Study) (tui.Screen, tea.Cmd) {
 	m.warnings = m.warnings.Hold(s.Warnings())
 	m.curves = curves{}
 	m.request++ // what is under way belongs to another study
-	return m.placed().prepare()
+	return m.placed().worded().drawn().prepare()
+}
+
+// worded wraps the words of each answer on its power.
+func (m Model) worded() Model {
+	m.words = nil
+	if !m.there() {
+		return m
+	}
+	for _, a := range m.comparison.Answers {
+		var lines []string
+		for _, w := range a.PowerSection().Words {
+			lines = append(lines, layout.Wrap(layout.Clean(w.String(), m.theme), m.area.Width)...)
+		}
+		m.words = append(m.words, lines)
+	}
+	return m
 }
 
 // Resize takes over size and theme.
@@ -82,7 +101,7 @@ func (m Model) Resize(a tui.Area, t tui.Theme) (tui.Screen, tea.Cmd) {
 	m.area, m.theme = a, t
 	m.warnings = m.warnings.Resize(a, t)
 	m.page = m.page.Resize(a.Height - 1)
-	return m.prepare()
+	return m.worded().drawn().prepare()
 }
 
 // there tells that there are states to show.
@@ -130,9 +149,9 @@ func (m Model) Update(msg tea.Msg) (tui.Screen, tea.Cmd) {
 			m.page = m.page.Hold(msg.curves.held)
 		}
 	case tea.KeyMsg:
-		return m.press(msg), nil
+		m = m.press(msg)
 	}
-	return m, nil
+	return m.drawn(), nil
 }
 
 func (m Model) press(msg tea.KeyMsg) Model {

@@ -187,7 +187,7 @@ func TestFigures(t *testing.T) {
 	b.Press("m")
 	says(t, b.View(), "Gosling PI", casenote.Format(state.PressureMeasures.GoslingPI, data.NoInterval()))
 	b.Press("m", "f")
-	says(t, b.View(), "mL/s flow native", "retained swing "+casenote.Format(a.Comparisons[i].RetainedFlow.Value, a.Comparisons[i].RetainedFlow.Total))
+	says(t, b.View(), "mL/s flow of wk3 native", "retained swing "+casenote.Format(a.Comparisons[i].RetainedFlow.Value, a.Comparisons[i].RetainedFlow.Total))
 }
 
 func TestSweepShowsEveryShare(t *testing.T) {

@@ -6,9 +6,7 @@ import (
 
 	"afterbeat/data"
 	"afterbeat/data/casenote"
-	"afterbeat/tree/support"
 	"afterbeat/tui"
-	"afterbeat/tui/chart"
 	"afterbeat/tui/layout"
 )
 
@@ -33,7 +31,7 @@ func (m Model) View() string {
 	case indices:
 		lines = append(lines, layout.Lines(strings.Join(m.indices(), "\n"), body)...)
 	default:
-		lines = append(lines, layout.Lines(m.waves(p), p.plot)...)
+		lines = append(lines, layout.Lines(m.picture, p.plot)...)
 		if p.figures > 0 {
 			lines = append(lines, m.figures(m.waveFigures())...)
 		}
@@ -114,30 +112,6 @@ func (m Model) status(p plan) string {
 		words = data.Clean(m.mean() + "; h: what is held")
 	}
 	return layout.Pad(words, max(p.width-len(count)-2, 0)) + "  " + count
-}
-
-// waves are native and supported over one another, or as a table.
-func (m Model) waves(p plan) string {
-	t, of := m.curves.pressure, func(s support.State) data.Period { return s.Pressure }
-	if m.flow {
-		t, of = m.curves.flow, func(s support.State) data.Period { return s.Flow }
-	}
-	if !m.curves.ready {
-		return ""
-	}
-	plot := t.plot(t.name)
-	if m.table {
-		plot.Series = []chart.Series{
-			{Name: "native", Values: of(m.shown().Native).Samples},
-			{Name: "supported", Values: of(m.shown().Supported[m.state]).Samples},
-		}
-		return plot.Table(p.width, p.plot, m.theme.Chart())
-	}
-	plot.Series = []chart.Series{
-		{Name: "native", Values: t.native},
-		{Name: "supported", Values: t.supported[m.answer][m.state]},
-	}
-	return plot.Draw(p.width, p.plot, m.theme.Chart())
 }
 
 // absent says why there is nothing, and what cures it.
