@@ -13,6 +13,10 @@ func neverGuessed(ch Channel) bool {
 	return ch.Site == SitePump || slices.ContainsFunc(channelWords(ch), func(w string) bool { return slices.Contains(elsewhere, w) })
 }
 
+// Arterial tells whether a pressure may be one of a systemic artery: its name
+// does not place it elsewhere, in the pulmonary circulation, a vein, a ventricle.
+func (c Channel) Arterial() bool { return !neverGuessed(c) }
+
 // elsewhere are words of pulmonary, venous, intracranial, airway, ventricular,
 // atrial and other pressures and flows outside the systemic arteries.
 var elsewhere = []string{

@@ -281,7 +281,7 @@ func TestReadWarnings(t *testing.T) {
 		{"time_s,P_V\n0,80\n0.01,81\n", ReadOptions{}, CodeUncalibrated, "a pressure in V", "--scale P_V=FACTOR (mmHg for 1 V)"},
 		{"time_s,flow_adu\n0,80\n0.01,81\n", ReadOptions{}, CodeUncalibrated, "a flow in adu", "--scale"},
 		{"time_s,abp_mmHg\n0,80\n0.01,81\n", ReadOptions{Rate: 50}, CodeGivenRate, "the given rate is 50 Hz; by time_s there are 100 rows a second", "leave out --rate"},
-		{"time_s,abp_mmHg\n0,1\n0.01,1\n0.02,1\n1.02,1\n1.03,1\n", ReadOptions{}, CodeHole, "jumps over 1 s at 0.02 s (97 % of the recording)", "--from"},
+		{"time_s,abp_mmHg\n0,1\n0.01,1\n0.02,1\n1.02,1\n1.03,1\n", ReadOptions{}, CodeHole, "jumps over 1 s at 0.02 s (97.1 % of the recording)", "--from"},
 		{"time_s,abp_mmHg\n0,1\n0.02,1\n0.02,1\n0.03,1\n0.04,1\n", ReadOptions{}, CodeRepeatedTimes, "1 of 5 rows (20 %)", "decimals"},
 		{"time_s,abp_mmHg\n0,1\n0.01,1\n0.02,1\n0.035,1\n0.045,1\n", ReadOptions{}, CodeUnevenClock, "ms away from an even clock", "--rate"},
 	} {

@@ -80,7 +80,7 @@ func holeWarning(holes []Span, lost int, c Clock) Warning {
 		text = fmt.Sprintf("the clock jumps %d times, over %s together; the longest jump is %s at %.6g s",
 			len(holes), seconds(total), seconds(longest.To-longest.From), longest.From)
 	}
-	text += fmt.Sprintf(" (%.2g %% of the recording)", 100*total/c.Duration)
+	text += fmt.Sprintf(" (%.3g %% of the recording)", 100*total/c.Duration)
 	if lost > 0 {
 		text += fmt.Sprintf("; %d rows stamped in a burst after it are not used", lost)
 	}

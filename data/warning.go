@@ -39,9 +39,16 @@ const (
 	CodeNotConverged  Code = "not-converged"
 	CodeBalance       Code = "balance"
 	CodeNegativeFlow  Code = "reversed-flow"
+	CodeDisagree      Code = "estimators-disagree"
+	CodeNotArterial   Code = "not-arterial"
 	CodeNoFlow        Code = "no-flow"
 	CodeNoSupport     Code = "no-comparison"
 	CodeGivenRate     Code = "given-rate"
+	CodeNotSettled    Code = "not-settled"
+	CodeBackFlow      Code = "back-flow"
+	CodeLittleFlow    Code = "little-pump-flow"
+	CodeSuction       Code = "suction"
+	CodeValveShut     Code = "valve-shut"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -79,7 +86,14 @@ func WarningCodes() []WarningCode {
 		{CodeNotConverged, "the search for the best fit gave up"},
 		{CodeBalance, "the balance of power does not close"},
 		{CodeNegativeFlow, "mean flow is not positive; the channel may be inverted"},
+		{CodeDisagree, "two ways to the same parameter give values far apart"},
+		{CodeNotArterial, "the pressure chosen is, by its name, none of a systemic artery"},
 		{CodeNoFlow, "no flow was recorded: a fit is not possible"},
 		{CodeNoSupport, "native and supported state could not be compared"},
+		{CodeNotSettled, "no periodic state of ventricle, pump and load was found"},
+		{CodeBackFlow, "blood flows back through the pump within the beat"},
+		{CodeLittleFlow, "pump flow falls under 0.5 L/min within the beat"},
+		{CodeSuction, "the pump empties the ventricle to near its unstressed volume"},
+		{CodeValveShut, "the aortic valve does not open at any time of the beat"},
 	}
 }

@@ -65,7 +65,7 @@ func (a Average) Closed(channel data.Text, calibrated bool) []data.Warning {
 		Code: data.CodeOpenBeat, Channel: channel,
 		Text: fmt.Sprintf("the average beat ends %.2g%s (%.2g %% of the pulse) %s than it began",
 			gap, unit, 100*gap/(high-low), higherOrLower(a.EndMinusStart)),
-		Cure: "choose a longer or steadier span; the fit to the whole span needs no closed beat",
+		Cure: "choose a steadier span, with --from and --to",
 	}}
 }
 

@@ -2,6 +2,7 @@ package beat
 
 import (
 	"fmt"
+	"slices"
 
 	"afterbeat/data"
 )
@@ -24,15 +25,22 @@ func (p Pulse) Warnings(channel data.Text) []data.Warning {
 		out = append(out, data.Warning{Code: code, Channel: channel, Text: fmt.Sprintf(format, args...), Cure: cure})
 	}
 	if n := p.Used(); n < fewBeats {
-		warn(data.CodeFewBeats, "take a longer span", "%d beats can be used, fewer than %d", n, fewBeats)
+		warn(data.CodeFewBeats, "take a longer span", "beats that can be used: %d, fewer than %d", n, fewBeats)
 	}
 	if r := p.Rejected(); float64(r) > manyRejected*float64(len(p.Beats)) {
 		warn(data.CodeManyRejected, "choose a quieter span, or leave out the artefacts",
 			"%d of %d beats are not used: %s", r, len(p.Beats), Tally(p.Beats))
 	}
-	if p.PeriodCV > irregular {
+	// Of all beats too: where the rhythm is worst, the used ones are the regular ones.
+	all := variation(each(whole(p.Beats), func(b Beat) float64 { return b.Interval }))
+	if p.PeriodCV > irregular || all > irregular {
 		warn(data.CodeIrregular, "take a span of steady rhythm; an average beat of an irregular one is no beat of the patient",
-			"the intervals of the used beats vary by %.0f %% (standard deviation over mean)", 100*p.PeriodCV)
+			"the intervals vary by %.0f %% in the used beats and by %.0f %% in all (standard deviation over mean)", 100*p.PeriodCV, 100*all)
 	}
 	return out
+}
+
+// whole are the beats without an unusable sample.
+func whole(beats []Beat) []Beat {
+	return slices.DeleteFunc(slices.Clone(beats), func(b Beat) bool { return b.Rejected == Gap })
 }

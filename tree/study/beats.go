@@ -74,6 +74,7 @@ func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 		b.Pulses = append(b.Pulses, pulse(ch, t.Grid.Rate, t.Case.OneBeat))
 	}
 	b.cut(pressure, flow)
+	b.Warnings = append(b.Warnings, implausible(b)...)
 	return b, nil
 }
 
@@ -257,6 +258,7 @@ func (b *Beats) average(hasPressure, hasFlow bool) {
 	}
 	if hasFlow {
 		b.Flow = b.Ensemble.Average(next)
+		b.Warnings = append(b.Warnings, reversed(*b)...)
 	}
 }
 

@@ -53,9 +53,6 @@ func notComparable(f Fit) string {
 	switch {
 	case len(f.Results) == 0:
 		return "nothing was fitted to the beats"
-	case !(f.Beats.Flow.Period.Mean() > 0):
-		return fmt.Sprintf("mean flow is %.3g %s, not positive: a share of it means nothing; check its sign (--invert) and zero (--offset)",
-			f.Beats.Flow.Period.Mean(), f.Beats.flowUnit())
 	case f.Chosen < 0:
 		return f.Recommended.Why + "; name a model with --model to go on all the same"
 	case f.Beats.FlowInfo.PerArea:
@@ -63,5 +60,5 @@ func notComparable(f Fit) string {
 	case !site.Systemic() && site != data.SiteOther:
 		return fmt.Sprintf("the flow is that of one bed (%s): a pump's share needs the flow at the root", site)
 	}
-	return ""
+	return onSupport(f.Beats)
 }

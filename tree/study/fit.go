@@ -53,22 +53,14 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 	if f.Reason != "" {
 		return f, nil
 	}
-	pressure, hasPressure := b.Intake.Chosen(b.Intake.Selection.Pressure)
-	switch {
-	case !hasPressure:
-		f.Reason = "no arterial pressure: a fit needs one; name it with --pressure"
-		return f, nil
-	case !pressure.Unit.Calibrated:
-		f.Reason = fmt.Sprintf("%s is in %s, without a scale: state --unit %s=mmHg with --scale and --offset", pressure.Name, pressure.Unit.Name, pressure.Name)
+	if f.Reason = notFittable(b); f.Reason != "" {
 		return f, nil
 	}
-	flow, hasFlow := b.Intake.flowChannel()
-	if !hasFlow {
+	if err := checkOutflow(b); err != nil {
+		return f, err
+	}
+	if _, hasFlow := b.Intake.flowChannel(); !hasFlow {
 		return f.fromPressureAlone(), nil
-	}
-	if !flow.Unit.Calibrated {
-		f.Reason = fmt.Sprintf("%s is in %s, without a scale: state --unit and --scale", flow.Name, flow.Unit.Name)
-		return f, nil
 	}
 	beats, err := fitData(b)
 	if err != nil {
@@ -122,7 +114,7 @@ func (f Fit) conclude(ctx context.Context, d fitting.Beats) (Fit, error) {
 	f.Warnings = chosen.Warnings
 	var err error
 	f.Sensitivity, err = sensitivities(ctx, chosen, d)
-	f.Warnings = append(f.Warnings, delayWarnings(f)...)
+	f.Warnings = slices.Concat(f.Warnings, delayWarnings(f), disagreements(f))
 	return f, err
 }
 

@@ -62,7 +62,7 @@ func TestWhatTheDataAllow(t *testing.T) {
 		"flow upside down": {
 			[]column{aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")},
 			func(c *casefile.Case) { c.Invert = []string{"ao_flow"} },
-			2, 1, "", "mean flow is -87.5 mL/s, not positive: a share of it means nothing; check its sign (--invert)", data.CodeNegativeFlow,
+			0, 0, "the mean flow is -87.5 mL/s, not positive; if the channel is upside down, give --invert ao_flow_mL_s", "nothing was fitted", data.CodeNegativeFlow,
 		},
 		"a flat pressure": {[]column{{"ao_mmHg", steady(80)}, outflowTo("ao_flow_mL_s")}, nil, 0, 0, "no pulse in ao_mmHg", "nothing was fitted", ""},
 		"a pressure that wanders": {

@@ -23,7 +23,7 @@ type Intake struct {
 	Grid      data.Grid
 	// Channels are those of the recording with sites, calibration and clock of
 	// the case applied: Values are on Grid, NaN where unusable.
-	Channels  []data.Channel
+	Channels []data.Channel
 	// Filled counts, for each channel, the missing samples that were filled by a
 	// straight line, because their hole is no longer than 20 ms.
 	Filled    []int
@@ -224,6 +224,20 @@ func siteWarnings(t Intake) []data.Warning {
 			Code: data.CodeRegional, Channel: q.Name,
 			Text: fmt.Sprintf("the flow is that of one bed (%s): R and C are of that bed, not of the body", q.Site),
 			Cure: "for the load of the body, record flow at the root or in the outflow tract",
+		})
+	}
+	if hasPressure && !p.Arterial() {
+		out = append(out, data.Warning{
+			Code: data.CodeNotArterial, Channel: p.Name,
+			Text: "by its name this is no pressure of a systemic artery: what is fitted with it is not the load of the body",
+			Cure: "choose another column with --pressure",
+		})
+	}
+	if hasPressure && hasFlow && !q.Site.Systemic() && q.Site != data.SiteOther && p.Site != q.Site {
+		out = append(out, data.Warning{
+			Code: data.CodeStandIn, Channel: p.Name,
+			Text: fmt.Sprintf("pressure of site %s stands in for that at the %s, where the flow was measured; a pulse 1.3 times too high puts C 23 %% too low and Zc 26 %% too high", p.Site, q.Site),
+			Cure: "a pressure measured beside the flow; state the delay between the two with --delay",
 		})
 	}
 	if hasPressure && hasFlow && p.Site != data.SiteRoot && (q.Site.Systemic() || q.Site == data.SiteOther) {

@@ -157,7 +157,7 @@ func TestSitesAreStatedAndWarnedOf(t *testing.T) {
 		"limb and root":              {"radial_mmHg", "ao_flow_mL_s", nil, data.CodeStandIn, "at the radial stands in for the root's; a pulse 1.3 times that of the root puts C 23 % too low"},
 		"a limb that is called root": {"radial_mmHg", "ao_flow_mL_s", map[string]string{"radial_mmHg": "root"}, "", ""},
 		"unnamed artery and root":    {"abp_mmHg", "ao_flow_mL_s", nil, data.CodeStandIn, "at a place that its name does not tell"},
-		"bed":                        {"abp_mmHg", "carotid_flow_mL_s", nil, data.CodeRegional, "that of one bed (carotid)"},
+		"bed":                        {"carotid_mmHg", "carotid_flow_mL_s", nil, data.CodeRegional, "that of one bed (carotid)"},
 		"flow of nowhere":            {"ao_mmHg", "flow_mL_s", nil, data.CodeSiteUnknown, "not known"},
 	} {
 		choices := inventedCase()
