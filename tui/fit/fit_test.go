@@ -219,13 +219,25 @@ func undecided(t *testing.T) study.Study {
 func TestNoneRecommendedAndNoneInUse(t *testing.T) {
 	b := open(undecided(t))
 	says(t, b.View(), "recommended none", "in use none", "None is recommended, and none in use before enter chooses one: C of wk2")
-	b.Press("]", "x", "down", "right", "enter")
+	b.Press("v", "v", "]", "x", "down", "right", "enter")
 	if got := changes(t, b); len(got) != 1 || got[0].Model != "wk3" {
 		t.Errorf("asked for %v", got)
 	}
 	for _, a := range screentest.Areas() {
 		b.Resize(a, tui.Theme{})
 		screentest.Fits(t, b.View(), a, tui.Theme{})
+	}
+}
+
+// A reason that is longer than its two lines is cut where one can see it.
+func TestALongReasonIsCutVisibly(t *testing.T) {
+	s := undecided(t)
+	f := *s.Fit
+	f.Recommended.Why = strings.Repeat("it has no effect on the pressure; ", 9)
+	s.Fit = &f
+	lines := strings.Split(open(s).View(), "\n")
+	if got := lines[len(lines)-2]; !strings.HasSuffix(got, "~") {
+		t.Errorf("%q", got)
 	}
 }
 

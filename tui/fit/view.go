@@ -5,6 +5,7 @@ import (
 	"slices"
 	"strings"
 
+	"afterbeat/data"
 	"afterbeat/tui"
 	"afterbeat/tui/chart"
 	"afterbeat/tui/layout"
@@ -23,7 +24,7 @@ func (m Model) View() string {
 	p := m.plan()
 	if m.view == opened {
 		if lines := m.opened(p); len(lines) > p.plot {
-			return layout.Fit(shortened(lines, m.area.Height), m.area)
+			return layout.Fit(shortened(lines, m.area.Height, "a taller window shows them"), m.area)
 		}
 	}
 	lines := layout.Lines(m.above(p), p.plot)
@@ -77,8 +78,7 @@ func (m Model) below(p plan) []string {
 	}
 	lines = append(lines, m.assumptions(p)...)
 	if p.advice > 0 {
-		advice := layout.Wrap(layout.Clean(m.advice(), m.theme), p.width)
-		lines = append(lines, layout.Lines(strings.Join(advice, "\n"), p.advice)...)
+		lines = append(lines, layout.Lines(strings.Join(wrapped(m.advice(), p.width, p.advice, m.theme), "\n"), p.advice)...)
 	}
 	return append(lines, m.status(p))
 }
@@ -150,16 +150,28 @@ func (m Model) absent() []string {
 	say("", "What cures it is chosen on Intake (1): channels, units, sites, the span. Beats (2) shows which beats are used, and why the others are not.")
 	lines = append(lines, "")
 	for _, w := range upToFit(m.study) {
-		say("", w.Text)
+		say("", strings.TrimPrefix(w.Channel.String()+": "+w.Text, ": "))
 		say("  ", "cure: "+w.Cure)
 	}
-	return shortened(lines, m.area.Height)
+	return shortened(lines, m.area.Height, "v reads the warnings")
 }
 
-// shortened is at most height lines; where some are left out, the last says so.
-func shortened(lines []string, height int) []string {
+// shortened is at most height lines; where some are left out, the last says so,
+// and how to see them.
+func shortened(lines []string, height int, how string) []string {
 	if len(lines) <= height || height < 1 {
 		return lines
 	}
-	return append(slices.Clone(lines[:height-1]), fmt.Sprintf("~ %d more lines, in a taller window", len(lines)-height+1))
+	return append(slices.Clone(lines[:height-1]), fmt.Sprintf("~ %d more lines; %s", len(lines)-height+1, how))
+}
+
+// wrapped is text in at most height lines; where it does not fit, the last one
+// ends with "~".
+func wrapped(text string, width, height int, t tui.Theme) []string {
+	lines := layout.Wrap(layout.Clean(text, t), width)
+	if len(lines) <= height {
+		return lines
+	}
+	last := data.Clean(strings.Join(lines[height-1:], " ")).Cut(width)
+	return append(slices.Clone(lines[:height-1]), last.String())
 }

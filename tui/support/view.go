@@ -124,13 +124,20 @@ func (m Model) absent() []string {
 	say := func(text string) {
 		lines = append(lines, layout.Wrap(layout.Clean(text, m.theme), m.area.Width)...)
 	}
-	say("There is no comparison: " + m.comparison.Reason + ".")
+	why := m.comparison.Reason
+	if of := m.comparison.Fit.Reason; of != "" {
+		why += ": " + of
+	}
+	say("There is no comparison: " + why + ".")
 	lines = append(lines, "")
 	say("A comparison needs a fit, and the flow at the root. What cures it is chosen on Intake (1): the flow, its unit and site, a diameter for a velocity.")
 	lines = append(lines, "")
 	for _, w := range m.study.Warnings() {
-		say(w.Text)
+		say(strings.TrimPrefix(w.Channel.String()+": "+w.Text, ": "))
 		say("cure: " + w.Cure)
+	}
+	if h := m.area.Height; len(lines) > h && h > 0 {
+		lines = append(lines[:h-1], fmt.Sprintf("~ %d more lines; v reads the warnings", len(lines)-h+1))
 	}
 	return lines
 }
