@@ -14,10 +14,10 @@ func solveCommand(s stream) *cobra.Command {
 	c := &cobra.Command{
 		Use:   "solve",
 		Short: "Evaluate given parameters, without a measurement",
-		Args:  exactly(0, "a part: load"),
+		Args:  exactly(0, "a part: load, support"),
 		RunE:  func(c *cobra.Command, _ []string) error { return c.Help() },
 	}
-	c.AddCommand(solveLoadCommand(s))
+	c.AddCommand(solveLoadCommand(s), solveSupportCommand(s))
 	return c
 }
 
@@ -54,12 +54,82 @@ func solveLoadCommand(s stream) *cobra.Command {
 		if err != nil {
 			return err
 		}
-		solved, err := study.SolveLoad(args[0], spec, func(name string) ([]byte, error) {
-			if !filepath.IsAbs(name) {
-				name = filepath.Join(filepath.Dir(args[0]), name)
-			}
-			return readFile(name)
-		})
+		solved, err := study.SolveLoad(args[0], spec, besides(args[0]))
+		if err != nil {
+			return err
+		}
+		return o.print(s, solved.Report(), solved.Note(), solved.Reason())
+	}
+	return c
+}
+
+// besides reads files whose names are relative to a spec.
+func besides(spec string) func(name string) ([]byte, error) {
+	return func(name string) ([]byte, error) {
+		if !filepath.IsAbs(name) {
+			name = filepath.Join(filepath.Dir(spec), name)
+		}
+		return readFile(name)
+	}
+}
+
+const solveSupportHelp = casenote.Caution + `
+
+The periodic state of a ventricle, a lumped load and a pump. SPEC.toml holds
+
+  speeds = [0, 8, 9]          # 1000/min; 0: no pump
+  step = {from = 8, to = 9.5, beats = 40}   # may be absent
+  modulation = "speed.csv"    # columns time_s,speed_1000_per_min: one period
+  locked = 1                  # beats of its period; 0: free
+
+  [ventricle]
+  period_s = 0.8              # s
+  activation = "hill"         # or "cosine", with Tes and Tr in s
+  Emax = 0.62                 # mmHg/mL
+  Emin = 0.1
+  V0 = 10                     # mL
+  Pfill = 20                  # mmHg
+  Rmv = 0.01                  # mmHg s/mL, mitral valve
+  Rav = 0.005                 # mmHg s/mL, aortic valve
+  filling_slope = 0.46        # mmHg s/mL; 0: constant filling pressure
+  filling_flow = 60           # mL/s at Pfill; absent: that without the pump
+
+  [load]
+  model = "wk3"               # wk2, wk3, wk4s, wk4p
+  R = 1.2                     # mmHg s/mL
+  C = 1.3                     # mL/mmHg
+  Zc = 0.05                   # mmHg s/mL (not wk2)
+  L = 0.005                   # mmHg s2/mL (wk4s, wk4p)
+  Pv = 5                      # mmHg
+
+  [pump]                      # H = a n^2 - b n Q - c Q|Q|, n in 1000/min
+  a = 1.05
+  b = 0.013
+  c = 0.0006
+  Rc = 0.12                   # mmHg s/mL, cannulas
+  Lc = 0.035                  # mmHg s2/mL`
+
+// solveSupportCommand is `afterbeat solve support SPEC.toml`.
+func solveSupportCommand(s stream) *cobra.Command {
+	c := &cobra.Command{
+		Use:   "support SPEC.toml",
+		Short: "The state of a ventricle, a load and a pump at each speed",
+		Long:  solveSupportHelp,
+		Args:  exactly(1, "one SPEC.toml"),
+	}
+	o := &options{flags: c.Flags()}
+	o.flags.BoolVar(&o.json, "json", false, "print one JSON object")
+	o.flags.BoolVar(&o.ascii, "ascii", false, "print ASCII only")
+	c.RunE = func(_ *cobra.Command, args []string) error {
+		content, err := readFile(args[0])
+		if err != nil {
+			return err
+		}
+		spec, err := study.ReadSupportSpec(args[0], content)
+		if err != nil {
+			return err
+		}
+		solved, err := study.SolveSupport(args[0], spec, besides(args[0]))
 		if err != nil {
 			return err
 		}

@@ -1,8 +1,10 @@
 // Package support asks of an arterial load what is left of the pulse when a
-// steady pump takes over a share s of the output, at equal mean flow and equal
-// heart period.
+// pump takes over. There are two ways to ask. The posings with a share need no
+// ventricle: a steady pump takes a share s of the output, at equal mean flow and
+// equal heart period. The coupled state needs one: ventricle, pump and load
+// settle among themselves what each does.
 //
-// # The posings
+// # The posings with a share
 //
 // A posing is a rule that turns the native flow Q(t) into the flow that enters
 // the arteries with the pump running. Neither of the two here has a ventricle.
@@ -36,6 +38,37 @@
 // sweep of supported ones and their comparisons; [Answer.WithIntervals] pushes
 // the replicates of a fit, each with its own parameters, flow and outflow
 // pressure, through all of them.
+//
+// # The coupled state
+//
+// [Coupled] solves, for a ventricle ([heart.Ventricle]) that fills at Pfill, a
+// pump ([pump.Pump]) from the ventricle to the root, and a lumped load
+// ([Windkessel]),
+//
+//	dV/dt = Qmv - Qav - Qp,  Qmv = max(0, (Pfill - Plv)/Rmv),  Qav = max(0, (Plv - Pao)/Rav)
+//	Lc dQp/dt = Plv - Pao + H - Rc Qp,                     Q = Qav + Qp into the load
+//	wk3:  Pao = Pc + Zc Q,  C dPc/dt = Q - (Pc - Pv)/R,    hence Qav = max(0, (Plv - Pc - Zc Qp)/(Rav + Zc))
+//
+// and likewise for wk2, wk4s and wk4p. While no valve moves the equations are
+// smooth: they are integrated with an adaptive method of order 5 (Dormand and
+// Prince 1980) whose steps end where a valve opens or shuts or the pump's flow
+// reverses, which is located, not stepped over. What comes back after a beat is
+// found by Newton's method on the few states at its start and, on a filling line,
+// the filling pressure as one more unknown; never by repeated substitution of the
+// latter, which oscillates. The result is good to about 1e-7; two independent
+// methods, and the balance of energy over the beat
+//
+//	filling + ventricle + pump = valves + cannula + Zc + R + outflow,
+//	ventricle = int Plv (Qav + Qp - Qmv) dt, the stroke work
+//
+// are held against it in the tests. Minima and maxima are those of the
+// continuous beat: kinks at the valves count, and both sides of the jump of Pao
+// where the valve shuts in front of the L of a wk4s.
+//
+// [Coupled.Step] follows a change of speed, with filling pressure drawing nearer
+// to its line with a lag; [Coupled.Modulate] a speed that changes all the time.
+// Nothing of this is a forecast for a patient unless ventricle, load and pump
+// are: what is not known of them has to be varied, by whoever asks.
 //
 // # Units and signs
 //
