@@ -29,7 +29,7 @@ func (s Stage) Missing(st study.Study) string {
 	switch {
 	case s == Tree:
 		return "the tree of arteries comes with a later version; the fit is a lumped load"
-	case s == Intake && st.Intake == nil:
+	case s == Intake && st.Inputs.Recording == nil:
 		return "the recording is still being read"
 	case s == Beats && st.Beats == nil:
 		return "the beats are still being looked for"

@@ -33,7 +33,7 @@ func run(args []string, stdin io.Reader, stdout, stderr io.Writer) int {
 	}
 	code := exitCode(err)
 	if code == exitInterrupted {
-		fmt.Fprintln(stderr, "afterbeat: interrupted; nothing was saved")
+		fmt.Fprintln(stderr, "afterbeat: "+interrupted(err))
 		return code
 	}
 	fmt.Fprintln(stderr, "afterbeat: "+message(err))

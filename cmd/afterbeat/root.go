@@ -29,7 +29,8 @@ func newRoot(s stream) *cobra.Command {
 	})
 	opts := newOptions(root)
 	opts.addSaving(root)
-	root.RunE = func(c *cobra.Command, args []string) error { return runScreenless(c.Context(), s, opts, args) }
+	screen := addScreen(root)
+	root.RunE = func(c *cobra.Command, args []string) error { return runRoot(c.Context(), s, opts, screen, args) }
 	root.AddCommand(
 		checkCommand(s), fitCommand(s), studyCommand(s), solveCommand(s), demoCommand(s),
 		warningsTopic(), exitCodesTopic(),

@@ -136,7 +136,7 @@ func (m Model) keysNow() (always, more []key.Binding) {
 		return []key.Binding{keys.quit}, nil
 	}
 	everywhere := m.everywhere()
-	n := len(everywhere) - 3 // save, help, quit
+	n := len(everywhere) - 4 // stage, save, help, quit
 	return everywhere[n:], append(m.screens[m.open].Keys(), everywhere[:n]...)
 }
 
@@ -235,7 +235,7 @@ func harmless(row string, t tui.Theme) bool {
 func defused(row string, t tui.Theme) string {
 	var b strings.Builder
 	for len(row) > 0 {
-		if n := colour(row); n > 0 {
+		if n := colourLength(row); n > 0 {
 			b.WriteString(row[:n])
 			row = row[n:]
 			continue
@@ -259,9 +259,9 @@ func visible(s string, t tui.Theme) string {
 	return strings.Join(parts, " ")
 }
 
-// colour is the length of the escape sequence for colour that s begins with; 0
+// colourLength is the length of the escape sequence for colour that s begins with; 0
 // where it begins with none.
-func colour(s string) int {
+func colourLength(s string) int {
 	if !strings.HasPrefix(s, "\x1b[") {
 		return 0
 	}

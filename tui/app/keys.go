@@ -85,8 +85,8 @@ func (m Model) everywhere() []key.Binding {
 	cancel.SetEnabled(m.job.running)
 	suspend.SetEnabled(!m.leader)
 	all := []key.Binding{
-		cancel, keys.stages(), undo, redo, keys.next, keys.previous, keys.ascii, keys.redraw,
-		suspend, keys.interrupt, keys.save, keys.help, keys.quit,
+		cancel, undo, redo, keys.next, keys.previous, keys.ascii, keys.redraw, suspend, keys.interrupt,
+		keys.stages(), keys.save, keys.help, keys.quit,
 	}
 	if len(m.errors) > 0 {
 		all = append([]key.Binding{keys.answer}, all...)

@@ -118,7 +118,7 @@ func checkBytes(rt *rapid.T, row string, ascii bool) {
 	for i, r := range row {
 		switch {
 		case r == 0x1b:
-			if colour(row[i:]) == 0 {
+			if colourLength(row[i:]) == 0 {
 				rt.Fatalf("an escape sequence that is no colour: %q", row[i:])
 			}
 		case r < ' ', r >= 0x7f && r < 0xa0, ascii && r >= 0x80, slices.Contains([]rune("\u202e\u2066"), r):

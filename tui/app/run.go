@@ -29,7 +29,7 @@ func Run(ctx context.Context, o Options, in io.Reader, out io.Writer) (Outcome, 
 	lipgloss.SetColorProfile(profile(o.Theme))
 	m := New(o)
 	m.base = context.WithoutCancel(ctx) // the computing ends with the program
-	p := program(m, in, out)
+	p := program(m, in, out, frames)
 	stop := watch(ctx, p)
 	defer stop()
 	last, err := p.Run()
@@ -50,9 +50,9 @@ func profile(t tui.Theme) termenv.Profile {
 	return termenv.Ascii
 }
 
-func program(m Model, in io.Reader, out io.Writer) *tea.Program {
+func program(m Model, in io.Reader, out io.Writer, frames int) *tea.Program {
 	return tea.NewProgram(m,
-		tea.WithInput(in), tea.WithOutput(out), tea.WithAltScreen(), tea.WithFPS(frames), tea.WithoutSignalHandler())
+		tea.WithInput(in), tea.WithOutput(thinned(out)), tea.WithAltScreen(), tea.WithFPS(frames), tea.WithoutSignalHandler())
 }
 
 // watch tells the program of the loss of the terminal and of signals to end.
