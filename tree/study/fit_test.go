@@ -166,7 +166,7 @@ func TestReplicatesAndSeed(t *testing.T) {
 // the flow widens that of R, and the more the larger it is.
 func TestErrorsWidenIntervals(t *testing.T) {
 	width := func(errors map[string]string) (random, total float64) {
-		s := demoWith(t, func(c *casefile.Case) { c.Error, c.Replicates = errors, ptr(300) })
+		s := demoWith(t, func(c *casefile.Case) { c.Error, c.Replicates = errors, ptr(150) })
 		p, _ := s.Fit.Results[s.Fit.Chosen].Parameter("R")
 		return p.Random.Width(), p.Total.Width()
 	}

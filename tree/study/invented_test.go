@@ -2,10 +2,12 @@ package study
 
 import (
 	"context"
+	"flag"
 	"fmt"
 	"io/fs"
 	"math"
 	"math/rand/v2"
+	"os"
 	"strings"
 	"testing"
 
@@ -14,6 +16,15 @@ import (
 	"afterbeat/data/casenote"
 	"afterbeat/data/demo"
 )
+
+// A check of a property is one or two whole studies here; -rapid.checks asks for
+// more of them.
+func TestMain(m *testing.M) {
+	if err := flag.Set("rapid.checks", "25"); err != nil {
+		panic(err)
+	}
+	os.Exit(m.Run())
+}
 
 func ptr[T any](v T) *T { return &v }
 

@@ -170,21 +170,17 @@ func TestReferenceBenchLoad(t *testing.T) {
 }
 
 // Finger pressure with middle-cerebral velocity is the load of that bed: named
-// after it, per unit area, and of no use for a pump's share.
+// after it, and of no use for a pump's share, with a diameter too.
 func TestReferenceCerebralLoadIsRegional(t *testing.T) {
 	const name = "tcd_abp_mcav_1000hz_168s.csv"
 	f := folder{name: recordingIn(t, references, name), "ex.csv": leftOut(t, name)}
-	c := casefile.Case{Recording: name, Exclude: "ex.csv", Replicates: ptr(20)}
-	for diameter, want := range map[*float64]string{nil: "per unit area", ptr(0.3): "that of one bed (mca)"} {
-		c.DiameterCM = diameter
-		s := whole(t, c, f)
-		report := s.Report(defaults)
-		if len(report.Fits) != 2 || report.Fits[0].Site != data.SiteMCA || !strings.Contains(s.Comparison.Reason, want) || report.Native != nil {
-			t.Errorf("%d fits, comparison: %q", len(report.Fits), s.Comparison.Reason)
-		}
-		if _, ok := warned(s, data.CodeRegional); !ok {
-			t.Error("no warning that the load is regional")
-		}
+	s := whole(t, casefile.Case{Recording: name, Exclude: "ex.csv", Replicates: ptr(20), DiameterCM: ptr(0.3)}, f)
+	report := s.Report(defaults)
+	if len(report.Fits) != 2 || report.Fits[0].Site != data.SiteMCA || !strings.Contains(s.Comparison.Reason, "that of one bed (mca)") || report.Native != nil {
+		t.Errorf("%d fits, comparison: %q", len(report.Fits), s.Comparison.Reason)
+	}
+	if _, ok := warned(s, data.CodeRegional); !ok {
+		t.Error("no warning that the load is regional")
 	}
 }
 
