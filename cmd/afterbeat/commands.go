@@ -20,7 +20,7 @@ func compute(ctx context.Context, s stream, o *options, args []string, last stud
 	if len(args) > 0 {
 		path = args[0]
 	}
-	from, err := openPath(path, s.in)
+	from, err := openPath(path, interruptible{ctx, s.in})
 	if err != nil {
 		return study.Study{}, err
 	}
@@ -112,7 +112,7 @@ func (o *options) deliver(s stream, st study.Study) error {
 	if o.saveAs == "" {
 		return o.print(s, st.Report(o.render()), st.Note(), st.Reason())
 	}
-	note := st.Note().Render(o.render())
+	note := study.Text(st.Note(), o.render())
 	if err := save.File(o.saveAs, []byte(note), o.replace); err != nil {
 		return err
 	}
@@ -132,7 +132,7 @@ func (o *options) print(s stream, report any, note casenote.Note, reason *string
 		if err := printJSON(s.out, report); err != nil {
 			return err
 		}
-	} else if _, err := io.WriteString(s.out, note.Render(o.render())); err != nil {
+	} else if _, err := io.WriteString(s.out, study.Text(note, o.render())); err != nil {
 		return err
 	}
 	return unanswered(reason)

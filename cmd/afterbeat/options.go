@@ -46,6 +46,9 @@ func (o *options) addSaving(c *cobra.Command) {
 
 // over lays the flags over the choices of a case.
 func (o *options) over(base casefile.Case) (casefile.Case, error) {
+	if f := o.flags.Lookup("output"); f != nil && f.Changed && o.saveAs == "" {
+		return base, usageError{errors.New("-o without a name"), "add the name of the file: -o FILE"}
+	}
 	if o.replace && o.saveAs == "" {
 		return base, usageError{errors.New("--replace without -o"), "add -o FILE"}
 	}

@@ -11,6 +11,7 @@ import (
 const (
 	fewBeats     = 8 // fewer carry no span fit
 	manyRejected = 1 / 3.0
+	irregularAll = 0.15 // CV of all intervals; one early beat among thirty makes 0.10
 	irregular    = 0.10 // CV of the intervals; at rest in sinus rhythm it is 0.02 to 0.08 (common practice)
 )
 
@@ -33,7 +34,7 @@ func (p Pulse) Warnings(channel data.Text) []data.Warning {
 	}
 	// Of all beats too: where the rhythm is worst, the used ones are the regular ones.
 	all := variation(each(whole(p.Beats), func(b Beat) float64 { return b.Interval }))
-	if p.PeriodCV > irregular || all > irregular {
+	if p.PeriodCV > irregular || all > irregularAll {
 		warn(data.CodeIrregular, "take a span of steady rhythm; an average beat of an irregular one is no beat of the patient",
 			"the intervals vary by %.0f %% in the used beats and by %.0f %% in all (standard deviation over mean)", 100*p.PeriodCV, 100*all)
 	}

@@ -27,10 +27,10 @@ type Case struct {
 
 	DiameterCM *float64 `key:"diameter_cm" value:"D" help:"inner diameter where the velocity was measured"`
 	AngleDeg   *float64 `key:"angle_deg" value:"A" help:"Doppler angle that the velocity is not yet corrected for"`
-	Profile    string   `key:"profile" value:"FACTOR|womersley" amount:"true" help:"mean velocity over measured velocity"`
+	Profile    string   `key:"profile" value:"FACTOR" amount:"true" help:"mean velocity over measured velocity"`
 
 	OutflowPressure *float64          `key:"outflow_pressure" value:"MMHG" help:"pressure that the outflow goes to"`
-	Delay           string            `key:"delay" value:"auto|S" amount:"true" help:"delay of the pressure against the flow"`
+	Delay           string            `key:"delay" value:"S" amount:"true" help:"delay of the pressure behind the flow; positive where pressure is late"`
 	Error           map[string]string `key:"error" value:"WHAT=HALFWIDTH[%]" amount:"true" help:"95 % half-width of a systematic error"`
 
 	Drop []float64 `key:"drop" value:"S" help:"a time inside a beat to leave out, on the file's own clock"`

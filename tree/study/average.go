@@ -47,7 +47,7 @@ func (b Beats) indexTable() casenote.Table {
 	add := func(name, unit string, a beat.Average) {
 		if a.Count > 0 {
 			t.Header = append(t.Header, name+", "+unit)
-			columns = append(columns, indexColumn{beat.Measure(a.Period), b.Ensemble.LeaveOut(len(columns))})
+			columns = append(columns, indexColumn{beat.Measure(a.Period), b.Ensemble.LeaveOut(len(columns)), 1 / a.Period.Rate})
 		}
 	}
 	add("pressure", b.pressureUnit(), b.Pressure)
@@ -68,6 +68,7 @@ func (b Beats) indexTable() casenote.Table {
 type indexColumn struct {
 	measures beat.Measures
 	leftOut  []beat.Measures
+	sample   float64 // s
 }
 
 // estimate is an index with its interval.
@@ -77,6 +78,9 @@ func (c indexColumn) estimate(row indexRow) data.Estimate {
 		values[i] = row.of(m)
 	}
 	interval := beat.JackknifeInterval(row.of(c.measures), values)
+	if row.index == beat.TimeToPeak { // read off to a sample
+		interval.Low, interval.High = interval.Low-c.sample/2, interval.High+c.sample/2
+	}
 	return data.Estimate{Value: row.of(c.measures), Total: interval, Random: interval, Identified: true, Why: c.measures.Remark(row.index)}
 }
 

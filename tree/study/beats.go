@@ -112,6 +112,10 @@ func (b *Beats) signals(widths map[string]float64) (pressure, flow []float64, er
 		pressure = ch.Values
 	}
 	b.FlowInfo = FlowInfo{Channel: -1}
+	settings, err := dopplerSettings(t.Case)
+	if err != nil {
+		return nil, nil, err
+	}
 	ch, ok := t.flowChannel()
 	if !ok {
 		return pressure, nil, nil
@@ -121,52 +125,8 @@ func (b *Beats) signals(widths map[string]float64) (pressure, flow []float64, er
 		return pressure, ch.Values, nil
 	}
 	b.FlowInfo.Channel = t.Selection.Velocity
-	flow, err = b.fromVelocity(ch, widths)
+	flow, err = b.fromVelocity(ch, settings, widths)
 	return pressure, flow, err
-}
-
-// fromVelocity is the flow that a velocity makes with the diameter of the case,
-// or the velocity itself, as flow per unit area, where it has none.
-func (b *Beats) fromVelocity(ch data.Channel, widths map[string]float64) ([]float64, error) {
-	c := b.Intake.Case
-	if c.DiameterCM == nil {
-		b.FlowInfo.PerArea = true
-		if c.AngleDeg != nil || c.Profile != "" {
-			return nil, &ChoiceError{Key: "diameter_cm", What: "an angle or a profile was given without the diameter", Hint: "state the diameter, in cm"}
-		}
-		b.Warnings = append(b.Warnings, data.Warning{
-			Code: data.CodePerArea, Channel: ch.Name,
-			Text: "velocity without a diameter: R, C and Zc are per unit area of the vessel",
-			Cure: "--diameter-cm D, where the velocity was measured",
-		})
-		return ch.Values, nil
-	}
-	k, err := doppler.ParseProfile(c.Profile)
-	if err != nil {
-		return nil, &ChoiceError{Key: "profile", What: err.Error(), Hint: "a factor, mean over measured velocity; leave it out for that of the site"}
-	}
-	if !ch.Unit.Calibrated {
-		return ch.Values, nil // refused with its reason by the fit
-	}
-	settings := doppler.Settings{Diameter: *c.DiameterCM, Factor: k}
-	if c.AngleDeg != nil {
-		settings.Angle = *c.AngleDeg
-	}
-	flow, conversion, err := doppler.ToFlow(ch, settings)
-	if err != nil {
-		key := "diameter_cm"
-		if settings.Diameter > 0 { // and the factor is sound, too
-			key = "angle_deg"
-		}
-		return nil, &ChoiceError{Key: key, What: err.Error(), Hint: "a diameter in cm above 0, an angle from 0 to below 90 degrees"}
-	}
-	b.FlowInfo.Conversion = &conversion
-	b.FlowInfo.ConversionErrors = doppler.Errors{Diameter: widths["diameter"], Angle: widths["angle"]}
-	b.Warnings = append(b.Warnings, conversion.Warnings...)
-	if c.Error["flow"] == "" {
-		b.FlowInfo.Error = conversion.RelativeError(b.FlowInfo.ConversionErrors)
-	}
-	return flow.Values, nil
 }
 
 // chosen are the indices of the channels in use: the pressure first.

@@ -114,6 +114,8 @@ func parseHalfWidth(s string, k errorKind) (float64, error) {
 		return 0, fmt.Errorf("%q is in percent, but this error is in %s", s, k.unit)
 	case percent:
 		return v / 100, nil
+	case k.relative && v >= 1:
+		return 0, fmt.Errorf("%q without %% is %g %%: write %g%% or %g", s, 100*v, v, v/100)
 	}
 	return v, nil
 }

@@ -2,6 +2,8 @@ package study
 
 import (
 	"fmt"
+	"path/filepath"
+	"slices"
 
 	"afterbeat/data"
 	"afterbeat/data/casenote"
@@ -66,9 +68,28 @@ func (s Study) emptyNote(title string) casenote.Note {
 func (s Study) reproduce(command string) []string {
 	c := s.Inputs.Case
 	if c.Exclude != "" {
-		c.Exclude = baseName(c.Exclude) // a note carries no path
+		c.Exclude = beside(c.Recording, c.Exclude)
 	}
 	return c.Command(command, baseName(c.Recording))
+}
+
+// beside is a file as seen from the folder of the recording. Of one that lies
+// elsewhere only its name is left: a note carries no path.
+func beside(recording, file string) string {
+	rel, err := filepath.Rel(filepath.Dir(recording), file)
+	if err != nil || !filepath.IsLocal(rel) {
+		return baseName(file)
+	}
+	return filepath.ToSlash(rel)
+}
+
+// Text renders an output of a study. Where o asks for ASCII, so does the command
+// that reproduces it.
+func Text(n casenote.Note, o casenote.Options) string {
+	if o.ASCII && len(n.Reproduce) > 0 {
+		n.Reproduce = append(slices.Clone(n.Reproduce), "--ascii")
+	}
+	return n.Render(o)
 }
 
 // recordingSection describes the file and its channels.

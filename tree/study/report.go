@@ -9,10 +9,11 @@ import (
 // DelayReport is by how much pressure is later than flow. It is identified
 // where it was stated; estimating it comes from elsewhere.
 type DelayReport struct {
-	Value      Number `json:"value"`
-	Low        Number `json:"low"`
-	High       Number `json:"high"`
-	Identified bool   `json:"identified"`
+	Value      Number  `json:"value"`
+	Low        Number  `json:"low"`
+	High       Number  `json:"high"`
+	Identified bool    `json:"identified"`
+	Reason     *string `json:"reason"`
 }
 
 // BeatReport describes the average beat.

@@ -39,7 +39,7 @@ func (s Study) FitReport() FitReport {
 		r.Fits = append(r.Fits, modelReport(one))
 	}
 	for _, e := range f.Estimators {
-		r.Estimators = append(r.Estimators, EstimatorReport{e.Name, Number(e.R), Number(e.C), Number(e.Tau), reason(e.Reason)})
+		r.Estimators = append(r.Estimators, EstimatorReport{e.Name, Number(e.R), Number(e.C), Number(e.Tau), reason(remark(e))})
 	}
 	if f.Recommended.Model != "" {
 		r.Recommended = &RecommendedReport{f.Recommended.Model, f.Recommended.Basis, f.Recommended.Why}
@@ -63,8 +63,9 @@ func beatReport(b Beats) *BeatReport {
 }
 
 func delayReport(d Delay) DelayReport {
-	r := DelayReport{Value: Number(d.Value), Low: nan, High: nan, Identified: d.Stated}
+	r := DelayReport{Value: Number(d.Value), Low: nan, High: nan, Identified: d.Stated, Reason: reason("not stated, and taken as it is")}
 	if d.Stated {
+		r.Reason = nil
 		r.Low, r.High = Number(d.Value-d.Error), Number(d.Value+d.Error)
 	}
 	return r
@@ -87,7 +88,7 @@ func modelReport(r fitting.Result) ModelReport {
 func (s Study) Report(o casenote.Options) Report {
 	r := Report{
 		FitReport: s.FitReport(), Supported: []StateReport{}, Comparison: []ComparisonReport{},
-		Sensitivity: []SensitivityReport{}, Note: s.Note().Render(o),
+		Sensitivity: []SensitivityReport{}, Note: Text(s.Note(), o),
 	}
 	for _, one := range s.Fit.Sensitivity {
 		r.Sensitivity = append(r.Sensitivity, sensitivityReport(one, s.Fit.Results[s.Fit.Chosen].Model))

@@ -21,7 +21,9 @@ func (s Study) shortSection() casenote.Section {
 		return out
 	}
 	out.Rows = append(out.Rows, s.Beats.measuredRows()...)
+	warnings := casenote.Words("warnings", fmt.Sprintf("%d, listed below with what would cure them", len(s.Warnings())))
 	if s.Fit == nil || s.Fit.Chosen < 0 {
+		out.Rows = append(out.Rows, warnings)
 		return out
 	}
 	r := s.Fit.Results[s.Fit.Chosen]
@@ -30,9 +32,10 @@ func (s Study) shortSection() casenote.Section {
 		out.Rows = append(out.Rows, casenote.Quantity(label, p.Estimate, p.Unit, data.Estimated))
 	}
 	if s.Comparison != nil && s.Comparison.Reason == "" {
-		out.Words = []data.Text{data.Clean("The retained pulse is that of a yardstick without a ventricle, no forecast. Each line has its place below.")}
+		out.Words = []data.Text{data.Clean("The retained pulse is that of a yardstick without a ventricle, no forecast; its interval holds if the posing did. Each line has its place below.")}
 		out.Rows = append(out.Rows, s.Comparison.shortRows()...)
 	}
+	out.Rows = append(out.Rows, warnings)
 	return out
 }
 
@@ -43,7 +46,7 @@ func (b Beats) measuredRows() []casenote.Row {
 	widths, _ := halfWidths(b.Intake.Case) // checked when the beats were cut
 	next := 0
 	if b.Pressure.Count > 0 {
-		c := indexColumn{beat.Measure(b.Pressure.Period), b.Ensemble.LeaveOut(next)}
+		c := indexColumn{beat.Measure(b.Pressure.Period), b.Ensemble.LeaveOut(next), 0}
 		next++
 		scale, offset := widths["pressure-scale"], widths["pressure-offset"]
 		if !b.Intake.Channels[b.Intake.Selection.Pressure].Unit.Calibrated {
@@ -56,7 +59,7 @@ func (b Beats) measuredRows() []casenote.Row {
 			casenote.Quantity("pulse pressure", pulse, b.pressureUnit(), data.Measured))
 	}
 	if b.Flow.Count > 0 && b.flowUnit() == unit.Internal(unit.Flow).Name {
-		c := indexColumn{beat.Measure(b.Flow.Period), b.Ensemble.LeaveOut(next)}
+		c := indexColumn{beat.Measure(b.Flow.Period), b.Ensemble.LeaveOut(next), 0}
 		mean := c.estimate(indexRow{of: func(m beat.Measures) float64 { return litresPerMinute * m.Mean }})
 		rows = append(rows, casenote.Quantity("mean flow", withSystematic(mean, b.FlowInfo.Error, 0), "L/min", data.Measured))
 	}

@@ -12,6 +12,7 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/casefile"
 	"afterbeat/data/casenote"
+	"afterbeat/tree/study"
 	"afterbeat/tui/field"
 )
 
@@ -59,7 +60,7 @@ func (m Model) write() (Model, tea.Cmd) {
 	m.writing = true
 	s, save, options := m.study, m.options.Save, casenote.Options{ASCII: m.theme.ASCII}
 	return m, func() tea.Msg {
-		return savedMsg{name, s.Inputs.Case, save(name, []byte(s.Note().Render(options)))}
+		return savedMsg{name, s.Inputs.Case, save(name, []byte(study.Text(s.Note(), options)))}
 	}
 }
 

@@ -92,7 +92,7 @@ func (m Model) render() (tui.Screen, tea.Cmd) {
 	return m, func() tea.Msg {
 		n := s.Note()
 		lines := func(o casenote.Options) []string {
-			return strings.Split(strings.TrimSuffix(n.Render(o), "\n"), "\n")
+			return strings.Split(strings.TrimSuffix(study.Text(n, o), "\n"), "\n")
 		}
 		return notedMsg{request: request, noted: noted{lines(casenote.Options{}), lines(casenote.Options{ASCII: true})}}
 	}

@@ -60,7 +60,7 @@ func TestGolden(t *testing.T) {
 func TestItIsTheNoteThatIsSaved(t *testing.T) {
 	s := computed(t)
 	for _, theme := range []tui.Theme{{}, {ASCII: true}} {
-		want := strings.Split(strings.TrimSuffix(s.Note().Render(casenote.Options{ASCII: theme.ASCII}), "\n"), "\n")
+		want := strings.Split(strings.TrimSuffix(study.Text(s.Note(), casenote.Options{ASCII: theme.ASCII}), "\n"), "\n")
 		b := screentest.New(note.New(), s, tui.Area{Width: 200, Height: len(want) + 1}, theme)
 		if got := body(b); !slices.Equal(got, want) {
 			t.Errorf("%d lines, want %d", len(got), len(want))
@@ -187,7 +187,7 @@ func TestRemark(t *testing.T) {
 func TestSearch(t *testing.T) {
 	s := computed(t)
 	var want []int
-	for i, line := range strings.Split(s.Note().Render(casenote.Options{}), "\n") {
+	for i, line := range strings.Split(study.Text(s.Note(), casenote.Options{}), "\n") {
 		if strings.Contains(strings.ToLower(line), "compliance") {
 			want = append(want, i)
 		}
