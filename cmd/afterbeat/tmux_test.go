@@ -24,6 +24,7 @@ type pane struct {
 // newPane opens a shell in an empty folder; the program is on its path.
 func newPane(t *testing.T, width, height int, env ...string) *pane {
 	t.Helper()
+	t.Parallel()
 	program := built(t)
 	if _, err := exec.LookPath("tmux"); err != nil {
 		t.Skip("tmux is not installed")
@@ -39,13 +40,14 @@ func newPane(t *testing.T, width, height int, env ...string) *pane {
 	})
 	args := []string{"-f", "/dev/null", "new-session", "-d", "-x", fmt.Sprint(width), "-y", fmt.Sprint(height), "-c", p.folder}
 	for _, e := range append([]string{
-		"LANG=C.UTF-8", "LC_ALL=", "NO_COLOR=", "HOME=" + p.folder, "XDG_STATE_HOME=" + p.state, "PS1=ready> ",
+		"LANG=C.UTF-8", "LC_ALL=", "NO_COLOR=", "HOME=" + p.folder, "XDG_STATE_HOME=" + p.state,
 		"PATH=" + filepath.Dir(program) + ":" + os.Getenv("PATH"),
 	}, env...) {
 		args = append(args, "-e", e)
 	}
 	p.tmux(append(args, "env TERM=tmux-256color sh -i")...)
-	p.wait("ready> ")
+	p.run("PS1=re'ady> '")
+	p.wait("ready>")
 	return p
 }
 
@@ -106,6 +108,9 @@ func (p *pane) open(line string) {
 // code.
 func (p *pane) back() string {
 	p.t.Helper()
+	p.until("the program goes on", func(shown string) bool {
+		return strings.HasSuffix(strings.TrimSpace(shown), "\nready>")
+	})
 	p.run("echo code=$?.")
 	p.until("the program goes on", func(shown string) bool { return regexp.MustCompile(`code=\d+\.`).MatchString(shown) })
 	if flags := strings.TrimSpace(p.tmux("display-message", "-p", "#{alternate_on} #{cursor_flag}")); flags != "0 1" {
@@ -289,7 +294,7 @@ func TestTmuxToTheShellAndBack(t *testing.T) {
 	p.wait("[2 Beats]")
 	p.keys("C-z")
 	p.until("no shell", func(shown string) bool {
-		return !strings.Contains(shown, "[2 Beats]") && strings.Contains(shown, "ready> ")
+		return !strings.Contains(shown, "[2 Beats]") && strings.Contains(shown, "ready>")
 	})
 	p.run("fg")
 	p.wait("[2 Beats]")
@@ -322,7 +327,7 @@ func TestTmuxShare(t *testing.T) {
 	p.keys("Down", "Down")
 	p.wait("share 0.4")
 	p.keys("q")
-	p.wait("ready> ")
+	p.back()
 }
 
 // TestTmuxLongRecording opens ten minutes at 125 Hz, of a patient under
