@@ -4,6 +4,7 @@ import (
 	"context"
 	"math"
 	"runtime"
+	"slices"
 	"sync"
 	"sync/atomic"
 
@@ -125,8 +126,12 @@ func (w *worker) pose(half int, posing Posing, share float64) {
 	}
 }
 
-// measure takes the signal of one half.
+// measure takes the signal of one half. A steady flow meets a steady pressure:
+// what the transform leaves there is rounding of the other half.
 func (w *worker) measure(half int, d draw) signal {
+	if !slices.ContainsFunc(w.root[half], func(q float64) bool { return q != 0 }) {
+		clear(w.pressure[half])
+	}
 	first := w.first[half]
 	return measure(w.pressure[half], w.root[half], d.pv+d.load.Resistance()*first, first)
 }

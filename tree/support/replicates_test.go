@@ -52,6 +52,27 @@ func TestReplicatesAreStates(t *testing.T) {
 	}
 }
 
+// A steady flow meets a steady pressure, to the last digit, though another state
+// travels through the transform with it.
+func TestASteadyStateHasNoPulse(t *testing.T) {
+	set := scattered(t, 30, 160)
+	rows, err := push(context.Background(), len(set), from(set), LateValvePosing, []float64{0.5, 1})
+	if err != nil {
+		t.Fatal(err)
+	}
+	rows2, err := push(context.Background(), len(set), from(set), LateValvePosing, []float64{0.5, 0.7, 1})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i := range rows {
+		for _, row := range []numbers{rows[i][2], rows2[i][3]} {
+			if row[pulsePressure] != 0 || row[flowSwing] != 0 {
+				t.Errorf("replicate %d: pulse pressure %v, swing %v", i, row[pulsePressure], row[flowSwing])
+			}
+		}
+	}
+}
+
 func TestRowsDoNotDependOnCores(t *testing.T) {
 	set := scattered(t, 40, 60)
 	defer runtime.GOMAXPROCS(runtime.GOMAXPROCS(1))
