@@ -1,6 +1,7 @@
 package beat
 
 import (
+	"math"
 	"strings"
 	"testing"
 
@@ -85,6 +86,14 @@ func TestWarnings(t *testing.T) {
 				t.Errorf("%+v", w)
 			}
 		}
+	}
+	// With one used beat its own scatter does not exist, that of all beats does.
+	one := pulse(4, 3, math.NaN())
+	for i := range one.Beats {
+		one.Beats[i].Interval = 0.5 + 0.5*float64(i%2)
+	}
+	if got := one.Warnings(channelName); !strings.HasPrefix(got[2].Text, "the intervals vary by 38 % in all (") {
+		t.Errorf("one used beat: %+v", got)
 	}
 	if got := Tally(pulse(30, 11, 0).Beats); got != "11 shape" {
 		t.Errorf("tally %q", got)

@@ -2,6 +2,7 @@ package beat
 
 import (
 	"fmt"
+	"math"
 	"slices"
 
 	"afterbeat/data"
@@ -35,8 +36,12 @@ func (p Pulse) Warnings(channel data.Text) []data.Warning {
 	// Of all beats too: where the rhythm is worst, the used ones are the regular ones.
 	all := variation(each(whole(p.Beats), func(b Beat) float64 { return b.Interval }))
 	if p.PeriodCV > irregular || all > irregularAll {
+		spread := fmt.Sprintf("%.0f %% in all", 100*all)
+		if !math.IsNaN(p.PeriodCV) { // two used beats at least
+			spread = fmt.Sprintf("%.0f %% in the used beats and by %s", 100*p.PeriodCV, spread)
+		}
 		warn(data.CodeIrregular, "take a span of steady rhythm; an average beat of an irregular one is no beat of the patient",
-			"the intervals vary by %.0f %% in the used beats and by %.0f %% in all (standard deviation over mean)", 100*p.PeriodCV, 100*all)
+			"the intervals vary by %s (standard deviation over mean)", spread)
 	}
 	return out
 }
