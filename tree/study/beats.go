@@ -2,6 +2,7 @@ package study
 
 import (
 	"context"
+	"fmt"
 	"math"
 	"slices"
 
@@ -89,8 +90,14 @@ func pulse(ch data.Channel, rate float64, oneBeat bool) beat.Pulse {
 	return beat.Find(ch.Values, rate, ch.Quantity)
 }
 
+// leastSamples is how few samples of a period a fit takes.
+const leastSamples = 4
+
 // onePulse takes all of a channel as one beat.
 func onePulse(ch data.Channel, rate float64) beat.Pulse {
+	if n := len(ch.Values); n < leastSamples {
+		return beat.Pulse{Reason: fmt.Sprintf("one period of %d samples, and at least %d are needed", n, leastSamples)}
+	}
 	if slices.ContainsFunc(ch.Values, math.IsNaN) {
 		return beat.Pulse{Reason: "one period needs every sample, and some are missing"}
 	}
