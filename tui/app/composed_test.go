@@ -57,7 +57,8 @@ func TestNoKeyHasTwoMeanings(t *testing.T) {
 				continue
 			}
 			of := map[string]string{}
-			for _, b := range slices.Concat(d.m.screens[d.m.open].Keys(), d.m.everywhere()) {
+			most, others := d.m.everywhere()
+			for _, b := range slices.Concat(d.m.screens[d.m.open].Keys(), most, others) {
 				if !b.Enabled() {
 					continue
 				}

@@ -135,9 +135,12 @@ func (m Model) keysNow() (always, more []key.Binding) {
 	case m.small():
 		return []key.Binding{keys.quit}, nil
 	}
-	everywhere := m.everywhere()
-	n := len(everywhere) - 4 // stage, save, help, quit
-	return everywhere[n:], append(m.screens[m.open].Keys(), everywhere[:n]...)
+	most, others := m.everywhere()
+	more = append(m.screens[m.open].Keys(), others...)
+	if len(m.errors) > 0 {
+		more = append([]key.Binding{keys.answer}, more...)
+	}
+	return most, more
 }
 
 // listed is as many keys with their words as fit into width before end, which
@@ -182,9 +185,9 @@ func (m Model) smallRows() []string {
 	}
 	rows = append(rows, m.errorRows(m.size.Width)...)
 	if m.naming || m.leaving == asks || m.offer != nil {
-		words(m.status(max(m.size.Width, 40)))
+		words(m.status(leastWidth * 2))
 	}
-	words(m.keyRow(max(m.size.Width, 40)))
+	words(m.keyRow(leastWidth * 2)) // wrapped, not cut
 	return rows
 }
 

@@ -16,7 +16,8 @@ func (m Model) helpRows() []string {
 	rows := []string{fmt.Sprintf("Keys of %d %s", m.open, m.open)}
 	rows = append(rows, keyRows(m.screens[m.open].Keys(), m.theme)...)
 	rows = append(rows, "", "Keys on every stage")
-	rows = append(rows, keyRows(m.everywhere(), m.theme)...)
+	most, others := m.everywhere()
+	rows = append(rows, keyRows(append(most, others...), m.theme)...)
 	rows = append(rows, m.paragraph("The last message", m.said.String())...)
 	for _, s := range tui.Stages() {
 		rows = append(rows, m.paragraph(fmt.Sprintf("Why (%d %s) is not possible yet", s, s), s.Missing(m.study))...)

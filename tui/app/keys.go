@@ -38,7 +38,7 @@ var keys = keyMap{
 	interrupt: key.NewBinding(key.WithKeys("ctrl+c"), key.WithHelp("ctrl+c", "leave at once")),
 	suspend:   key.NewBinding(key.WithKeys("ctrl+z"), key.WithHelp("ctrl+z", "to the shell")),
 	cancel:    key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "stop computing")),
-	answer:    key.NewBinding(key.WithKeys("esc", "enter"), key.WithHelp("esc", "error read")),
+	answer:    key.NewBinding(key.WithKeys("esc", "enter"), key.WithHelp("esc", "close error")),
 	confirm:   key.NewBinding(key.WithKeys("enter"), key.WithHelp("enter", "save")),
 	back:      key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "back")),
 	first:     key.NewBinding(key.WithKeys("s"), key.WithHelp("s", "save the note first")),
@@ -77,19 +77,14 @@ func (k keyMap) helpKeys() []key.Binding {
 	return []key.Binding{k.close, k.down, k.up, k.pageDown, k.pageUp, k.top, k.bottom, k.interrupt}
 }
 
-// everywhere are the keys that the root answers on every stage.
-func (m Model) everywhere() []key.Binding {
+// everywhere are the keys that the root answers on every stage now: those used
+// most, and the others.
+func (m Model) everywhere() (most, others []key.Binding) {
 	undo, redo, cancel, suspend := keys.undo, keys.redo, keys.cancel, keys.suspend
 	undo.SetEnabled(len(m.past) > 0)
 	redo.SetEnabled(len(m.future) > 0)
 	cancel.SetEnabled(m.job.running)
 	suspend.SetEnabled(!m.leader)
-	all := []key.Binding{
-		cancel, undo, redo, keys.next, keys.previous, keys.ascii, keys.redraw, suspend, keys.interrupt,
-		keys.stages(), keys.save, keys.help, keys.quit,
-	}
-	if len(m.errors) > 0 {
-		all = append([]key.Binding{keys.answer}, all...)
-	}
-	return all
+	return []key.Binding{keys.stages(), keys.save, keys.help, keys.quit},
+		[]key.Binding{cancel, undo, redo, keys.next, keys.previous, keys.ascii, keys.redraw, suspend, keys.interrupt}
 }

@@ -2,6 +2,7 @@ package app
 
 import (
 	"context"
+	"slices"
 	"strings"
 	"testing"
 	"time"
@@ -411,7 +412,8 @@ func TestAFaultIsAPlaceWithoutAValue(t *testing.T) {
 func TestHelpIsMadeFromTheKeys(t *testing.T) {
 	d := started(t, nil)
 	d.keys("2 d ?")
-	for _, b := range append(d.m.everywhere(), d.screen(tui.Beats).Keys()...) {
+	most, others := d.m.everywhere()
+	for _, b := range slices.Concat(most, others, d.screen(tui.Beats).Keys()) {
 		if b.Enabled() {
 			d.send(keyOf("g"))
 			found := false

@@ -50,7 +50,7 @@ func (m Model) status(width int) string {
 	case m.naming:
 		return m.nameRow(width)
 	case m.leaving == asks:
-		return "Choices since the last saved note: s save a note first, y discard them, esc stay"
+		return "Unsaved choices: s save a note first, y discard them, esc stay"
 	case m.offer != nil && !m.typing():
 		return fmt.Sprintf("Choices of an interrupted run of %s: r resume, esc ignore", m.offer.when.Format("2 Jan 15:04"))
 	}
