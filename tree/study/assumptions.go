@@ -11,7 +11,9 @@ import (
 // the systematic errors that the total intervals carry.
 func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 	s := casenote.Section{Title: "Given and assumed"}
-	hasFlow, velocity := b.FlowInfo.Channel >= 0, b.FlowInfo.Conversion != nil
+	hasFlow := b.FlowInfo.Channel >= 0
+	// An error of flow that was given is all of it, those of its parts included.
+	parts := b.FlowInfo.Conversion != nil && b.Intake.Case.Error["flow"] == ""
 	delay := data.Estimate{Value: b.Delay.Value, Total: around(b.Delay.Value, b.Delay.Error), Random: data.NoInterval(), Identified: true}
 	if hasFlow {
 		s.Rows = append(s.Rows, casenote.Quantity("delay of pressure", delay, "s", origin(b.Delay.Stated)))
@@ -31,7 +33,7 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 				continue
 			}
 		case "diameter", "angle":
-			if !velocity {
+			if !parts {
 				continue
 			}
 		}

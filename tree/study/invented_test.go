@@ -119,7 +119,7 @@ const (
 
 func halfFlow(at float64) float64 {
 	if t := phase(at); t < halfTs {
-		return halfQm * math.Sin(math.Pi*t/halfTs)
+		return max(0, halfQm*math.Sin(math.Pi*t/halfTs))
 	}
 	return 0
 }

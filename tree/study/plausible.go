@@ -29,7 +29,7 @@ func implausible(b Beats) []data.Warning {
 		ch := b.Intake.Channels[i]
 		w, tried, ok := expected(ch)
 		mean := b.Pulses[i].Mean
-		if !ok || !b.Pulses[i].Found || w.holds(mean) {
+		if !ok || !b.Pulses[i].Found || math.IsNaN(mean) || w.holds(mean) { // NaN: no beat is used
 			continue
 		}
 		warning := data.Warning{

@@ -2,6 +2,7 @@ package study
 
 import (
 	"math/cmplx"
+	"slices"
 
 	"afterbeat/data"
 )
@@ -9,6 +10,9 @@ import (
 // later is one period moved later by a number of samples, which need not be
 // whole: its trigonometric interpolation, read at j - shift.
 func later(samples []float64, shift float64) []float64 {
+	if shift == 0 {
+		return slices.Clone(samples)
+	}
 	p := data.Period{Samples: samples, Rate: 1}
 	x := p.Spectrum()
 	for k := range x {
