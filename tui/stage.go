@@ -30,13 +30,13 @@ func (s Stage) Missing(st study.Study) string {
 	case s == Tree:
 		return "the tree of arteries comes with a later version; the fit is a lumped load"
 	case s == Intake && st.Inputs.Recording == nil:
-		return "the recording is still being read"
+		return "the recording has not been read yet"
 	case s == Beats && st.Beats == nil:
-		return "the beats are still being looked for"
+		return "the beats have not been looked for yet"
 	case s == Fit && st.Fit == nil:
-		return "the fit is still being computed"
+		return "the fit has not been computed yet"
 	case (s == Support || s == Note) && st.Comparison == nil:
-		return "native and supported state are still being computed"
+		return "native and supported state have not been computed yet"
 	}
 	return ""
 }

@@ -50,7 +50,7 @@ func runRoot(ctx context.Context, s stream, o *options, f *screenFlags, args []s
 	if len(args) > 0 {
 		path = args[0]
 	}
-	with, locate, err := screenOptions(path, s, o, f)
+	with, locate, err := screenOptions(ctx, path, s, o, f)
 	if err != nil {
 		return err
 	}
@@ -98,8 +98,8 @@ func openTerminal(s stream) (keys, out *os.File, ok bool) {
 
 // screenOptions opens what path names; locate tells where in its files an error
 // of a choice stands.
-func screenOptions(path string, s stream, o *options, f *screenFlags) (with app.Options, locate func(error) error, err error) {
-	from, err := openPath(path, s.in)
+func screenOptions(ctx context.Context, path string, s stream, o *options, f *screenFlags) (with app.Options, locate func(error) error, err error) {
+	from, err := openPath(path, interruptible{ctx, s.in})
 	if err != nil {
 		return with, nil, err
 	}

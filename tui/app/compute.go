@@ -156,6 +156,8 @@ func (m Model) broke(err error) (Model, tea.Cmd) {
 func (m Model) settle() Model {
 	switch s := m.study; {
 	case m.settled:
+	case s.Beats == nil && s.Intake != nil && s.Intake.Ambiguous != nil:
+		return m.start(tui.Intake)
 	case s.Fit != nil:
 		if m.said == (data.Text{}) {
 			m.said = assumed(s)

@@ -23,6 +23,11 @@ func (m Model) press(msg tea.KeyMsg) (Model, tea.Cmd) {
 	case msg.Paste:
 		m.said = data.Clean("pasted text goes into text fields only")
 		return m, nil
+	case msg.Alt: // esc and a key that came in one read: no key has alt
+		m, first := m.press(tea.KeyMsg{Type: tea.KeyEsc})
+		msg.Alt = false
+		m, then := m.press(msg)
+		return m, tea.Batch(first, then)
 	case msg.Type == tea.KeyRunes && len(msg.Runes) > 1:
 		return m.burst(msg.Runes)
 	}

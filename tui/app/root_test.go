@@ -151,6 +151,15 @@ func TestBurstsAndPastes(t *testing.T) {
 	}
 }
 
+func TestEscAndAKeyInOneRead(t *testing.T) {
+	d := started(t, nil)
+	d.keys("e ?")
+	d.send(tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("1"), Alt: true})
+	if d.m.helping || d.m.open != tui.Intake || len(d.m.errors) != 1 {
+		t.Errorf("helping %v, on %v, %d errors", d.m.helping, d.m.open, len(d.m.errors))
+	}
+}
+
 func TestUndoAndRedo(t *testing.T) {
 	d := started(t, nil)
 	first := d.m.present

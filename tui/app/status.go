@@ -22,8 +22,9 @@ const most = 9
 // noticeOf makes an error and its hint safe to show.
 func noticeOf(err error) notice {
 	var (
-		file   *data.FileError
-		choice *study.ChoiceError
+		file      *data.FileError
+		choice    *study.ChoiceError
+		ambiguous *data.AmbiguousError
 	)
 	n := notice{text: data.Clean(err.Error())}
 	switch {
@@ -31,6 +32,8 @@ func noticeOf(err error) notice {
 		n.hint = data.Clean(file.Hint)
 	case errors.As(err, &choice):
 		n.hint = data.Clean(choice.Hint)
+	case errors.As(err, &ambiguous):
+		n.hint = data.Clean("on 1 Intake, enter uses the channel at the cursor")
 	}
 	return n
 }

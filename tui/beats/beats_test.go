@@ -402,7 +402,7 @@ func TestEmptyStatesSayWhyAndWhatCuresThem(t *testing.T) {
 		"flat":    {"No average beat: no pulse in abp_mmHg: flat.", "What would cure it: on the intake (1)"},
 		"none":    {"No average beat", "What would cure it: a recording of arterial pressure"},
 		"unclear": {"No average beat: the pressure could be abp_a_mmHg or abp_b_mmHg", "What would cure it: "},
-		"nothing": {"The beats are still being looked for."},
+		"nothing": {"The beats have not been looked for yet."},
 	} {
 		v := screentest.New(New(), all[name], tui.Area{Width: 200, Height: 50}, tui.Theme{}).View()
 		for _, w := range want {

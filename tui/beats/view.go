@@ -93,7 +93,7 @@ func (m Model) View() string {
 	case m.list.Open():
 		return m.list.View()
 	case m.ready.number == 0:
-		return layout.Fit([]string{"The beats are still being looked for."}, m.area)
+		return layout.Fit([]string{"The beats have not been looked for yet."}, m.area)
 	}
 	s := m.divide()
 	var lines []string

@@ -63,7 +63,7 @@ func (m Model) View() string {
 	case m.list.Open():
 		return m.list.View()
 	case m.answered == 0 && m.inputs.Recording == nil:
-		return layout.Fit([]string{"The recording is still being read."}, m.area)
+		return layout.Fit([]string{"The recording has not been read yet."}, m.area)
 	case m.answered == 0:
 		return layout.Fit([]string{"The channels are being made ready."}, m.area)
 	case len(m.ready.channels) == 0:
