@@ -42,6 +42,8 @@ func TestChoicesThatMakeNoSense(t *testing.T) {
 		{"delay", "--delay", "seconds", func(c *casefile.Case) { c.Delay = "late" }},
 		{"error.flow", "--error", "--error flow=10%", func(c *casefile.Case) { c.Error = map[string]string{"flow": "-1%"} }},
 		{"error.delay", "--error", "--error delay=0.01 (s)", func(c *casefile.Case) { c.Error = map[string]string{"delay": "5%"} }},
+		{"error.flow", "--error", "--error flow=10%", func(c *casefile.Case) { c.Error = map[string]string{"flow": "10"} }},
+		{"outflow_pressure", "--outflow-pressure", "venous", func(c *casefile.Case) { c.OutflowPressure = ptr(77.0) }},
 		{"error.filling-slope", "--error", "flow, pressure-scale", func(c *casefile.Case) { c.Error = map[string]string{"filling-slope": "5"} }},
 		{"model", "--model", "wk2, wk3", func(c *casefile.Case) { c.Model = "wk9" }},
 		{"replicates", "--replicates", "1000", func(c *casefile.Case) { c.Replicates = ptr(0) }},

@@ -37,23 +37,19 @@ func TestExcerptOfTheBench(t *testing.T) {
 // is good for.
 func TestExcerptsGoThroughTheStudy(t *testing.T) {
 	for name, c := range map[string]struct {
-		change             func(*casefile.Case)
 		fits               int
 		reason, comparison string
 	}{
-		"tcd_6s.csv":              {nil, 2, "", "per unit area"},
-		"bench_breathing_10s.csv": {nil, 2, "", ""},
-		"icu_low_30s.csv":         {nil, 0, "no time constant either", "nothing was fitted"},
-		"icu_premature_30s.csv":   {nil, 0, "", "nothing was fitted"},
-		"icu_pap_16s.csv":         {nil, 0, "", "nothing was fitted"},
-		"pig_20s.csv":             {nil, 0, "without a scale", "nothing was fitted"},
-		"beataveraged_60s.csv":    {func(c *casefile.Case) { c.Velocity = "mcav_left_cm_s" }, 0, "no pulse in abp_mmHg", "nothing was fitted"},
+		"tcd_6s.csv":              {2, "", "per unit area"},
+		"bench_breathing_10s.csv": {2, "", ""},
+		"icu_low_30s.csv":         {0, "no time constant either", "nothing was fitted"},
+		"icu_premature_30s.csv":   {0, "", "nothing was fitted"},
+		"icu_pap_16s.csv":         {0, "", "nothing was fitted"},
+		"pig_20s.csv":             {0, "without a scale", "nothing was fitted"},
+		"beataveraged_60s.csv":    {0, "no pulse in abp_mmHg", "nothing was fitted"},
 	} {
 		t.Run(name, func(t *testing.T) {
 			choices := casefile.Case{Recording: name, Replicates: ptr(20), Share: []float64{0.5}}
-			if c.change != nil {
-				c.change(&choices)
-			}
 			s := whole(t, choices, folder{name: recordingIn(t, excerpts, name)})
 			reason := ""
 			if r := s.Reason(); r != nil {

@@ -18,20 +18,21 @@ func wandering() func(float64) float64 {
 	}
 }
 
-// What a recording allows, by what is in it: the reason where it allows no
-// estimate, the reason where it allows no comparison, and the warning that
-// belongs to it.
-func TestWhatTheDataAllow(t *testing.T) {
+// allowance is what a recording allows.
+type allowance struct {
+	columns    []column
+	change     func(*casefile.Case)
+	fits       int
+	estimates  int
+	reason     string // "" where something was estimated
+	comparison string // "" where there is one
+	code       data.Code
+}
+
+// allowances are those of recordings by what is in them.
+func allowances() map[string]allowance {
 	velocity := column{"lvot_velocity_cm_s", noisy(scaled(halfFlow, 0.25, 0), 0.2)}
-	for name, c := range map[string]struct {
-		columns    []column
-		change     func(*casefile.Case)
-		fits       int
-		estimates  int
-		reason     string // "" where something was estimated
-		comparison string // "" where there is one
-		code       data.Code
-	}{
+	return map[string]allowance{
 		"pressure and flow": {[]column{aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")}, nil, 2, 1, "", "", data.CodeDelay},
 		"pressure and velocity without a diameter": {
 			[]column{aortic("ao_mmHg"), velocity}, nil, 2, 1, "", "state the diameter", data.CodePerArea,
@@ -64,12 +65,23 @@ func TestWhatTheDataAllow(t *testing.T) {
 			func(c *casefile.Case) { c.Invert = []string{"ao_flow"} },
 			0, 0, "the mean flow is -87.5 mL/s, not positive; if the channel is upside down, give --invert ao_flow_mL_s", "nothing was fitted", data.CodeNegativeFlow,
 		},
+		"a pump at work already": {
+			[]column{aortic("ao_mmHg"), {"ao_flow_mL_s", noisy(scaled(halfFlow, 0.3, 60), 0.5)}},
+			nil,
+			2, 1, "", "the flow at the root never stops (it falls to 6", "",
+		},
 		"a flat pressure": {[]column{{"ao_mmHg", steady(80)}, outflowTo("ao_flow_mL_s")}, nil, 0, 0, "no pulse in ao_mmHg", "nothing was fitted", ""},
 		"a pressure that wanders": {
 			[]column{{"ao_mmHg", wandering()}, outflowTo("ao_flow_mL_s")}, nil, 0, 0, "no pulse in ao_mmHg", "nothing was fitted", "",
 		},
 		"no artery": {[]column{{"ecg_mV", noisy(halfFlow, 1)}, {"pap_mmHg", noisy(halfPressure, 1)}}, nil, 0, 0, "no channel is a pressure, a flow or a velocity", "nothing was fitted", ""},
-	} {
+	}
+}
+
+// What a recording allows: the reason where it allows no estimate, the reason
+// where it allows no comparison, and the warning that belongs to it.
+func TestWhatTheDataAllow(t *testing.T) {
+	for name, c := range allowances() {
 		t.Run(name, func(t *testing.T) {
 			choices := inventedCase()
 			if c.change != nil {
