@@ -2,6 +2,7 @@ package study
 
 import (
 	"math"
+	"regexp"
 	"strings"
 	"testing"
 
@@ -105,6 +106,37 @@ func TestWhatTheDataAllow(t *testing.T) {
 				t.Errorf("no warning %s among %v", c.code, s.Warnings())
 			}
 		})
+	}
+}
+
+// What cures a warning or a reason is a flag that there is.
+func TestCuresNameFlagsThatThereAre(t *testing.T) {
+	flags := map[string]bool{}
+	for _, k := range casefile.Keys() {
+		flags["--"+k.Flag] = true
+	}
+	named := regexp.MustCompile(`--[a-z][a-z-]*`)
+	seen := 0
+	for name, c := range allowances() {
+		choices := inventedCase()
+		if c.change != nil {
+			c.change(&choices)
+		}
+		f := invented(c.columns...)
+		f["a.csv"] = emptied(f["a.csv"], 2000, 2300)
+		s := whole(t, choices, f)
+		said := s.Fit.Reason + "\n" + s.Comparison.Reason + "\n"
+		for _, w := range s.Warnings() {
+			said += w.Text + w.Cure + "\n"
+		}
+		for _, flag := range named.FindAllString(said, -1) {
+			if seen++; !flags[flag] {
+				t.Errorf("%s: there is no flag %s", name, flag)
+			}
+		}
+	}
+	if seen < 20 {
+		t.Errorf("%d flags were named: too few to have checked anything", seen)
 	}
 }
 
