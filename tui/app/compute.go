@@ -139,13 +139,18 @@ func (m Model) further() (Model, tea.Cmd) {
 }
 
 // broke ends the computing with an error, which a person can do something about
-// at the first stage.
+// at the first stage. That columns are ambiguous is no error there, but a
+// question that the first stage asks.
 func (m Model) broke(err error) (Model, tea.Cmd) {
 	m = m.halt()
 	if errors.Is(err, context.Canceled) {
 		return m, nil
 	}
 	m = m.start(tui.Intake)
+	if ambiguous := (*data.AmbiguousError)(nil); errors.As(err, &ambiguous) && ambiguous.Role != "" {
+		m.said = data.Clean("to settle first, on 1 Intake: what is the " + ambiguous.Role)
+		return m, nil
+	}
 	n := noticeOf(err)
 	n.computing = true
 	return m.complain(n), nil

@@ -58,7 +58,10 @@ func TestStartsWhereAPersonIsNeeded(t *testing.T) {
 		{"a choice", func(_ context.Context, s study.Study) (study.Study, error) {
 			s.Intake = &study.Intake{}
 			return s, &data.AmbiguousError{Role: "pressure", Names: []data.Text{data.Clean("a"), data.Clean("b\x1b")}, Flag: "--pressure"}
-		}, "[1 Intake]", `Error: the pressure could be a or b\x1b`},
+		}, "[1 Intake]", "to settle first, on 1 Intake: what is the pressure"},
+		{"a choice that makes no sense", func(_ context.Context, s study.Study) (study.Study, error) {
+			return s, &study.ChoiceError{Key: "site.q", What: "\x1b is no site"}
+		}, "[1 Intake]", `Error: --site q: \x1b is no site`},
 		{"no pulse", func(ctx context.Context, s study.Study) (study.Study, error) {
 			s, err := revealed(ctx, s)
 			if s.Beats != nil && s.Fit == nil {

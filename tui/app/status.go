@@ -22,9 +22,8 @@ const most = 9
 // noticeOf makes an error and its hint safe to show.
 func noticeOf(err error) notice {
 	var (
-		file      *data.FileError
-		choice    *study.ChoiceError
-		ambiguous *data.AmbiguousError
+		file   *data.FileError
+		choice *study.ChoiceError
 	)
 	n := notice{text: data.Clean(err.Error())}
 	switch {
@@ -32,8 +31,6 @@ func noticeOf(err error) notice {
 		n.hint = data.Clean(file.Hint)
 	case errors.As(err, &choice):
 		n.hint = data.Clean(choice.Hint)
-	case errors.As(err, &ambiguous):
-		n.hint = data.Clean("on 1 Intake, enter uses the channel at the cursor")
 	}
 	return n
 }
