@@ -2,11 +2,9 @@ package study
 
 import (
 	"bytes"
-	"errors"
 	"fmt"
 	"math"
 	"slices"
-	"strings"
 
 	"github.com/pelletier/go-toml/v2"
 
@@ -35,24 +33,9 @@ func ReadLoadSpec(name string, content []byte) (LoadSpec, error) {
 	var spec LoadSpec
 	d := toml.NewDecoder(bytes.NewReader(content)).DisallowUnknownFields()
 	if err := d.Decode(&spec); err != nil {
-		return spec, tomlError(name, err)
+		return spec, tomlError(name, err, "model", "R", "C", "Zc", "L", "Pv", "inflow", "posing", "shares")
 	}
 	return spec, nil
-}
-
-// tomlError turns an error of the TOML library into one with file and line.
-func tomlError(name string, err error) error {
-	var strict *toml.StrictMissingError
-	if errors.As(err, &strict) {
-		line, _ := strict.Errors[0].Position()
-		return &data.FileError{File: name, Line: line, What: fmt.Sprintf("unknown key %q", strings.Join(strict.Errors[0].Key(), "."))}
-	}
-	var decode *toml.DecodeError
-	if errors.As(err, &decode) {
-		line, _ := decode.Position()
-		return &data.FileError{File: name, Line: line, What: decode.Error()}
-	}
-	return &data.FileError{File: name, What: err.Error()}
 }
 
 // Load is the load that the spec describes. file names it in errors.

@@ -62,7 +62,7 @@ func isShare(s float64) bool { return s >= 0 && s <= 1 }
 // check tells why a flow cannot be posed about: an error for a person to read.
 func check(q data.Period, posing Posing, shares []float64) error {
 	if posing != ScaledPosing && posing != LateValvePosing {
-		return fmt.Errorf("no posing %q with a share: known are %v", posing, Posings())
+		return fmt.Errorf("%q is no posing with a share: there are %s and %s", posing, ScaledPosing, LateValvePosing)
 	}
 	for _, s := range shares {
 		if !isShare(s) {
