@@ -23,14 +23,20 @@ import (
 
 // composed is a driver over the screens of the program and the demo case,
 // whose computing is real where compute is set.
-func composed(t testing.TB, compute bool) *driver {
+func composed(t testing.TB, compute bool, more ...func(*Options)) *driver {
 	t.Helper()
 	d := newDriver(t, func(o *Options) {
 		o.Screens = map[tui.Stage]tui.Screen{
 			tui.Intake: intake.New(), tui.Beats: beats.New(), tui.Fit: fit.New(), tui.Support: support.New(), tui.Note: note.New(),
 		}
+		if !compute {
+			return
+		}
 		o.Load = func(_ context.Context, c casefile.Case) (study.Inputs, error) {
 			return study.Read(c, func(name string) ([]byte, error) { return fs.ReadFile(demo.Files(), name) })
+		}
+		for _, change := range more {
+			change(o)
 		}
 	})
 	if compute {
