@@ -5,6 +5,7 @@ import (
 	"strings"
 	"testing"
 
+	"afterbeat/data"
 	"afterbeat/data/casefile"
 )
 
@@ -30,6 +31,20 @@ func TestExcerptOfTheBench(t *testing.T) {
 	}
 	if len(s.Fit.Results) != len(want) || s.Comparison.Reason != "" {
 		t.Errorf("%d fits, no comparison: %q", len(s.Fit.Results), s.Comparison.Reason)
+	}
+}
+
+// Finger pressure with middle-cerebral velocity is the load of that bed: named
+// after it, and of no use for a pump's share, with a diameter too.
+func TestExcerptOfACerebralLoadIsRegional(t *testing.T) {
+	const name = "tcd_6s.csv"
+	s := whole(t, casefile.Case{Recording: name, Replicates: ptr(20), DiameterCM: ptr(0.3)}, folder{name: recordingIn(t, excerpts, name)})
+	report := s.Report(defaults)
+	if len(report.Fits) != 2 || report.Fits[0].Site != data.SiteMCA || !strings.Contains(s.Comparison.Reason, "that of one bed (mca)") || report.Native != nil {
+		t.Errorf("%d fits, comparison: %q", len(report.Fits), s.Comparison.Reason)
+	}
+	if _, ok := warned(s, data.CodeRegional); !ok {
+		t.Error("no warning that the load is regional")
 	}
 }
 

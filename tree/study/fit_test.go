@@ -82,6 +82,7 @@ func allowances() map[string]allowance {
 // What a recording allows: the reason where it allows no estimate, the reason
 // where it allows no comparison, and the warning that belongs to it.
 func TestWhatTheDataAllow(t *testing.T) {
+	flags := 0
 	for name, c := range allowances() {
 		t.Run(name, func(t *testing.T) {
 			choices := inventedCase()
@@ -105,39 +106,34 @@ func TestWhatTheDataAllow(t *testing.T) {
 			if _, ok := warned(s, c.code); c.code != "" && !ok {
 				t.Errorf("no warning %s among %v", c.code, s.Warnings())
 			}
+			flags += onlyFlagsThatThereAre(t, s)
 		})
+	}
+	if flags < 15 {
+		t.Errorf("%d flags were named: too few to have checked anything", flags)
 	}
 }
 
-// What cures a warning or a reason is a flag that there is.
-func TestCuresNameFlagsThatThereAre(t *testing.T) {
+var named = regexp.MustCompile(`--[a-z][a-z-]*`)
+
+// onlyFlagsThatThereAre checks that what cures a warning or a reason is a flag of
+// a case, and counts them.
+func onlyFlagsThatThereAre(t *testing.T, s Study) (seen int) {
+	t.Helper()
 	flags := map[string]bool{}
 	for _, k := range casefile.Keys() {
 		flags["--"+k.Flag] = true
 	}
-	named := regexp.MustCompile(`--[a-z][a-z-]*`)
-	seen := 0
-	for name, c := range allowances() {
-		choices := inventedCase()
-		if c.change != nil {
-			c.change(&choices)
-		}
-		f := invented(c.columns...)
-		f["a.csv"] = emptied(f["a.csv"], 2000, 2300)
-		s := whole(t, choices, f)
-		said := s.Fit.Reason + "\n" + s.Comparison.Reason + "\n"
-		for _, w := range s.Warnings() {
-			said += w.Text + w.Cure + "\n"
-		}
-		for _, flag := range named.FindAllString(said, -1) {
-			if seen++; !flags[flag] {
-				t.Errorf("%s: there is no flag %s", name, flag)
-			}
+	said := s.Fit.Reason + "\n" + s.Comparison.Reason + "\n"
+	for _, w := range s.Warnings() {
+		said += w.Text + "\n" + w.Cure + "\n"
+	}
+	for _, flag := range named.FindAllString(said, -1) {
+		if seen++; !flags[flag] {
+			t.Errorf("there is no flag %s", flag)
 		}
 	}
-	if seen < 20 {
-		t.Errorf("%d flags were named: too few to have checked anything", seen)
-	}
+	return seen
 }
 
 // A pressure alone gives the time constant of its diastole, RC, and no R or C.
@@ -210,7 +206,7 @@ func TestReplicatesAndSeed(t *testing.T) {
 // the flow widens that of R, and the more the larger it is.
 func TestErrorsWidenIntervals(t *testing.T) {
 	width := func(errors map[string]string) (random, total float64) {
-		s := demoWith(t, func(c *casefile.Case) { c.Error, c.Replicates = errors, ptr(150) })
+		s := demoWith(t, func(c *casefile.Case) { c.Error, c.Replicates = errors, ptr(100) })
 		p, _ := s.Fit.Results[s.Fit.Chosen].Parameter("R")
 		return p.Random.Width(), p.Total.Width()
 	}

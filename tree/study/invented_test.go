@@ -28,7 +28,7 @@ func TestMain(m *testing.M) {
 
 func ptr[T any](v T) *T { return &v }
 
-// few replicates, where a test does not look at intervals.
+// few replicates, where a test does not look at intervals, and one share.
 const few = 40
 
 // folder holds the files that a case may name.
@@ -56,14 +56,14 @@ func demoFolder(t testing.TB) folder {
 	return f
 }
 
-// demoCase is the demo's case with few replicates.
+// demoCase is the demo's case with few replicates and one share.
 func demoCase(t testing.TB) casefile.Case {
 	t.Helper()
 	c, err := casefile.Read(demo.CaseName, []byte(demoFolder(t)[demo.CaseName]))
 	if err != nil {
 		t.Fatal(err)
 	}
-	c.Replicates = ptr(few)
+	c.Replicates, c.Share = ptr(few), []float64{0.5}
 	return c
 }
 
@@ -199,7 +199,7 @@ func outflowTo(header string) column { return column{header, noisy(halfFlow, 1)}
 
 // inventedCase is a case of the invented recording.
 func inventedCase() casefile.Case {
-	return casefile.Case{Recording: "a.csv", Replicates: ptr(few)}
+	return casefile.Case{Recording: "a.csv", Replicates: ptr(few), Share: []float64{0.5}}
 }
 
 // code tells whether a warning of this code is among those of the study.

@@ -8,7 +8,6 @@ import (
 	"strings"
 	"testing"
 
-	"afterbeat/data"
 	"afterbeat/data/casefile"
 )
 
@@ -53,10 +52,15 @@ type expectation struct {
 		} `json:"tolerance_plus_minus"`
 	} `json:"channels"`
 	Fit *struct {
-		Three struct{ R_mmHg_s_mL, C_mL_mmHg float64 } `json:"no_delay"`
-		Two   struct{ R_mmHg_s_mL, C_mL_mmHg float64 } `json:"two_element_no_delay"`
-		Total float64                                  `json:"mean_pressure_over_mean_flow"`
+		Three load    `json:"no_delay"`
+		Two   load    `json:"two_element_no_delay"`
+		Total float64 `json:"mean_pressure_over_mean_flow"`
 	} `json:"lumped_fit_informative"`
+}
+
+type load struct {
+	R float64 `json:"R_mmHg_s_mL"`
+	C float64 `json:"C_mL_mmHg"`
 }
 
 func expectations(t testing.TB) map[string]expectation {
@@ -65,8 +69,14 @@ func expectations(t testing.TB) map[string]expectation {
 	if err := json.Unmarshal([]byte(recordingIn(t, references, "expected.json")), &all); err != nil {
 		t.Fatal(err)
 	}
-	if len(all.Files) < 9 {
-		t.Fatalf("%d recordings are expected", len(all.Files))
+	benches := 0
+	for _, e := range all.Files {
+		if e.Fit != nil {
+			benches++
+		}
+	}
+	if len(all.Files) < 9 || benches != 3 {
+		t.Fatalf("%d recordings are expected, %d with a load", len(all.Files), benches)
 	}
 	return all.Files
 }
@@ -95,6 +105,9 @@ func TestReferenceRecordings(t *testing.T) {
 			}
 			s := whole(t, c, f)
 			compareWith(t, s.Beats.Check(s.Warnings()), want)
+			if want.Fit != nil {
+				compareLoad(t, s, want)
+			}
 			if len(s.Note().Render(defaults)) < 1000 {
 				t.Error("there is no note")
 			}
@@ -142,45 +155,28 @@ func compareWith(t *testing.T, got CheckReport, want expectation) {
 	}
 }
 
-// The load of the bench, on the stretch of an independent fit of its own kind
-// (all samples, a free initial pressure): R and C within 5 %, total resistance
-// within 2 % of mean pressure over mean flow.
-func TestReferenceBenchLoad(t *testing.T) {
-	fitted := 0
-	for name, want := range expectations(t) {
-		if want.Fit == nil {
-			continue
+// compareLoad holds the load of the bench, on the stretch of an independent fit
+// of its own kind (all samples, a free initial pressure), to that fit: R and C
+// within 5 %, total resistance within 2 % of mean pressure over mean flow.
+func compareLoad(t *testing.T, s Study, want expectation) {
+	t.Helper()
+	c := s.Inputs.Case
+	c.From, c.To = ptr(5.0), ptr(35.0)
+	s, err := Run(t.Context(), s.With(c).Inputs, StageFit)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, r := range s.Fit.Results {
+		e := want.Fit.Three
+		if r.Model.Name == "wk2" {
+			e = want.Fit.Two
 		}
-		fitted++
-		c := casefile.Case{Recording: name, From: ptr(5.0), To: ptr(35.0), Replicates: ptr(20), Share: []float64{0.5}}
-		s := whole(t, c, folder{name: recordingIn(t, references, name)})
-		for _, r := range s.Fit.Results {
-			e := want.Fit.Three
-			if r.Model.Name == "wk2" {
-				e = want.Fit.Two
-			}
-			if !near(r.Values.R, e.R_mmHg_s_mL, 0.05) || !near(r.Values.C, e.C_mL_mmHg, 0.05) || !near(r.TotalResistance.Value, want.Fit.Total, 0.02) {
-				t.Errorf("%s, %s: R %.4f, C %.4f, total %.4f; want %+v and %v", name, r.Model.Name, r.Values.R, r.Values.C, r.TotalResistance.Value, e, want.Fit.Total)
-			}
+		if !near(r.Values.R, e.R, 0.05) || !near(r.Values.C, e.C, 0.05) || !near(r.TotalResistance.Value, want.Fit.Total, 0.02) {
+			t.Errorf("%s: R %.4f, C %.4f, total %.4f; want %+v and %v", r.Model.Name, r.Values.R, r.Values.C, r.TotalResistance.Value, e, want.Fit.Total)
 		}
 	}
-	if fitted != 3 {
-		t.Errorf("%d recordings of the bench", fitted)
-	}
-}
-
-// Finger pressure with middle-cerebral velocity is the load of that bed: named
-// after it, and of no use for a pump's share, with a diameter too.
-func TestReferenceCerebralLoadIsRegional(t *testing.T) {
-	const name = "tcd_abp_mcav_1000hz_168s.csv"
-	f := folder{name: recordingIn(t, references, name), "ex.csv": leftOut(t, name)}
-	s := whole(t, casefile.Case{Recording: name, Exclude: "ex.csv", Replicates: ptr(20), DiameterCM: ptr(0.3)}, f)
-	report := s.Report(defaults)
-	if len(report.Fits) != 2 || report.Fits[0].Site != data.SiteMCA || !strings.Contains(s.Comparison.Reason, "that of one bed (mca)") || report.Native != nil {
-		t.Errorf("%d fits, comparison: %q", len(report.Fits), s.Comparison.Reason)
-	}
-	if _, ok := warned(s, data.CodeRegional); !ok {
-		t.Error("no warning that the load is regional")
+	if len(s.Fit.Results) != 2 {
+		t.Errorf("%d fits", len(s.Fit.Results))
 	}
 }
 

@@ -13,7 +13,7 @@ import (
 // What the demo was made from comes back: within the intervals of random error,
 // and within 2 %.
 func TestDemoRecoversWhatItWasMadeFrom(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Replicates = nil })
+	s := demoWith(t, func(c *casefile.Case) { c.Replicates = ptr(400) })
 	truth := demo.Truth()
 	r := s.Fit.Results[s.Fit.Chosen]
 	if r.Model.Name != "wk3" {
@@ -115,7 +115,7 @@ func TestWarningsAreComplete(t *testing.T) {
 
 func BenchmarkStudyDemo(b *testing.B) {
 	c, f := demoCase(b), demoFolder(b)
-	c.Replicates = nil
+	c.Replicates, c.Share = nil, nil
 	b.ReportAllocs()
 	for b.Loop() {
 		s := whole(b, c, f)
