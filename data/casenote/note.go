@@ -1,6 +1,7 @@
 package casenote
 
 import (
+	"cmp"
 	"fmt"
 	"strings"
 
@@ -16,6 +17,8 @@ type Note struct {
 	// Reproduce is the command that gives this note again, as arguments: the
 	// program first, quoted on rendering. The block is left out where empty.
 	Reproduce []string
+	// Beside is the file in whose folder the command works; "" is the recording.
+	Beside string
 	// Remark is what the person has to say; may be empty.
 	Remark data.Text
 }
@@ -42,7 +45,7 @@ func (n Note) Render(o Options) string {
 		r.heading("Remark")
 		r.paragraph(n.Remark.String())
 	}
-	r.reproduce(n.Reproduce)
+	r.reproduce(n.Reproduce, cmp.Or(n.Beside, "recording"))
 	r.line("")
 	r.line(Caution)
 	return r.String()
@@ -142,12 +145,12 @@ func (r *renderer) warnings(list []data.Warning) {
 	}
 }
 
-func (r *renderer) reproduce(args []string) {
+func (r *renderer) reproduce(args []string, beside string) {
 	if len(args) == 0 {
 		return
 	}
 	r.line("")
-	r.line("To reproduce, in the folder of the recording:")
+	r.line("To reproduce, in the folder of the " + beside + ":")
 	r.line("")
 	for _, s := range command(args, columns-2, r.ASCII) {
 		r.line("  " + s)

@@ -201,8 +201,8 @@ func (b Beats) flowUnit() string {
 func fitSettings(c casefile.Case) (fitting.Settings, error) {
 	var s fitting.Settings
 	if n := c.Replicates; n != nil {
-		if *n < 1 || *n > 1_000_000 {
-			return s, &ChoiceError{Key: "replicates", What: fmt.Sprintf("%d is not between 1 and 1000000", *n), Hint: "leave it out for 1000"}
+		if *n < 1 || *n > 100_000 {
+			return s, &ChoiceError{Key: "replicates", What: fmt.Sprintf("%d is not between 1 and 100000", *n), Hint: "leave it out for 1000"}
 		}
 		s.Replicates = *n
 	}

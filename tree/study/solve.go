@@ -95,7 +95,7 @@ func numbers(values []float64) []Number {
 func (s SolvedLoad) Note() casenote.Note {
 	n := casenote.Note{
 		Program: "afterbeat", Version: Version, Title: data.Clean("Lumped load of " + baseName(s.File)),
-		Warnings: s.Warnings, Reproduce: []string{"afterbeat", "solve", "load", baseName(s.File)},
+		Warnings: s.Warnings, Reproduce: []string{"afterbeat", "solve", "load", baseName(s.File)}, Beside: "spec",
 	}
 	n.Sections = append(n.Sections, s.givenSection(), solvedSection(s.Native))
 	if s.Answer != nil {

@@ -15,7 +15,7 @@ import (
 func (s SolvedSupport) Note() casenote.Note {
 	n := casenote.Note{
 		Program: "afterbeat", Version: Version, Title: data.Clean("Coupled state of " + baseName(s.File)),
-		Warnings: s.Warnings, Reproduce: []string{"afterbeat", "solve", "support", baseName(s.File)},
+		Warnings: s.Warnings, Reproduce: []string{"afterbeat", "solve", "support", baseName(s.File)}, Beside: "spec",
 		Sections: []casenote.Section{s.givenSection()},
 	}
 	if len(s.States) > 0 {
