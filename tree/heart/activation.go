@@ -62,7 +62,7 @@ func (v Ventricle) checkActivation() error {
 		if !(v.Tes > 0) || !(v.Tr > 0) {
 			return fmt.Errorf("activation cosine needs Tes and Tr above 0 s, not %v and %v", v.Tes, v.Tr)
 		}
-		if v.Tes+v.Tr > v.Period {
+		if v.Tes+v.Tr > v.Period*(1+1e-9) {
 			return fmt.Errorf("the sum of Tes and Tr, %v s, is longer than the period of %v s", v.Tes+v.Tr, v.Period)
 		}
 	default:

@@ -5,77 +5,16 @@ import (
 	"fmt"
 	"math"
 
-	"afterbeat/data"
-	"afterbeat/data/unit"
-	"afterbeat/fitting"
 	"afterbeat/tree/heart"
 	"afterbeat/tree/pump"
 )
-
-// LoadKind names the circuit of a [Windkessel].
-type LoadKind string
-
-// The lumped loads that can be coupled; see package fitting for the sketches.
-const (
-	WK2  LoadKind = "wk2"
-	WK3  LoadKind = "wk3"
-	WK4S LoadKind = "wk4s" // L in series with Zc
-	WK4P LoadKind = "wk4p" // L parallel to Zc
-)
-
-// LoadKinds lists them, the simplest first.
-func LoadKinds() []LoadKind { return []LoadKind{WK2, WK3, WK4S, WK4P} }
-
-// Symbols are the names of the parameters that a load of that kind has.
-func (k LoadKind) Symbols() []string {
-	switch k {
-	case WK2:
-		return []string{"R", "C"}
-	case WK3:
-		return []string{"R", "C", "Zc"}
-	case WK4S, WK4P:
-		return []string{"R", "C", "Zc", "L"}
-	}
-	return nil
-}
-
-// Windkessel is a lumped load with its values.
-type Windkessel struct {
-	Kind LoadKind
-	fitting.Values
-	OutflowPressure float64 // Pv, mmHg
-}
-
-// Check tells why these cannot be the values of a load: an error for a person
-// to read.
-func (w Windkessel) Check() error {
-	if w.Kind.Symbols() == nil {
-		return fmt.Errorf("model %q is none of %v", w.Kind, LoadKinds())
-	}
-	for _, p := range []struct {
-		name  string
-		value float64
-		ok    bool
-		want  string
-	}{
-		{"R", w.R, w.R > 0, "above 0"},
-		{"C", w.C, w.C > 0, "above 0"},
-		{"Zc", w.Zc, w.Zc >= 0, "of 0 or more"},
-		{"L", w.L, w.L >= 0, "of 0 or more"},
-		{"Pv", w.OutflowPressure, w.OutflowPressure >= 0, "of 0 or more"},
-	} {
-		if !p.ok || math.IsInf(p.value, 0) {
-			return fmt.Errorf("%s = %v is not a number %s", p.name, p.value, p.want)
-		}
-	}
-	return nil
-}
 
 // Coupling is a ventricle, a load and a pump between them.
 type Coupling struct {
 	Ventricle heart.Ventricle
 	// Filling is the line of the filling pressure. A Flow of NaN stands for the
-	// mean flow of the same ventricle and load, pump absent, at its Pressure.
+	// mean flow of the same ventricle and load, pump absent, at its Pressure. It
+	// is not looked at where the Slope is 0.
 	Filling heart.Filling
 	Load    Windkessel
 	Pump    pump.Pump // not looked at where the speed is 0
@@ -102,6 +41,8 @@ type Coupled struct {
 	// last is the orbit found last, a start for the next.
 	last     orbit
 	haveLast bool
+	// lineKnown tells that the flow of the filling line is known.
+	lineKnown bool
 }
 
 // NewCoupled checks a coupling, and settles the flow of its filling line. Errors
@@ -125,8 +66,12 @@ func NewCoupled(c Coupling) (*Coupled, error) {
 	}
 	k := &Coupled{Coupling: c}
 	k.shooter = shooter{run: run{circuit: circuitOf(c), tolerance: c.Tolerance}, window: 1}
+	k.lineKnown = true
 	if math.IsNaN(c.Filling.Flow) {
-		k.Filling.Flow = k.nativeFlow()
+		k.Filling.Flow = 0
+		if c.Filling.Slope > 0 {
+			k.Filling.Flow, k.lineKnown = k.nativeFlow()
+		}
 	}
 	k.shooter.line = k.Filling
 	return k, nil
@@ -141,6 +86,10 @@ func firstOf(err error) error {
 	return err
 }
 
+// instantly is a time constant of an L that is taken as none, s: what it would
+// change is below 1e-3 mmHg.
+const instantly = 3e-6
+
 // circuitOf brings a coupling into the form that is integrated.
 func circuitOf(c Coupling) *circuit {
 	w := c.Load
@@ -151,25 +100,25 @@ func circuitOf(c Coupling) *circuit {
 	switch {
 	case w.Kind == WK2:
 		k.zc = 0
-	case w.Kind == WK4P && w.Zc > 0 && w.L > 0:
+	case w.Kind == WK4P && w.Zc > 0 && w.L > instantly*w.Zc:
 		k.parallel, k.l = true, w.L
 	case w.Kind == WK4P: // L or Zc shorts the other
 		k.zc = 0
-	case w.Kind == WK4S && w.L > 0:
+	case w.Kind == WK4S && w.L > instantly*(w.Zc+c.Ventricle.Rav):
 		k.series, k.l = true, w.L
 	}
 	return k
 }
 
 // nativeFlow is the mean flow with the pump absent, at the filling pressure P0.
-func (k *Coupled) nativeFlow() float64 {
-	k.shooter.line = heart.Filling{Pressure: k.Filling.Pressure}
-	k.shooter.drive = drive{}
-	o := k.shooter.find(k.guess(), false)
+func (k *Coupled) nativeFlow() (flow float64, known bool) {
+	s := &k.shooter
+	s.line = heart.Filling{Pressure: k.Filling.Pressure}
+	o := s.find(k.guess(), false)
 	y := o.start
-	k.shooter.fill = o.start[out]
-	k.shooter.beat(&y)
-	return y[out] / k.Ventricle.Period
+	s.fill = o.start[out]
+	held := s.beat(&y)
+	return y[out] / k.Ventricle.Period, held && o.settled
 }
 
 // guess is a state to start from where nothing is known, after a few beats.
@@ -229,6 +178,7 @@ func (k *Coupled) orbitAt(speed float64) (orbit, error) {
 		s.known = false
 		o = s.find(k.guess(), k.Filling.Slope > 0)
 	}
+	o.settled = o.settled && k.lineKnown
 	k.last, k.haveLast = o, o.settled
 	return o, nil
 }
@@ -241,16 +191,11 @@ func (k *Coupled) At(speed float64) (CoupledState, error) {
 	if err != nil {
 		return CoupledState{}, err
 	}
-	s := &k.shooter
 	var b books
-	b.begin()
-	s.books = &b
 	y := o.start
-	s.fill = o.start[out]
-	held := s.beat(&y)
-	s.books = nil
-	y[out] = o.start[out]
-	o.settled = o.settled && held && gap(&y, &o.start, s.active) < 100*closed
+	k.shooter.fill = o.start[out]
+	held := k.shooter.booked(&y, &b)
+	o.settled = o.settled && held && k.shooter.cameBack(&y, &o.start)
 	return k.stateOf(o, speed, &b), nil
 }
 
@@ -264,68 +209,4 @@ func (k *Coupled) Sweep(speeds []float64) ([]CoupledState, error) {
 		}
 	}
 	return states, nil
-}
-
-// CoupledState is the periodic state of ventricle, pump and load at one speed.
-type CoupledState struct {
-	Speed   float64 // 1000/min; 0: no pump
-	Beats   int     // integrated to find it
-	Settled bool
-
-	Arterial    Range   // Pao, mmHg
-	PumpFlow    Range   // mL/s
-	ValveFlow   Range   // through the aortic valve, mL/s
-	ValveOpen   float64 // s a beat
-	ValveOpened bool
-	Volume      Range   // of the ventricle, mL
-	Ventricular Range   // Plv, mmHg
-	Filling     float64 // Pfill, mmHg
-	StrokeWork  float64 // int Plv (Qav + Qp - Qmv) dt, mmHg mL
-	EEP, SHE    float64 // mmHg, erg/cm³; the flow is Qav + Qp
-	Energy      CoupledEnergy
-	Suction     bool // V within 2 mL of V0, or Plv below 0
-	Warnings    []data.Warning
-}
-
-// PulsePressure is max - min of arterial pressure, mmHg.
-func (s *CoupledState) PulsePressure() float64 { return s.Arterial.Swing() }
-
-// Flow is the mean flow into the arteries, mL/s.
-func (s *CoupledState) Flow() float64 { return s.PumpFlow.Mean + s.ValveFlow.Mean }
-
-// CoupledEnergy is where the energy of a beat comes from and where it goes,
-// mmHg mL.
-type CoupledEnergy struct {
-	Filling, Ventricle, Pump                float64 // sources
-	Mitral, Aortic, Cannula, Zc, R, Outflow float64 // sinks
-}
-
-// Balance is (sources - sinks)/sinks; NaN without sinks.
-func (e CoupledEnergy) Balance() float64 {
-	sinks := e.Mitral + e.Aortic + e.Cannula + e.Zc + e.R + e.Outflow
-	if sinks == 0 {
-		return math.NaN()
-	}
-	return (e.Filling + e.Ventricle + e.Pump - sinks) / sinks
-}
-
-// stateOf reads a state from the books of its beat.
-func (k *Coupled) stateOf(o orbit, speed float64, b *books) CoupledState {
-	surplus := b.surplus()
-	s := CoupledState{
-		Speed: speed, Beats: o.beats, Settled: o.settled,
-		Arterial: b.of(sigPao), PumpFlow: b.of(sigPump), ValveFlow: b.of(sigValve),
-		ValveOpen: b.open, ValveOpened: b.opened,
-		Volume: b.of(sigVolume), Ventricular: b.of(sigPlv), Filling: o.start[out],
-		StrokeWork: b.power[powVentricle],
-		EEP:        b.of(sigPao).Mean + surplus, SHE: unit.DynPerMmHg * surplus,
-		Energy: CoupledEnergy{
-			Filling: b.power[powFilling], Ventricle: b.power[powVentricle], Pump: b.power[powHead],
-			Mitral: b.power[powMitral], Aortic: b.power[powAortic], Cannula: b.power[powCannula],
-			Zc: b.power[powZc], R: b.power[powR], Outflow: b.power[powOutflow],
-		},
-	}
-	s.Suction = k.suction(&s)
-	s.Warnings = k.warnings(&s)
-	return s
 }

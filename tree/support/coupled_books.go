@@ -42,11 +42,11 @@ const (
 type books struct {
 	time     float64
 	open     float64 // time that the aortic valve is open, s
-	opened   bool
 	integral [signals]float64
 	low      [signals]float64
 	high     [signals]float64
 	power    [powers]float64 // integrals, mmHg mL
+	trace    *Trace          // nil: no samples are wanted
 }
 
 const nodes = 5
@@ -58,9 +58,9 @@ var (
 
 const root37 = 0.654653670707977143798292456247 // sqrt(3/7)
 
-// open begins new books.
+// begin opens new books.
 func (b *books) begin() {
-	*b = books{}
+	*b = books{trace: b.trace}
 	for k := range signals {
 		b.low[k], b.high[k] = math.Inf(1), math.Inf(-1)
 	}
@@ -83,10 +83,12 @@ func (b *books) add(r *run) {
 	b.time += h
 	if r.mode[aortic] {
 		b.open += h
-		b.opened = b.opened || seen[sigValve][2] > 0
 	}
 	for k := range seen {
 		b.extremes(r, k, &seen[k])
+	}
+	if b.trace != nil {
+		b.trace.add(r)
 	}
 }
 
@@ -153,7 +155,6 @@ func vertex(t, x []float64) (at float64, ok bool) {
 func (b *books) join(o *books) {
 	b.time += o.time
 	b.open += o.open
-	b.opened = b.opened || o.opened
 	for k := range signals {
 		b.integral[k] += o.integral[k]
 		b.low[k], b.high[k] = min(b.low[k], o.low[k]), max(b.high[k], o.high[k])
@@ -166,6 +167,16 @@ func (b *books) join(o *books) {
 // of is the range of a signal.
 func (b *books) of(k int) Range {
 	return Range{Mean: b.integral[k] / b.time, Min: b.low[k], Max: b.high[k]}
+}
+
+// opening is how long the aortic valve is open, s. A trickle is none: where blood
+// stands in front of the valve, rounding opens it.
+func (b *books) opening() (open float64, opened bool) {
+	const trickle = 1e-6 // mL/s
+	if b.high[sigValve] < trickle {
+		return 0, false
+	}
+	return b.open, true
 }
 
 // surplus is EEP - mean P, mmHg; NaN unless mean flow is positive.

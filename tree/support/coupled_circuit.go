@@ -23,8 +23,8 @@ const (
 //	wk4p                Pao = Pc + Zc (Q - QL),  L dQL/dt = Zc (Q - QL)
 //	wk4s                Pao = Pc + Zc Q + L dQ/dt
 //
-// with Q = Qav + Qp. Where Zc or L is 0 the load is the simpler one that this
-// leaves, so that parallel and series both mean L > 0.
+// with Q = Qav + Qp. Where Zc or L is as good as 0 the load is the simpler one
+// that this leaves, so that parallel and series both mean an L that counts.
 type circuit struct {
 	heart            heart.Ventricle
 	corners          []float64 // of E(t)

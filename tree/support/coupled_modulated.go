@@ -85,18 +85,12 @@ func (k *Coupled) locked(m *Modulation, beats int) (Modulated, error) {
 	for i := range beats {
 		s.since = float64(i) * k.Ventricle.Period
 		var b books
-		b.begin()
-		s.books = &b
-		ok := s.beat(&y)
-		s.books = nil
-		if !ok {
-			o.settled = false
-			break
+		if !s.booked(&y, &b) {
+			return w.measures(false), nil
 		}
 		w.add(&b)
 	}
-	y[out] = o.start[out]
-	return w.measures(o.settled && gap(&y, &o.start, s.active) < 100*closed), nil
+	return w.measures(o.settled && s.cameBack(&y, &o.start)), nil
 }
 
 // The shortest and the longest window of a free modulation, in beats, and how

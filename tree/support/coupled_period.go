@@ -1,9 +1,6 @@
 package support
 
-import (
-	"math"
-	"slices"
-)
+import "math"
 
 // orbit is a periodic state: what it begins with, in the places of [vector],
 // and its filling pressure in the place [out].
@@ -28,6 +25,7 @@ type shooter struct {
 	slopes  [5]vector // of G: row, column
 	known   bool      // whether slopes holds any
 	beats   int
+	worst   float64 // gap before a move
 	scratch [5]vector
 }
 
@@ -39,7 +37,14 @@ type fillLine interface {
 
 const (
 	// closed is how near to the periodic state a start must be, relative.
-	closed      = 1e-8
+	closed = 1e-8
+	// still is the gap of a state that does not change: where any is periodic, as
+	// the volume of a ventricle whose valves stay shut, no move can be told.
+	still = 1e-10
+	// flat is a slope of G - z that is as good as none.
+	flat = 1e-10
+	// shorter is the part of a move that is tried where the whole does no good.
+	shorter     = 0.3
 	mostBeats   = 600
 	nudge       = 1e-4
 	typicalSize = 10 // mmHg, mL, mL/s: what an error is relative to
@@ -88,17 +93,18 @@ func (s *shooter) find(z vector, onLine bool) orbit {
 	s.unknowns(true)
 	start := z
 	if s.newton(&z) {
-		return orbit{start: z, beats: s.beats, settled: true}
+		return orbit{start: z, beats: s.beats, settled: s.stable(&z)}
 	}
 	return s.bracket(start)
 }
 
-// settle looks for the periodic state at the filling pressure of the start.
+// settle looks for the periodic state at the filling pressure of the start. The
+// beats of the orbit are all since find.
 func (s *shooter) settle(z vector) orbit {
 	s.unknowns(false)
 	for limit := s.beats + mostBeats; s.beats < limit; {
 		if s.newton(&z) {
-			return orbit{start: z, beats: s.beats, settled: true}
+			return orbit{start: z, beats: s.beats, settled: s.stable(&z)}
 		}
 		s.known = false
 		for range 20 {
@@ -117,11 +123,10 @@ func (s *shooter) settle(z vector) orbit {
 // flow rises with filling pressure and the line falls with flow, so that there is
 // one root. It is slow, and only for where Newton's method fails.
 func (s *shooter) bracket(z vector) orbit {
-	low, high := 0.0, s.line.Highest()
-	var at orbit
-	for high-low > closed*typicalSize {
+	for low, high := 0.0, s.line.Highest(); ; {
 		z[out] = (low + high) / 2
-		if at = s.settle(z); !at.settled {
+		at := s.settle(z)
+		if !at.settled || high-low < closed*typicalSize {
 			return at
 		}
 		z = at.start
@@ -131,148 +136,6 @@ func (s *shooter) bracket(z vector) orbit {
 			high = z[out]
 		}
 	}
-	at.beats = s.beats
-	return at
-}
-
-// newton draws nearer to the periodic state until it is reached, or fails.
-func (s *shooter) newton(z *vector) bool {
-	y, ok := s.after(z)
-	if !ok {
-		return false
-	}
-	for range 25 {
-		if !s.known && !s.differences(z, &y) {
-			return false
-		}
-		move, ok := s.solve(z, &y)
-		if !ok {
-			return false
-		}
-		far := size(&move, z)
-		to := s.moved(z, &move, 1)
-		if far < closed {
-			*z = to
-			return true
-		}
-		there, ok := s.after(&to)
-		if !ok {
-			return false
-		}
-		if gap(&there, &to, s.active) > 0.5*gap(&y, z, s.active) {
-			s.known = false
-			if gap(&there, &to, s.active) > gap(&y, z, s.active) {
-				to = s.moved(z, &move, 0.3)
-				if there, ok = s.after(&to); !ok {
-					return false
-				}
-			}
-		} else {
-			s.update(z, &to, &y, &there)
-		}
-		*z, y = to, there
-	}
-	return false
-}
-
-// moved is z + share move, with a filling pressure within the line.
-func (s *shooter) moved(z, move *vector, share float64) vector {
-	to := *z
-	for _, k := range s.active {
-		to[k] += share * move[k]
-	}
-	if s.series { // the valve does not leak
-		to[qx] = max(0, to[qx])
-	}
-	if slices.Contains(s.active, out) {
-		to[out] = min(max(0, to[out]), s.line.Highest())
-	}
-	return to
-}
-
-// differences fills the slopes of G at z, where G is y.
-func (s *shooter) differences(z, y *vector) bool {
-	for _, col := range s.active {
-		step := nudge * (typicalSize + math.Abs(z[col]))
-		at := *z
-		at[col] += step
-		there, ok := s.after(&at)
-		if !ok {
-			return false
-		}
-		for _, row := range s.active {
-			s.slopes[row][col] = (there[row] - y[row]) / step
-		}
-	}
-	s.known = true
-	return true
-}
-
-// update is Broyden's: the slopes that explain the last move and differ least
-// from the old ones, in relative units.
-func (s *shooter) update(z, to, y, there *vector) {
-	length := 0.0
-	var unit vector
-	for _, k := range s.active {
-		unit[k] = typicalSize + math.Abs(z[k])
-		length += square((to[k] - z[k]) / unit[k])
-	}
-	if length == 0 {
-		return
-	}
-	for _, row := range s.active {
-		miss := there[row] - y[row]
-		for _, col := range s.active {
-			miss -= s.slopes[row][col] * (to[col] - z[col])
-		}
-		for _, col := range s.active {
-			s.slopes[row][col] += miss * (to[col] - z[col]) / square(unit[col]) / length
-		}
-	}
-}
-
-// solve gives the move of Newton's method: (1 - slopes) move = y - z, by
-// elimination with pivoting.
-func (s *shooter) solve(z, y *vector) (vector, bool) {
-	n := len(s.active)
-	a := &s.scratch
-	var b vector
-	for i, row := range s.active {
-		for j, col := range s.active {
-			a[i][j] = -s.slopes[row][col]
-		}
-		a[i][i]++
-		b[i] = y[row] - z[row]
-	}
-	for i := range n {
-		pivot := i
-		for k := i + 1; k < n; k++ {
-			if math.Abs(a[k][i]) > math.Abs(a[pivot][i]) {
-				pivot = k
-			}
-		}
-		if a[pivot][i] == 0 {
-			return b, false
-		}
-		a[i], a[pivot] = a[pivot], a[i]
-		b[i], b[pivot] = b[pivot], b[i]
-		for k := i + 1; k < n; k++ {
-			f := a[k][i] / a[i][i]
-			for j := i; j < n; j++ {
-				a[k][j] -= f * a[i][j]
-			}
-			b[k] -= f * b[i]
-		}
-	}
-	var move vector
-	for i := n - 1; i >= 0; i-- {
-		x := b[i]
-		for j := i + 1; j < n; j++ {
-			x -= a[i][j] * move[s.active[j]]
-		}
-		move[s.active[i]] = x / a[i][i]
-	}
-	return move, finiteVector(&move)
 }
 
 // size is the largest part of a move, relative to z.
@@ -291,6 +154,14 @@ func gap(y, z *vector, active []int) float64 {
 		most = max(most, math.Abs(y[k]-z[k])/(typicalSize+math.Abs(z[k])))
 	}
 	return most
+}
+
+// cameBack tells whether a beat or a window ended where it began, the integral
+// and the filling pressure apart.
+func (s *shooter) cameBack(y, start *vector) bool {
+	end := *y
+	end[out] = start[out]
+	return gap(&end, start, s.active) < 100*closed
 }
 
 func finiteVector(y *vector) bool {

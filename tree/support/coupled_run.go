@@ -13,16 +13,22 @@ type run struct {
 	dense     dense
 	now       instant
 	least     [3]float64 // of each margin, over the stages of a step
-	size      float64    // of the next step, s
-	books     *books     // nil: nobody asks
+	most      [3]float64
+	size      float64 // of the next step, s
+	slack     float64 // see turn
+	books     *books  // nil: nobody asks
 }
 
-// The most steps and events of one beat: far more than a beat needs, so that
-// one that passes them has no answer.
+// The fewest steps of a beat, so that no short event is stepped over; and the most
+// steps and events of one beat: far more than a beat needs, so that one that
+// passes them has no answer.
 const (
-	mostSteps = 100_000
-	mostTurns = 2_000
+	fewestSteps = 50
+	mostSteps   = 200_000
+	mostTurns   = 6 * manyTurns
 )
+
+var infinite = math.Inf(1)
 
 // slope implements [system].
 func (r *run) slope(_ int, t float64, y, dy *vector) {
@@ -33,7 +39,7 @@ func (r *run) slope(_ int, t float64, y, dy *vector) {
 	dy[pc] = (q - (y[pc]-r.pv)/r.r) / r.c
 	dy[qp], dy[qx], dy[out] = i.dqp, i.dqx, q
 	for e, margin := range &i.margin {
-		r.least[e] = min(r.least[e], margin)
+		r.least[e], r.most[e] = min(r.least[e], margin), max(r.most[e], margin)
 	}
 }
 
@@ -44,7 +50,7 @@ func (r *run) beat(y *vector) bool {
 	s.t, s.start = 0, *y
 	r.mode = r.modeAt(0, y, &r.drive)
 	r.slope(0, 0, &s.start, &s.k[0])
-	r.size = r.heart.Period / 2000
+	r.size, r.slack = r.heart.Period/2000, firstSlack
 	steps, turns := 0, 0
 	for s.t < r.heart.Period {
 		corner := r.corner(s.t)
@@ -52,7 +58,7 @@ func (r *run) beat(y *vector) bool {
 		if steps++; steps > mostSteps || turns > mostTurns || !(s.h > 0) {
 			return false
 		}
-		r.least = [3]float64{math.Inf(1), math.Inf(1), math.Inf(1)}
+		r.least, r.most = [3]float64{infinite, infinite, infinite}, [3]float64{-infinite, -infinite, -infinite}
 		err := s.take(r, r.tolerance)
 		if !(err <= 1) {
 			if math.IsNaN(err) {
@@ -61,14 +67,16 @@ func (r *run) beat(y *vector) bool {
 			r.size = next(s.h, err)
 			continue
 		}
-		size := next(s.h, err)
+		size := min(next(s.h, err), r.heart.Period/fewestSteps)
 		share, event := r.turn()
 		if event < 0 {
 			r.accept(s.t+s.h, corner)
 			r.size = size
 			continue
 		}
-		turns++
+		if turns++; turns%manyTurns == 0 {
+			r.slack *= 10
+		}
 		if share > 0 {
 			s.h *= share
 			s.take(r, r.tolerance)
@@ -79,6 +87,17 @@ func (r *run) beat(y *vector) bool {
 	}
 	*y = s.start
 	return true
+}
+
+// booked is a beat with books, integrated more finely: what is added up over it
+// is then good to the tolerance.
+func (r *run) booked(y *vector, b *books) bool {
+	b.begin()
+	tolerance := r.tolerance
+	r.books, r.tolerance = b, tolerance/100
+	ok := r.beat(y)
+	r.books, r.tolerance = nil, tolerance
+	return ok && finiteVector(y)
 }
 
 // corner is the next time after t at which a given function of time is bent:

@@ -62,13 +62,11 @@ func (k *Coupled) Step(from, to float64, beats int) (StepResponse, error) {
 func (k *Coupled) lagged(y *vector, fill, flow *float64) (*books, bool) {
 	s := &k.shooter
 	var b books
-	b.begin()
 	goal := k.Filling.At(*flow)
 	s.drive.fill, s.gap, s.lag = goal, *fill-goal, k.FillingLag
-	s.books = &b
-	ok := s.beat(y)
-	s.books, s.gap = nil, 0
+	ok := s.booked(y, &b)
+	s.gap = 0
 	*fill = goal + (*fill-goal)*math.Exp(-k.Ventricle.Period/k.FillingLag)
 	*flow = y[out] / k.Ventricle.Period
-	return &b, ok && finiteVector(y)
+	return &b, ok
 }

@@ -1,36 +1,58 @@
 package support
 
-// slack is how far a margin may be passed before the mode is taken to have
-// ended, mmHg or mL/s: below what any output shows, above rounding.
-const slack = 1e-9
+// A margin may be passed by the slack before the mode is taken to have ended,
+// mmHg or mL/s: less than any output shows, more than rounding. Where a state
+// rests on the edge of a mode, as blood that stands in front of a valve, events
+// follow each other without end; then the slack grows, tenfold after every
+// manyTurns.
+const (
+	firstSlack = 1e-9
+	manyTurns  = 100
+)
 
 // turn finds the first event of the step just taken: its share of the step and
-// which it is; -1 where there is none.
+// which it is; -1 where there is none. Only a step on which a margin comes near
+// to 0, beside its change over the step, is looked at closely.
 func (r *run) turn() (share float64, event int) {
-	if r.least[mitral] >= 0 && r.least[aortic] >= 0 && r.least[reverse] >= 0 {
-		return 1, -1
-	}
-	r.step.between(&r.dense)
-	const parts = 8
-	before := 0.0
-	for k := 1; k <= parts; k++ {
-		after := float64(k) / parts
-		r.peek(after)
-		share, event = after, -1
-		for e, margin := range r.now.margin {
-			if margin < -slack {
-				if at := r.root(e, before, after); event < 0 || at < share {
-					share, event = at, e
-				}
-				r.peek(after)
+	event = -1
+	for e := range r.least {
+		if r.least[e] < r.most[e]-r.least[e] {
+			at, found := r.passes(e)
+			if found && (event < 0 || at < share) {
+				share, event = at, e
 			}
 		}
-		if event >= 0 {
-			return share, event
-		}
-		before = after
 	}
-	return 1, -1
+	return share, event
+}
+
+// passes tells where in the step the margin of an event first passes 0, if it
+// does: between points an eighth of the step apart, or in the dip of a parabola
+// through three of them.
+func (r *run) passes(event int) (share float64, found bool) {
+	const parts = 8
+	r.step.between(&r.dense)
+	var at, margin [parts + 1]float64
+	for k := range at {
+		at[k] = float64(k) / parts
+		margin[k] = r.marginAt(event, at[k])
+		if k > 0 && margin[k] < -r.slack {
+			return r.root(event, at[k-1], at[k]), true
+		}
+		if k < 2 {
+			continue
+		}
+		dip, ok := vertex(at[k-2:k+1], margin[k-2:k+1])
+		if ok && r.marginAt(event, dip) < -r.slack {
+			return r.root(event, at[k-2], dip), true
+		}
+	}
+	return 0, false
+}
+
+func (r *run) marginAt(event int, share float64) float64 {
+	r.peek(share)
+	return r.now.margin[event]
 }
 
 // peek looks at a share of the step, within its mode.
@@ -44,10 +66,7 @@ func (r *run) peek(share float64) {
 // the first of which lies within the mode: regula falsi with the Illinois
 // correction (Dowell and Jarratt 1971, BIT 11:168).
 func (r *run) root(event int, low, high float64) float64 {
-	r.peek(high)
-	atHigh := r.now.margin[event]
-	r.peek(low)
-	atLow := r.now.margin[event]
+	atHigh, atLow := r.marginAt(event, high), r.marginAt(event, low)
 	if atLow <= 0 {
 		return low
 	}
@@ -57,8 +76,7 @@ func (r *run) root(event int, low, high float64) float64 {
 		if high-low < 1e-13 {
 			break
 		}
-		r.peek(at)
-		switch margin := r.now.margin[event]; {
+		switch margin := r.marginAt(event, at); {
 		case margin == 0:
 			return at
 		case margin > 0:

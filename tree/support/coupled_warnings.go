@@ -17,7 +17,7 @@ const (
 )
 
 // BackFlow tells whether flow through the pump reverses within the beat.
-func (s *CoupledState) BackFlow() bool { return s.Speed > 0 && s.PumpFlow.Min < 0 }
+func (s CoupledState) BackFlow() bool { return s.Speed > 0 && s.PumpFlow.Min < 0 }
 
 // suction tells whether the ventricle is emptied to near V0, or its pressure
 // falls below 0.
@@ -52,7 +52,7 @@ func (k *Coupled) warnings(s *CoupledState) []data.Warning {
 }
 
 // name says which state a warning speaks of.
-func (s *CoupledState) name() string {
+func (s CoupledState) name() string {
 	if s.Speed == 0 {
 		return "without a pump"
 	}

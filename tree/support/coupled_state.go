@@ -1,0 +1,83 @@
+package support
+
+import (
+	"math"
+
+	"afterbeat/data"
+	"afterbeat/data/unit"
+)
+
+// CoupledState is the periodic state of ventricle, pump and load at one speed.
+type CoupledState struct {
+	Speed   float64 // 1000/min; 0: no pump
+	Beats   int     // integrated to find it
+	Settled bool
+
+	Arterial    Range   // Pao, mmHg
+	PumpFlow    Range   // mL/s
+	ValveFlow   Range   // through the aortic valve, mL/s
+	ValveOpen   float64 // s a beat
+	ValveOpened bool
+	Volume      Range   // of the ventricle, mL
+	Ventricular Range   // Plv, mmHg
+	Filling     float64 // Pfill, mmHg
+	StrokeWork  float64 // int Plv (Qav + Qp - Qmv) dt, mmHg mL
+	EEP, SHE    float64 // mmHg, erg/cm³; the flow is Qav + Qp
+	Energy      CoupledEnergy
+	Suction     bool // V within 2 mL of V0, or Plv below 0
+	Warnings    []data.Warning
+
+	start vector // of the beat
+}
+
+// PulsePressure is max - min of arterial pressure, mmHg.
+func (s CoupledState) PulsePressure() float64 { return s.Arterial.Swing() }
+
+// Flow is the mean flow into the arteries, mL/s.
+func (s CoupledState) Flow() float64 { return s.PumpFlow.Mean + s.ValveFlow.Mean }
+
+// CoupledEnergy is where the energy of a beat comes from and where it goes,
+// mmHg mL.
+type CoupledEnergy struct {
+	Filling, Ventricle, Pump                float64 // sources
+	Mitral, Aortic, Cannula, Zc, R, Outflow float64 // sinks
+}
+
+// Sinks is the energy that is lost or passed on in a beat, mmHg mL.
+func (e CoupledEnergy) Sinks() float64 {
+	return e.Mitral + e.Aortic + e.Cannula + e.Zc + e.R + e.Outflow
+}
+
+// littleEnergy is less than the energy of a beat that means something, mmHg mL:
+// a beat of a person has thousands.
+const littleEnergy = 10
+
+// Balance is (sources - sinks)/sinks; NaN where next to nothing flows.
+func (e CoupledEnergy) Balance() float64 {
+	sinks := e.Sinks()
+	if sinks < littleEnergy {
+		return math.NaN()
+	}
+	return (e.Filling + e.Ventricle + e.Pump - sinks) / sinks
+}
+
+// stateOf reads a state from the books of its beat.
+func (k *Coupled) stateOf(o orbit, speed float64, b *books) CoupledState {
+	surplus := b.surplus()
+	s := CoupledState{
+		Speed: speed, Beats: o.beats, Settled: o.settled, start: o.start,
+		Arterial: b.of(sigPao), PumpFlow: b.of(sigPump), ValveFlow: b.of(sigValve),
+		Volume: b.of(sigVolume), Ventricular: b.of(sigPlv), Filling: o.start[out],
+		StrokeWork: b.power[powVentricle],
+		EEP:        b.of(sigPao).Mean + surplus, SHE: unit.DynPerMmHg * surplus,
+		Energy: CoupledEnergy{
+			Filling: b.power[powFilling], Ventricle: b.power[powVentricle], Pump: b.power[powHead],
+			Mitral: b.power[powMitral], Aortic: b.power[powAortic], Cannula: b.power[powCannula],
+			Zc: b.power[powZc], R: b.power[powR], Outflow: b.power[powOutflow],
+		},
+	}
+	s.ValveOpen, s.ValveOpened = b.opening()
+	s.Suction = k.suction(&s)
+	s.Warnings = k.warnings(&s)
+	return s
+}
