@@ -195,8 +195,8 @@ func (m Model) progress(msg tickMsg) (Model, tea.Cmd) {
 
 func (j job) words() string {
 	if j.stage == study.StageDone {
-		return "reading the recording 1/5, esc cancels"
+		return "reading the recording 1/6, esc cancels"
 	}
-	at := map[study.Stage]int{study.StageIntake: 2, study.StageBeats: 3, study.StageFit: 4, study.StageSupport: 5}[j.stage]
-	return fmt.Sprintf("computing %s %d/5, esc cancels", j.stage, at)
+	at := map[study.Stage]int{study.StageIntake: 2, study.StageBeats: 3, study.StageFit: 4, study.StageSupport: 5, study.StageForecast: 6}[j.stage]
+	return fmt.Sprintf("computing %s %d/6, esc cancels", j.stage, at)
 }

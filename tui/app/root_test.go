@@ -41,7 +41,7 @@ func TestEveryStageIsShownAtOnce(t *testing.T) {
 			seen = append(seen, p)
 		}
 	}
-	want := []study.Stage{study.StageIntake, study.StageBeats, study.StageFit, study.StageSupport, study.StageDone}
+	want := []study.Stage{study.StageIntake, study.StageBeats, study.StageFit, study.StageSupport, study.StageForecast, study.StageDone}
 	if len(seen) != len(want) {
 		t.Errorf("shown with pending %v, want %v", seen, want)
 	}
@@ -259,10 +259,10 @@ func TestOnlyWhatAChangeBearsOnIsComputed(t *testing.T) {
 		loads  int
 		stages int
 	}{
-		{func(c *casefile.Case) { c.Share = []float64{0.3} }, 0, 1},
-		{func(c *casefile.Case) { c.Model = "wk2" }, 0, 2},
-		{func(c *casefile.Case) { c.Invert = []string{"x"} }, 0, 4},
-		{func(c *casefile.Case) { c.Unit = map[string]string{"x": "kPa"} }, 1, 4},
+		{func(c *casefile.Case) { c.Share = []float64{0.3} }, 0, 2},
+		{func(c *casefile.Case) { c.Model = "wk2" }, 0, 3},
+		{func(c *casefile.Case) { c.Invert = []string{"x"} }, 0, 5},
+		{func(c *casefile.Case) { c.Unit = map[string]string{"x": "kPa"} }, 1, 5},
 		{func(c *casefile.Case) { c.Label = "p-1" }, 0, 0},
 	} {
 		loads, stages = 0, nil
@@ -289,13 +289,13 @@ func TestProgressAndCancel(t *testing.T) {
 		t.Error("progress in the first moments")
 	}
 	d.send(tickMsg{d.m.job.number})
-	d.wantStatus("reading the recording 1/5, esc cancels")
+	d.wantStatus("reading the recording 1/6, esc cancels")
 	for d.m.study.Beats == nil {
 		d.step(0)
 	}
 	d.wantStatus("reading") // no sooner than the next tick
 	d.send(tickMsg{d.m.job.number})
-	d.wantStatus("computing fit 4/5, esc cancels")
+	d.wantStatus("computing fit 4/6, esc cancels")
 	ctx := d.m.job.ctx
 	d.keys("esc")
 	if ctx.Err() == nil || d.m.job.running {
