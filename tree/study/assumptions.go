@@ -30,6 +30,8 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 			if !hasFlow {
 				continue
 			}
+		case "filling-slope": // stands with the ventricle
+			continue
 		case "diameter", "angle":
 			if !velocity {
 				continue

@@ -1,8 +1,6 @@
 package study
 
 import (
-	"context"
-
 	"afterbeat/data"
 	"afterbeat/tree/pump"
 	"afterbeat/tree/support"
@@ -111,13 +109,3 @@ type PublishedCheck struct {
 
 // Inside tells whether the value lies in the range; a missing value does not.
 func (p PublishedCheck) Inside() bool { return p.Value >= p.Low && p.Value <= p.High }
-
-// Predict computes the forecast from a comparison.
-func Predict(ctx context.Context, c Comparison) (Forecast, error) {
-	f := Forecast{Comparison: c}
-	if err := ctx.Err(); err != nil {
-		return f, err
-	}
-	f.Reason = "the forecast is not computed yet"
-	return f, nil
-}

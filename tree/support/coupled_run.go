@@ -15,6 +15,7 @@ type run struct {
 	least     [3]float64 // of each margin, over the stages of a step
 	size      float64    // of the next step, s
 	books     *books     // nil: nobody asks
+	tape      *tape      // nil: nobody asks
 }
 
 // The most steps and events of one beat: far more than a beat needs, so that
@@ -102,6 +103,9 @@ func (r *run) accept(end, corner float64) {
 	s := &r.step
 	if r.books != nil {
 		r.books.add(r)
+	}
+	if r.tape != nil {
+		r.tape.add(r)
 	}
 	s.t = end
 	if corner-end < 1e-12*r.heart.Period {
