@@ -87,7 +87,7 @@ func TestOver(t *testing.T) {
 			t.Errorf("line of %q is %d, want %d", key, got.Line(key), line)
 		}
 	}
-	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 32 {
+	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 36 {
 		t.Errorf("the case below has changed (-want +got)\n%s", d)
 	}
 }

@@ -70,6 +70,10 @@ type ForecastState struct {
 	PumpSwing      data.Estimate // max - min of pump flow, mL/s; 0 at speed 0
 	PressureChange data.Estimate // of the mean, against the native state of the model, mmHg
 	OutputChange   data.Estimate // mL/s
+	// Powers into the arteries, mmHg mL/s; InputPower is the other two together.
+	InputPower, SteadyPower, PulsatilePower data.Estimate
+	// Against sets the state against the native one of the model, in full.
+	Against support.Comparison
 	// ValveOpenDraws is the share of the draws in which the aortic valve opens,
 	// 0 to 1; that of the nominal state (0 or 1) where there are none.
 	ValveOpenDraws float64
@@ -83,6 +87,9 @@ type ForecastSensitivity struct {
 	RetainedPulse float64
 	Difference    float64 // against the nominal one
 	PulsePressure float64 // mmHg
+	// Beyond tells that the move goes beyond the error of the assumption: it is
+	// shown, and not ranked.
+	Beyond bool
 }
 
 // Mismatch is a quantity of the native state as measured and as the model has it.

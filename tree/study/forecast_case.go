@@ -108,7 +108,7 @@ const (
 func freeOf(c casefile.Case, strokeVolume float64) (free, error) {
 	f := free{
 		pfill: freeRange{8, 28}, v0: freeRange{0, 30}, edv: freeRange{110, 300}, rmv: freeRange{0.005, 0.03}, rav: freeRange{0.002, 0.02},
-		volumeOrigin: data.Assumed, volumeWhy: "arterial traces do not fix it; drawn evenly from this range",
+		volumeOrigin: data.Assumed, volumeWhy: "not fixed by the traces; drawn evenly",
 	}
 	if ef := c.EF; ef != nil {
 		if !(*ef > fractionError && *ef < 1-fractionError) {

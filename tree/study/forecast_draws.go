@@ -1,6 +1,7 @@
 package study
 
 import (
+	"cmp"
 	"context"
 	"math"
 	"math/rand/v2"
@@ -74,6 +75,21 @@ type drawing struct {
 	nominal    patient
 	choice     choice
 	slopeError float64 // relative 95 % half-width
+	chosen     []int   // of the total replicates: evenly spread over the scales of flow
+}
+
+// choose picks count of the total replicates, evenly spread over what matters
+// most of them, the error of the flow.
+func (d *drawing) choose(count int) {
+	all := d.replicates.Total
+	ranks := make([]int, len(all))
+	for i := range ranks {
+		ranks[i] = i
+	}
+	slices.SortStableFunc(ranks, func(a, b int) int { return cmp.Compare(all[a].FlowScale, all[b].FlowScale) })
+	for i := range count {
+		d.chosen = append(d.chosen, ranks[(2*i+1)*len(all)/(2*count)])
+	}
 }
 
 // random is draw i of random error alone: the ventricle at the nominal point.
@@ -87,7 +103,7 @@ func (d *drawing) random(i int) draw {
 // depends on i and the seed alone, not on who draws it or when.
 func (d *drawing) total(i int) draw {
 	rng := newRand(d.seed, 1000+uint64(i))
-	p := d.patient(d.replicates.Total[i])
+	p := d.patient(d.replicates.Total[d.chosen[i]])
 	slope := max(0, heart.RampSlope*(1+d.slopeError/z95*rng.NormFloat64()))
 	ranges, err := freeOf(d.forecast.caseOf(), p.strokeVolume)
 	if err != nil {
@@ -124,6 +140,9 @@ const (
 	drawnFilling
 	drawnOpen
 	drawnSwing
+	drawnRootSwing
+	drawnSteady
+	drawnPulsatile
 	drawnNumbers
 )
 
@@ -133,6 +152,7 @@ func drawnOf(s *support.CoupledState) drawn {
 	return drawn{
 		drawnMean: s.Arterial.Mean, drawnOutput: s.Flow(), drawnPulse: s.PulsePressure(),
 		drawnSHE: s.SHE, drawnEEP: s.EEP, drawnFilling: s.Filling, drawnOpen: s.ValveOpen, drawnSwing: s.PumpFlow.Swing(),
+		drawnRootSwing: s.RootFlow.Swing(), drawnSteady: s.Arterial.Mean * s.Flow(), drawnPulsatile: (s.EEP - s.Arterial.Mean) * s.Flow(),
 	}
 }
 

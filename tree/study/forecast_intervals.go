@@ -20,6 +20,7 @@ func (f *Forecast) intervals(ctx context.Context, d *drawing, k support.Coupling
 	if err != nil {
 		return err
 	}
+	d.choose(count)
 	total, err := d.rows(ctx, count, d.total)
 	if err != nil {
 		return err
@@ -110,7 +111,7 @@ func (f *Forecast) ventricle(k support.Coupling, d *drawing, random, total []row
 			doubt(&e, random, total, of)
 		}
 		if width := e.Total.Width(); width > math.Abs(value) {
-			e.Identified, e.Why = false, "it depends on what arterial traces do not fix"
+			e.Identified, e.Why = false, "it follows from what the traces do not fix"
 		}
 		f.Ventricle = append(f.Ventricle, VentricleParameter{symbol, meaning, unit, e, data.Estimated})
 	}
@@ -119,7 +120,7 @@ func (f *Forecast) ventricle(k support.Coupling, d *drawing, random, total []row
 			Value: value, Total: data.Interval{Low: r.low, High: r.high}, Random: data.NoInterval(), Identified: o == data.Measured, Why: why,
 		}, o})
 	}
-	const why = "arterial traces do not fix it; drawn evenly from this range"
+	const why = "not fixed by the traces; drawn evenly"
 	period := data.Exact(v.Period)
 	f.Ventricle = append(f.Ventricle, VentricleParameter{"T", "heart period", "s", period, data.Measured})
 	set("Emax", "end-systolic elastance", "mmHg/mL", v.Emax, func(r *row) float64 { return r.ventricle.Emax })

@@ -187,6 +187,7 @@ func (s *ForecastState) take(now, native drawn) {
 	for _, e := range s.estimates() {
 		*e.into = data.Estimate{Value: e.of(now, native), Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: noDraws}
 	}
+	s.Against.Posing = support.CoupledPosing
 	s.ValveOpenDraws = 0
 	if s.ValveOpened {
 		s.ValveOpenDraws = 1
@@ -201,6 +202,10 @@ type drawnEstimate struct {
 }
 
 func (s *ForecastState) estimates() []drawnEstimate {
+	c := &s.Against
+	retained := func(i int) func(drawn, drawn) float64 {
+		return func(now, native drawn) float64 { return ratio(now[i], native[i]) }
+	}
 	number := func(i int) func(drawn, drawn) float64 { return func(now, _ drawn) float64 { return now[i] } }
 	change := func(i int) func(drawn, drawn) float64 {
 		return func(now, native drawn) float64 { return now[i] - native[i] }
@@ -209,7 +214,7 @@ func (s *ForecastState) estimates() []drawnEstimate {
 		{&s.MeanPressure, number(drawnMean)},
 		{&s.Output, number(drawnOutput)},
 		{&s.PulsePressure, number(drawnPulse)},
-		{&s.RetainedPulse, func(now, native drawn) float64 { return now[drawnPulse] / native[drawnPulse] }},
+		{&s.RetainedPulse, retained(drawnPulse)},
 		{&s.EEPressure, number(drawnEEP)},
 		{&s.SurplusEnergy, number(drawnSHE)},
 		{&s.FillingPress, number(drawnFilling)},
@@ -217,7 +222,28 @@ func (s *ForecastState) estimates() []drawnEstimate {
 		{&s.PumpSwing, number(drawnSwing)},
 		{&s.PressureChange, change(drawnMean)},
 		{&s.OutputChange, change(drawnOutput)},
+		{&s.InputPower, func(now, _ drawn) float64 { return now[drawnSteady] + now[drawnPulsatile] }},
+		{&s.SteadyPower, number(drawnSteady)},
+		{&s.PulsatilePower, number(drawnPulsatile)},
+		{&c.RetainedPressure, retained(drawnPulse)},
+		{&c.RetainedFlow, retained(drawnRootSwing)},
+		{&c.RetainedPI, func(now, native drawn) float64 {
+			return ratio(now[drawnRootSwing]/now[drawnOutput], native[drawnRootSwing]/native[drawnOutput])
+		}},
+		{&c.RetainedSHE, retained(drawnSHE)},
+		{&c.RetainedPower, retained(drawnPulsatile)},
+		{&c.FlowAmplitude, func(now, native drawn) float64 { return ratio(native[drawnRootSwing], now[drawnRootSwing]) }},
+		{&c.PulsatilePower, func(now, native drawn) float64 { return ratio(native[drawnPulsatile], now[drawnPulsatile]) }},
+		{&c.MeanPressureChange, change(drawnMean)},
 	}
+}
+
+// ratio is a/b, NaN unless b is positive.
+func ratio(a, b float64) float64 {
+	if !(b > 0) {
+		return math.NaN()
+	}
+	return a / b
 }
 
 // mismatch sets the native state of the model beside the average beat.

@@ -18,6 +18,7 @@ type forecastMove struct {
 	patient            patient
 	choice             choice
 	slope              float64
+	beyond             bool
 	// supported changes what is held only natively; nil: nothing.
 	supported func(*support.Coupling)
 }
@@ -40,7 +41,7 @@ func (f *Forecast) sensitivities(d *drawing, nominal support.Coupling) ([]Foreca
 		if err != nil {
 			return nil, err
 		}
-		out = append(out, ForecastSensitivity{Assumption: m.assumption, Change: m.change, RetainedPulse: left, Difference: left - retained, PulsePressure: pulse})
+		out = append(out, ForecastSensitivity{Assumption: m.assumption, Change: m.change, RetainedPulse: left, Difference: left - retained, PulsePressure: pulse, Beyond: m.beyond})
 	}
 	slices.SortStableFunc(out, func(a, b ForecastSensitivity) int {
 		return cmp.Compare(math.Abs(b.Difference), math.Abs(a.Difference))
@@ -100,7 +101,7 @@ func (f *Forecast) forecastMoves(d *drawing, nominal support.Coupling) []forecas
 	for _, share := range []float64{-d.slopeError, d.slopeError} {
 		move("filling slope", fmt.Sprintf("%+.0f %%", 100*share), func(m *forecastMove) { m.slope = max(0, m.slope*(1+share)) })
 	}
-	move("filling slope", "0, constant filling", func(m *forecastMove) { m.slope = 0 })
+	move("filling slope", "0, constant filling", func(m *forecastMove) { m.slope, m.beyond = 0, true })
 	f.movesOfRanges(d, move)
 	mean := f.Speeds[f.Middle].Arterial.Mean
 	move("compliance", fmt.Sprintf("C at %.0f mmHg", mean), func(m *forecastMove) {

@@ -114,7 +114,7 @@ func (f *Forecast) heaviest(n int) []ForecastSensitivity {
 	var out []ForecastSensitivity
 	seen := map[string]bool{}
 	for _, s := range f.Sensitivity {
-		if !seen[s.Assumption] && len(out) < n {
+		if !seen[s.Assumption] && !s.Beyond && len(out) < n {
 			seen[s.Assumption] = true
 			out = append(out, s)
 		}

@@ -32,14 +32,10 @@ func (k *Coupled) Waves(speed float64, samples int) (Waves, error) {
 	s.beat(&y)
 	s.tape = nil
 	period := func(signal int) data.Period { return data.Period{Samples: t.signals[signal], Rate: 1 / t.step} }
-	w := Waves{
-		Pressure: period(sigPao), RootFlow: period(sigValve), PumpFlow: period(sigPump),
+	return Waves{
+		Pressure: period(sigPao), RootFlow: period(sigRoot), PumpFlow: period(sigPump),
 		Ventricular: period(sigPlv), Volume: period(sigVolume),
-	}
-	for j := range w.RootFlow.Samples {
-		w.RootFlow.Samples[j] += w.PumpFlow.Samples[j]
-	}
-	return w, nil
+	}, nil
 }
 
 // tape reads the signals at even steps while a beat is integrated.
