@@ -181,6 +181,9 @@ func (m Model) start(s tui.Stage) Model {
 func (m Model) cancel() Model {
 	m = m.halt()
 	m.said = data.Clean("stopped; the digit of a stage in ( ) computes on")
+	if m.job.stage == study.StageForecast {
+		m.said = data.Clean("stopped; 5 or 6 computes the forecast")
+	}
 	return m
 }
 

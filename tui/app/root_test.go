@@ -488,3 +488,34 @@ func TestSmall(t *testing.T) {
 		t.Error("q does not quit")
 	}
 }
+
+// A forecast that was stopped is computed on where it is shown: the yardsticks
+// are there, so that the stage is not missing.
+func TestStoppedForecastGoesOn(t *testing.T) {
+	for _, c := range []struct {
+		digit string
+		on    bool
+	}{{"3", false}, {"5", true}, {"6", true}} {
+		d := newDriver(t, nil)
+		d.hold = true
+		d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+		d.send(startMsg{})
+		for d.m.study.Comparison == nil {
+			d.step(0)
+		}
+		d.send(tickMsg{d.m.job.number})
+		d.wantStatus("computing forecast 6/6, esc cancels")
+		d.keys("esc")
+		d.wantStatus("5 or 6 computes the forecast")
+		d.hold = false
+		d.run()
+		if d.m.study.Forecast != nil {
+			t.Fatal("computed on after esc")
+		}
+		d.keys(c.digit)
+		d.run()
+		if (d.m.study.Forecast != nil) != c.on {
+			t.Errorf("after %s there is a forecast: %v", c.digit, !c.on)
+		}
+	}
+}
