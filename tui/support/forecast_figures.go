@@ -44,15 +44,39 @@ func none() data.Estimate {
 // coupledFigures are the first of them, at most so many, under their head.
 func (m Model) coupledFigures(most int) []string {
 	out := []string{m.across("", "native model (95 %)", "supported (95 %)", "change; pulse: retained")}
+	if m.narrow() {
+		out[0] = m.briefly("", "native", "supported (95 %)")
+	}
 	list := m.forecastFigures()
 	for _, f := range list[:min(most, len(list))] {
-		native := estimate(f.native)
-		if math.IsNaN(f.native.Value) {
-			native = "-"
-		}
-		out = append(out, m.across(f.label, native, estimate(f.supported), f.change))
+		out = append(out, m.line(f))
 	}
 	return out
+}
+
+// line is a figure in print. Where two intervals have no room beside one another,
+// that of the native model is left out; m and f on a wider screen have it.
+func (m Model) line(f forecastFigure) string {
+	native := estimate(f.native)
+	switch {
+	case math.IsNaN(f.native.Value):
+		native = "-"
+	case m.narrow() && f.native.Identified:
+		native = casenote.Format(f.native.Value, f.native.Total)
+	}
+	if m.narrow() {
+		return m.briefly(f.label, native, estimate(f.supported))
+	}
+	return m.across(f.label, native, estimate(f.supported), f.change)
+}
+
+// narrow tells that two intervals have no room beside one another.
+func (m Model) narrow() bool { return m.area.Width < labelCells+2*estimateCells }
+
+func (m Model) briefly(label, native, supported string) string {
+	const nativeCells = 10
+	cell := func(s string, n int) string { return layout.Pad(layout.Clean(s, m.theme), max(n, 0)) }
+	return cell(label, labelCells) + cell(native, nativeCells-1) + " " + cell(supported, m.area.Width-labelCells-nativeCells)
 }
 
 // scaledBy is an estimate in another unit.
@@ -126,8 +150,8 @@ func (m Model) coupledEnergy() []string {
 		out = append(out, m.across(r.label, milliwatts(r.of(n)), milliwatts(r.of(s)), ""))
 	}
 	out = append(out,
-		m.across("EEP, mmHg", estimate(n.EEPressure), estimate(s.EEPressure), ""),
-		m.across("surplus, erg/cm3", estimate(n.SurplusEnergy), estimate(s.SurplusEnergy), ""))
+		m.line(forecastFigure{label: "EEP, mmHg", native: n.EEPressure, supported: s.EEPressure}),
+		m.line(forecastFigure{label: "surplus, erg/cm3", native: n.SurplusEnergy, supported: s.SurplusEnergy}))
 	words := "Powers are those of the nominal state, without intervals. That of the pump is head times flow: its motor draws more. Ventricle and filling are what they give to the blood."
 	return append(out, layout.Wrap(layout.Clean(words, m.theme), m.area.Width)...)
 }
