@@ -1,6 +1,7 @@
 package study
 
 import (
+	"errors"
 	"fmt"
 	"math"
 
@@ -16,6 +17,7 @@ func (f *Forecast) published(k *support.Coupled) ([]PublishedCheck, error) {
 	p.paired()
 	p.step()
 	p.atFive()
+	p.power()
 	p.valve()
 	return p.all, p.err
 }
@@ -32,9 +34,7 @@ type publishing struct {
 // at is the state at a speed.
 func (p *publishing) at(speed float64) drawn {
 	s, err := p.coupled.At(speed)
-	if err != nil && p.err == nil {
-		p.err = err
-	}
+	p.err = errors.Join(p.err, err)
 	return drawnOf(&s)
 }
 
@@ -108,17 +108,23 @@ func (p *publishing) step() {
 func (p *publishing) atFive() {
 	const output = 5 / litresPerMinute // mL/s
 	speed, why := p.where(output)
-	pulse, power, where := math.NaN(), math.NaN(), "output 5 L/min"
+	pulse, where := math.NaN(), "output 5 L/min"
 	if why == "" {
 		pulse, where = p.at(speed)[drawnPulse], fmt.Sprintf("output 5 L/min, at %.3g", speed)
-		w, err := p.coupled.Waves(speed, len(p.forecast.Native.Waves.Pressure.Samples))
-		if err != nil && p.err == nil {
-			p.err = err
-		}
-		power = beat.Measure(w.Pressure).PulsatilePower
 	}
 	p.add("pulse pressure", "mmHg", where, pulse, 3, 31, sourceHigh, why)
-	p.add("pulsatile power index, pressure", "", where, power, 0.001, 0.02, sourcePower, why)
+}
+
+// power holds the pulsatile power index of pressure in the middle of the pump's
+// range against patients at the speeds they live with.
+func (p *publishing) power() {
+	speed := (p.forecast.Pump.Low + p.forecast.Pump.High) / 2
+	w, err := p.coupled.Waves(speed, len(p.forecast.Native.Waves.Pressure.Samples))
+	if err != nil {
+		p.err = errors.Join(p.err, err)
+		return
+	}
+	p.add("pulsatile power index, pressure", "", fmt.Sprintf("%.3g", speed), beat.Measure(w.Pressure).PulsatilePower, 0.001, 0.02, sourcePower, "")
 }
 
 // valve holds the valve limit against the range of the pump.
