@@ -45,7 +45,7 @@ func (f Forecast) ventricleSection() casenote.Section {
 	for _, p := range f.Ventricle {
 		s.Rows = append(s.Rows, casenote.Quantity(p.Symbol+", "+p.Meaning, p.Estimate, p.Unit, p.Origin))
 	}
-	t := casenote.Table{Header: []string{"native state", "measured", "of the model", "model less measured, %"}, Foot: f.mismatchWords()}
+	t := casenote.Table{Header: []string{"native state, unit", "measured, in it", "of the model, in it", "model less measured, %"}, Foot: f.mismatchWords()}
 	for _, m := range f.Mismatch {
 		t.Rows = append(t.Rows, []casenote.Cell{
 			{Words: data.Clean(m.Quantity + ", " + m.Unit)}, plain(m.Measured), plain(m.Modelled), plain(rounded(m.Percent())),
@@ -191,14 +191,25 @@ func (f Forecast) valveSection() casenote.Section {
 	}
 }
 
+// shownMove is the least change of the retained pulse that the note lists.
+const shownMove = 0.01
+
 // leaningSection says what the forecast depends on, and what would prove it
 // wrong.
 func (f Forecast) leaningSection() casenote.Section {
-	t := casenote.Table{Header: []string{"assumption", "change", "retained pulse", "difference"}}
+	t := casenote.Table{Header: []string{"assumption", "change", "retained pulse", "retained pulse, difference"}}
+	small := 0
 	for _, s := range f.Sensitivity {
+		if math.Abs(s.Difference) < shownMove {
+			small++
+			continue
+		}
 		t.Rows = append(t.Rows, []casenote.Cell{
 			{Words: data.Clean(s.Assumption)}, {Words: data.Clean(s.Change)}, plain(s.RetainedPulse), plain(s.Difference),
 		})
+	}
+	if small > 0 {
+		t.Foot = fmt.Sprintf("%d further moves change it by less than %g.", small, shownMove)
 	}
 	middle := f.Speeds[f.Middle]
 	return casenote.Section{
@@ -223,7 +234,7 @@ func (f Forecast) heaviestWords() string {
 }
 
 func (f Forecast) publishedSection() casenote.Section {
-	t := casenote.Table{Header: []string{"number", "at, 1000/min", "forecast", "published", ""}}
+	t := casenote.Table{Header: []string{"number, unit", "at, 1000/min", "forecast, in it", "published", ""}}
 	var sources []string
 	number := map[string]int{}
 	for _, p := range f.Published {

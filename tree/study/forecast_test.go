@@ -81,9 +81,9 @@ func patients() map[string]coupledPatient {
 			support.Coupling{
 				Ventricle: heart.Ventricle{Period: 0.8, V0: 8, Rmv: 0.01, Rav: 0.006},
 				Filling:   heart.Filling{Pressure: 21, Slope: heart.RampSlope},
-				Load:      support.Windkessel{Kind: support.WK3, Values: fitting.Values{R: 1.35, C: 0.85, Zc: 0.1}, OutflowPressure: 8},
+				Load:      support.Windkessel{Kind: support.WK3, Values: fitting.Values{R: 1.2, C: 0.9, Zc: 0.1}, OutflowPressure: 8},
 			},
-			support.Ejection{StrokeVolume: 42, Time: 0.28, EndDiastolic: 150},
+			support.Ejection{StrokeVolume: 47, Time: 0.28, EndDiastolic: 150},
 		},
 		"compliant dilated heart": {
 			support.Coupling{

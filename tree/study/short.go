@@ -3,6 +3,7 @@ package study
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"afterbeat/data"
 	"afterbeat/data/beat"
@@ -33,8 +34,7 @@ func (s Study) shortSection() casenote.Section {
 	}
 	if s.Forecast != nil && s.Forecast.Reason == "" {
 		out.Words = words(s.Forecast.shortWords())
-		out.Rows = append(out.Rows, s.Forecast.shortRows()...)
-		out.Rows = append(out.Rows, s.Comparison.shortRows()...)
+		out.Rows = slices.Concat(s.Forecast.shortRows(), s.Comparison.shortRows(), out.Rows)
 	} else if s.Comparison != nil && s.Comparison.Reason == "" {
 		out.Words = []data.Text{data.Clean("The retained pulse is that of a yardstick without a ventricle, no forecast; its interval holds if the posing did. Each line has its place below.")}
 		out.Rows = append(out.Rows, s.Comparison.shortRows()...)

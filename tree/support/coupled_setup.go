@@ -76,6 +76,7 @@ type setUp struct {
 	ejection Ejection
 	active   []int
 	x        [setUpSize]float64
+	slopes   [setUpSize][setUpSize]float64
 	books    books
 }
 
@@ -138,28 +139,60 @@ func (s *setUp) miss(x *[setUpSize]float64) (m [setUpSize]float64, ok bool) {
 // scales of the unknowns, for differences and steps.
 var setUpScale = [setUpSize]float64{startVol: 100, startPc: 100, startQx: 100, lnEmax: 1, lnEmin: 1, endSystole: 0.3}
 
-// newton draws nearer until what is asked is met, or fails.
+// newton draws nearer until what is asked is met, or fails: with slopes by
+// differences at the start and where it gets on badly, and Broyden's updates in
+// between (see [shooter]).
 func (s *setUp) newton() bool {
 	m, ok := s.miss(&s.x)
-	for round := 0; ok && round < 30; round++ {
+	known := false
+	for round := 0; ok && round < 60; round++ {
 		far := s.worst(&m)
 		if far < met {
 			s.place(&s.x)
 			return true
 		}
-		var slopes [setUpSize][setUpSize]float64
-		if slopes, ok = s.slopes(&m); !ok {
+		if !known && !s.differences(&m) {
 			return false
 		}
-		move, solved := s.solve(&slopes, &m)
+		move, solved := s.solve(&m)
 		if !solved {
 			return false
 		}
+		before, was := s.x, m
 		if m, ok = s.along(&move, far); !ok {
-			return false
+			if !known {
+				return false
+			}
+			s.x, m, ok, known = before, was, true, false
+			continue
 		}
+		known = s.worst(&m) < 0.3*far
+		s.update(&before, &was, &m)
 	}
 	return false
+}
+
+// update is Broyden's: the slopes that explain the last move and differ least
+// from the old ones, in the units of the scales.
+func (s *setUp) update(before, was, m *[setUpSize]float64) {
+	length := 0.0
+	var along [setUpSize]float64
+	for _, k := range s.active {
+		along[k] = (s.x[k] - before[k]) / setUpScale[k]
+		length += square(along[k])
+	}
+	if length == 0 {
+		return
+	}
+	for _, row := range s.active {
+		off := m[row] - was[row]
+		for _, col := range s.active {
+			off -= s.slopes[row][col] * along[col]
+		}
+		for _, col := range s.active {
+			s.slopes[row][col] += off * along[col] / length
+		}
+	}
 }
 
 // along takes the move, or the part of it after which x misses by less.
@@ -184,30 +217,30 @@ func (s *setUp) along(move *[setUpSize]float64, far float64) (m [setUpSize]float
 	return m, false
 }
 
-// slopes of the misses by differences: row, column.
-func (s *setUp) slopes(m *[setUpSize]float64) (slopes [setUpSize][setUpSize]float64, ok bool) {
+// differences fills the slopes of the misses: row, column, in the units of the
+// scales.
+func (s *setUp) differences(m *[setUpSize]float64) bool {
 	for _, col := range s.active {
-		step := nudge * setUpScale[col]
 		at := s.x
-		at[col] += step
+		at[col] += nudge * setUpScale[col]
 		there, ok := s.miss(&at)
 		if !ok {
-			return slopes, false
+			return false
 		}
 		for _, row := range s.active {
-			slopes[row][col] = (there[row] - m[row]) / step
+			s.slopes[row][col] = (there[row] - m[row]) / nudge
 		}
 	}
-	return slopes, true
+	return true
 }
 
 // solve gives the move that takes the misses away, by elimination with pivoting.
-func (s *setUp) solve(slopes *[setUpSize][setUpSize]float64, m *[setUpSize]float64) (move [setUpSize]float64, ok bool) {
+func (s *setUp) solve(m *[setUpSize]float64) (move [setUpSize]float64, ok bool) {
 	n := len(s.active)
 	var a [setUpSize][setUpSize + 1]float64
 	for i, row := range s.active {
 		for j, col := range s.active {
-			a[i][j] = slopes[row][col] * setUpScale[col]
+			a[i][j] = s.slopes[row][col]
 		}
 		a[i][n] = -m[row]
 	}

@@ -163,3 +163,14 @@ func TestValveLimitIsWhereTheValveStaysShut(t *testing.T) {
 		t.Errorf("between two speeds at which it is shut: %v, %v", none, err)
 	}
 }
+
+func BenchmarkSetUp(b *testing.B) {
+	c, e := setUpCase(WK3)
+	c.Tolerance = 1e-7
+	b.ReportAllocs()
+	for b.Loop() {
+		if _, err := SetUp(c, e); err != nil {
+			b.Fatal(err)
+		}
+	}
+}
