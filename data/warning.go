@@ -49,6 +49,10 @@ const (
 	CodeLittleFlow    Code = "little-pump-flow"
 	CodeSuction       Code = "suction"
 	CodeValveShut     Code = "valve-shut"
+	CodePublished     Code = "outside-published"
+	CodeNativeMiss    Code = "native-state-missed"
+	CodeFewDraws      Code = "few-draws"
+	CodeBeyondPump    Code = "beyond-pump"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -95,5 +99,9 @@ func WarningCodes() []WarningCode {
 		{CodeLittleFlow, "pump flow falls under 0.5 L/min within the beat"},
 		{CodeSuction, "the pump empties the ventricle to near its unstressed volume"},
 		{CodeValveShut, "the aortic valve does not open at any time of the beat"},
+		{CodePublished, "a number of the forecast lies outside the range that is published of patients"},
+		{CodeNativeMiss, "the native state of the model differs from what was measured"},
+		{CodeFewDraws, "few of the drawn ventricles meet the native state, so that intervals are unsure"},
+		{CodeBeyondPump, "a speed lies outside the range in which the pump's coefficients make sense"},
 	}
 }

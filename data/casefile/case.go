@@ -42,6 +42,11 @@ type Case struct {
 	Seed       *int      `key:"seed" value:"N" help:"seed of the replicates"`
 	Share      []float64 `key:"share" value:"0..1" help:"share of the flow that the pump takes"`
 
+	EDVML *float64  `key:"edv_ml" value:"ML" help:"end-diastolic volume of the left ventricle"`
+	EF    *float64  `key:"ef" value:"0..1" help:"ejection fraction of the left ventricle"`
+	Pump  string    `key:"pump" value:"NAME" help:"set of pump coefficients"`
+	Speed []float64 `key:"speed" value:"N" help:"speed of the pump, 1000/min"`
+
 	Remark string `key:"remark" value:"TEXT" help:"a remark at the end of the note"`
 
 	lines map[string]int

@@ -46,6 +46,10 @@ model = "wk3"
 replicates = 2000
 seed = -7
 share = [0, 0.25, 1.0]
+edv_ml = 210
+ef = 0.25
+pump = "generic A"
+speed = [8, 9.5]
 drop = [3.5]
 keep = [7, 8.25]
 remark = "worth a second look"
@@ -79,6 +83,7 @@ func fullCase() Case {
 		OutflowPressure: ptr(0.0), Delay: "0.0125",
 		Error:   map[string]string{"flow": "10%", "cardiac-output": "0.5"},
 		OneBeat: true, Model: "wk3", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
+		EDVML: ptr(210.0), EF: ptr(0.25), Pump: "generic A", Speed: []float64{8, 9.5},
 		Drop: []float64{3.5}, Keep: []float64{7, 8.25}, Remark: "worth a second look",
 	}
 }
@@ -100,8 +105,8 @@ func TestReadEveryKey(t *testing.T) {
 		}
 	}
 	for key, line := range map[string]int{
-		"recording": 2, "invert": 8, "rate": 10, "share": 23, "error.flow": 28, "error.cardiac-output": 29,
-		"site": 31, "site.abp": 32, "site.q.1": 33, "unit.na=me": 36, "offset.abp": 40, "site.other": 0, "": 0,
+		"recording": 2, "invert": 8, "rate": 10, "share": 23, "error.flow": 32, "error.cardiac-output": 33,
+		"site": 35, "site.abp": 36, "site.q.1": 37, "unit.na=me": 40, "offset.abp": 44, "site.other": 0, "": 0,
 	} {
 		if got := c.Line(key); got != line {
 			t.Errorf("line of %q is %d, want %d", key, got, line)
@@ -206,6 +211,7 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		OneBeat: rapid.Bool().Draw(t, "one beat"), Model: word.Draw(t, "model"),
 		Replicates: rapid.Ptr(rapid.Int(), true).Draw(t, "replicates"), Seed: rapid.Ptr(rapid.Int(), true).Draw(t, "seed"),
 		Share: rapid.SliceOfN(rapid.Float64Range(0, 1), 0, 4).Draw(t, "share"),
+		EDVML: optional("volume"), EF: optional("fraction"), Pump: word.Draw(t, "pump"), Speed: rapid.SliceOfN(num, 0, 3).Draw(t, "speed"),
 	}
 })
 

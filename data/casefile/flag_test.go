@@ -13,8 +13,8 @@ func TestArguments(t *testing.T) {
 		"--site abp=root --site q.1=lvot --unit na=me=mL/s --scale abp=1.05 --offset abp=-3 --invert q --invert v "+
 		"--rate 125 --from -1.5 --to 0 --exclude artefacts.csv --diameter-cm 2.1 --angle-deg 20 --profile 1 "+
 		"--outflow-pressure 0 --delay 0.0125 --error cardiac-output=0.5 --error flow=10% --drop 3.5 --keep 7 --keep 8.25 --one-beat --model wk3 "+
-		"--replicates 2000 --seed -7 --share 0 --share 0.25 --share 1", " ")
-	want = append(want, "--remark", "worth a second look")
+		"--replicates 2000 --seed -7 --share 0 --share 0.25 --share 1 --edv-ml 210 --ef 0.25", " ")
+	want = append(want, "--pump", "generic A", "--speed", "8", "--speed", "9.5", "--remark", "worth a second look")
 	if d := cmp.Diff(want, fullCase().Command("study", "-a.csv")); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
@@ -82,12 +82,12 @@ func TestOver(t *testing.T) {
 	if d := diff(want, got); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
-	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 33} {
+	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 37} {
 		if got.Line(key) != line {
 			t.Errorf("line of %q is %d, want %d", key, got.Line(key), line)
 		}
 	}
-	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 32 {
+	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 36 {
 		t.Errorf("the case below has changed (-want +got)\n%s", d)
 	}
 }

@@ -7,6 +7,9 @@ type Set struct {
 	Pump
 	// Low and High bound the speeds, 1000/min, at which the set makes sense.
 	Low, High float64
+	// Centrifugal tells a flat curve at a third of the speeds of an axial one:
+	// by it steps of speed are compared with published ones.
+	Centrifugal bool
 }
 
 // Sets lists the sets of coefficients.
@@ -56,5 +59,6 @@ func genericB() Set {
 		Origin: "invented, flat curve: for the demo",
 		Pump:   Pump{Curve{A: 13.2, C: 0.0042}, 0.1, 0.025},
 		Low:    2, High: 4,
+		Centrifugal: true,
 	}
 }

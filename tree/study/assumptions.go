@@ -32,6 +32,8 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 			if !hasFlow {
 				continue
 			}
+		case "filling-slope": // stands with the ventricle
+			continue
 		case "diameter", "angle":
 			if !parts {
 				continue

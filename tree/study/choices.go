@@ -46,6 +46,7 @@ const (
 	defaultAngleError    = 5.0  // degrees
 	defaultDelayError    = 0.010
 	defaultOutflowError  = 10.0 // mmHg
+	defaultSlopeError    = 0.60 // relative, of the filling slope
 )
 
 // errorKind says how the half-width of one systematic error is written.
@@ -74,6 +75,7 @@ func errorKinds() []errorKind {
 		{"angle", false, "degrees", defaultAngleError},
 		{"delay", false, "s", defaultDelayError},
 		{"outflow-pressure", false, "mmHg", defaultOutflowError},
+		{"filling-slope", true, "%", defaultSlopeError},
 	}
 }
 

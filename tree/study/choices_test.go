@@ -44,11 +44,17 @@ func TestChoicesThatMakeNoSense(t *testing.T) {
 		{"error.delay", "--error", "--error delay=0.01 (s)", func(c *casefile.Case) { c.Error = map[string]string{"delay": "5%"} }},
 		{"error.flow", "--error", "--error flow=10%", func(c *casefile.Case) { c.Error = map[string]string{"flow": "10"} }},
 		{"outflow_pressure", "--outflow-pressure", "venous", func(c *casefile.Case) { c.OutflowPressure = ptr(77.0) }},
-		{"error.filling-slope", "--error", "flow, pressure-scale", func(c *casefile.Case) { c.Error = map[string]string{"filling-slope": "5"} }},
+		{"error.filling-slope", "--error", "--error filling-slope=60%", func(c *casefile.Case) { c.Error = map[string]string{"filling-slope": "5"} }},
+		{"error.cardiac-output", "--error", "flow, pressure-scale", func(c *casefile.Case) { c.Error = map[string]string{"cardiac-output": "5%"} }},
 		{"model", "--model", "wk2, wk3", func(c *casefile.Case) { c.Model = "wk9" }},
 		{"replicates", "--replicates", "1000", func(c *casefile.Case) { c.Replicates = ptr(0) }},
 		{"seed", "--seed", "leave it out", func(c *casefile.Case) { c.Seed = ptr(0) }},
 		{"share", "--share", "--share 0.5", func(c *casefile.Case) { c.Share = []float64{0.5, 1.5} }},
+		{"pump", "--pump", "generic A, generic B", func(c *casefile.Case) { c.Pump = "generic C" }},
+		{"speed", "--speed", "--speed 9", func(c *casefile.Case) { c.Speed = []float64{9, 9000} }},
+		{"speed", "--speed", "--speed 3", func(c *casefile.Case) { c.Pump, c.Speed = "Generic-b", []float64{0} }},
+		{"ef", "--ef", "--ef 0.25", func(c *casefile.Case) { c.EF = ptr(25.0) }},
+		{"edv_ml", "--edv-ml", "--edv-ml 220", func(c *casefile.Case) { c.EDVML = ptr(40.0) }},
 	} {
 		choices := demoCase(t)
 		c.change(&choices)

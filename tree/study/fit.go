@@ -30,7 +30,9 @@ type Fit struct {
 type Sensitivity struct {
 	Assumption string // "outflow-pressure", "delay"
 	Change     string // "+10 mmHg"
-	Values     fitting.Values
+	// By is the same as a number: in mmHg, in s, or relative for the output.
+	By     float64
+	Values fitting.Values
 	// Percent is the change of R, C and Zc, in percent of the chosen fit's.
 	Percent fitting.Values
 }

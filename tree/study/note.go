@@ -25,6 +25,9 @@ func (s Study) Note() casenote.Note {
 	if s.Fit != nil {
 		n.Sections = append(n.Sections, s.Fit.sections()...)
 	}
+	if s.Forecast != nil {
+		n.Sections = append(n.Sections, s.Forecast.sections()...)
+	}
 	if s.Comparison != nil {
 		n.Sections = append(n.Sections, s.Comparison.sections()...)
 	}

@@ -103,6 +103,8 @@ type StateReport struct {
 	SHE            EstimateReport `json:"she"`
 	MeanPressure   EstimateReport `json:"mean_pressure"`
 	PulsePressure  EstimateReport `json:"pulse_pressure"`
+	// Coupled is what only the coupled posing has; null for the others.
+	Coupled *CoupledReport `json:"coupled"`
 }
 
 // RootComparison sets a supported state against the native one at the root.
@@ -128,7 +130,8 @@ type HeldReport struct {
 // ComparisonReport is the comparison of one supported state.
 type ComparisonReport struct {
 	Posing         support.Posing `json:"posing"`
-	Share          Number         `json:"share"`
+	Share          Number         `json:"share"` // null where the posing is coupled
+	Speed          Number         `json:"speed"` // 1000/min; null where it is not
 	ByConstruction bool           `json:"by_construction"`
 	Held           []HeldReport   `json:"held"`
 	Root           RootComparison `json:"root"`
@@ -138,11 +141,15 @@ type ComparisonReport struct {
 type PowerReport struct {
 	Posing    support.Posing    `json:"posing"`
 	Share     Number            `json:"share"`
+	Speed     Number            `json:"speed"`
 	Input     EstimateReport    `json:"input"`
 	Steady    EstimateReport    `json:"steady"`
 	Pulsatile EstimateReport    `json:"pulsatile"`
 	Terms     map[string]Number `json:"terms"`
-	Balance   Number            `json:"balance"`
+	// Sources are what filling, ventricle and pump give; null where the posing is
+	// not coupled.
+	Sources map[string]Number `json:"source"`
+	Balance Number            `json:"balance"`
 }
 
 // EnergyReport is the power of the arterial side, natively and supported.
@@ -168,6 +175,9 @@ type Report struct {
 	// ComparisonReason says why there is no comparison; null where there is one.
 	ComparisonReason *string             `json:"comparison_reason"`
 	Energy           *EnergyReport       `json:"energy"`
+	Ventricle        []VentricleReport   `json:"ventricle"`
+	Pump             *PumpReport         `json:"pump"`
+	Forecast         *ForecastReport     `json:"forecast"`
 	Sensitivity      []SensitivityReport `json:"sensitivity"`
 	Note             string              `json:"note"`
 }

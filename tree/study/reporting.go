@@ -88,15 +88,25 @@ func modelReport(r fitting.Result) ModelReport {
 func (s Study) Report(o casenote.Options) Report {
 	r := Report{
 		FitReport: s.FitReport(), Supported: []StateReport{}, Comparison: []ComparisonReport{},
-		Sensitivity: []SensitivityReport{}, Note: Text(s.Note(), o),
+		Sensitivity: []SensitivityReport{}, Ventricle: []VentricleReport{}, Note: Text(s.Note(), o),
 	}
 	for _, one := range s.Fit.Sensitivity {
 		r.Sensitivity = append(r.Sensitivity, sensitivityReport(one, s.Fit.Results[s.Fit.Chosen].Model))
 	}
-	c := s.Comparison
+	if s.Comparison != nil {
+		s.Comparison.report(&r)
+	}
+	if s.Forecast != nil {
+		s.Forecast.report(&r, siteOfFit(s.Fit.Beats.FlowInfo.Site))
+	}
+	return r
+}
+
+// report puts the comparison into the report.
+func (c *Comparison) report(r *Report) {
 	r.ComparisonReason = reason(c.Reason)
 	if len(c.Answers) == 0 {
-		return r
+		return
 	}
 	site := siteOfFit(c.Fit.Beats.FlowInfo.Site)
 	native := stateReport(c.Native, site)
@@ -109,7 +119,6 @@ func (s Study) Report(o casenote.Options) Report {
 			r.Energy.Supported = append(r.Energy.Supported, powerReport(state))
 		}
 	}
-	return r
 }
 
 func stateReport(s support.State, site data.Site) StateReport {
@@ -148,13 +157,8 @@ func indices() []beat.Index {
 func comparisonReport(a support.Answer, i int) ComparisonReport {
 	c := a.Comparisons[i]
 	r := ComparisonReport{
-		Posing: c.Posing, Share: Number(c.Share), ByConstruction: c.ByConstruction,
-		Root: RootComparison{
-			RetainedPressure: estimateReport(c.RetainedPressure), RetainedFlow: estimateReport(c.RetainedFlow),
-			RetainedPI: estimateReport(c.RetainedPI), RetainedSHE: estimateReport(c.RetainedSHE),
-			RetainedPower: estimateReport(c.RetainedPower), FlowAmplitude: estimateReport(c.FlowAmplitude),
-			PulsatilePower: estimateReport(c.PulsatilePower), MeanPressure: estimateReport(c.MeanPressureChange),
-		},
+		Posing: c.Posing, Share: Number(c.Share), Speed: nan, ByConstruction: c.ByConstruction,
+		Root: rootReport(&c),
 	}
 	for _, h := range a.Held() {
 		r.Held = append(r.Held, HeldReport{h.Quantity, Number(h.Value), h.Unit, h.Origin})
@@ -162,9 +166,18 @@ func comparisonReport(a support.Answer, i int) ComparisonReport {
 	return r
 }
 
+func rootReport(c *support.Comparison) RootComparison {
+	return RootComparison{
+		RetainedPressure: estimateReport(c.RetainedPressure), RetainedFlow: estimateReport(c.RetainedFlow),
+		RetainedPI: estimateReport(c.RetainedPI), RetainedSHE: estimateReport(c.RetainedSHE),
+		RetainedPower: estimateReport(c.RetainedPower), FlowAmplitude: estimateReport(c.FlowAmplitude),
+		PulsatilePower: estimateReport(c.PulsatilePower), MeanPressure: estimateReport(c.MeanPressureChange),
+	}
+}
+
 func powerReport(s support.State) PowerReport {
 	r := PowerReport{
-		Posing: s.Posing, Share: Number(s.Share), Input: estimateReport(s.InputPower), Steady: estimateReport(s.SteadyPower),
+		Posing: s.Posing, Share: Number(s.Share), Speed: nan, Input: estimateReport(s.InputPower), Steady: estimateReport(s.SteadyPower),
 		Pulsatile: estimateReport(s.PulsatilePower), Terms: map[string]Number{}, Balance: Number(s.Ledger.Balance()),
 	}
 	for _, t := range s.Ledger.Terms {

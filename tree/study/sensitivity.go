@@ -21,7 +21,7 @@ func sensitivities(ctx context.Context, r fitting.Result, b fitting.Beats) ([]Se
 			return out, err
 		}
 		out = append(out, Sensitivity{
-			Assumption: move.assumption, Change: move.change,
+			Assumption: move.assumption, Change: move.change, By: move.by,
 			Values: moved.Values, Percent: percent(moved.Values, r.Values),
 		})
 	}
@@ -31,25 +31,26 @@ func sensitivities(ctx context.Context, r fitting.Result, b fitting.Beats) ([]Se
 // move is one assumption moved.
 type move struct {
 	assumption, change string
+	by                 float64
 	apply              func(fitting.Beats) fitting.Beats
 }
 
 func moves() []move {
 	var out []move
 	for _, d := range []float64{-10, 10} {
-		out = append(out, move{"outflow-pressure", fmt.Sprintf("%+g mmHg", d), func(b fitting.Beats) fitting.Beats {
+		out = append(out, move{"outflow-pressure", fmt.Sprintf("%+g mmHg", d), d, func(b fitting.Beats) fitting.Beats {
 			b.OutflowPressure += d
 			return b
 		}})
 	}
 	for _, d := range []float64{-0.010, 0.010} {
-		out = append(out, move{"delay", fmt.Sprintf("%+g ms", 1000*d), func(b fitting.Beats) fitting.Beats {
+		out = append(out, move{"delay", fmt.Sprintf("%+g ms", 1000*d), d, func(b fitting.Beats) fitting.Beats {
 			b.Flow = [][]float64{later(b.Flow[0], d*b.Rate)}
 			return b
 		}})
 	}
 	for _, f := range []float64{0.8, 1.2} {
-		out = append(out, move{"output", fmt.Sprintf("%+.0f %%", 100*(f-1)), func(b fitting.Beats) fitting.Beats {
+		out = append(out, move{"output", fmt.Sprintf("%+.0f %%", 100*(f-1)), f - 1, func(b fitting.Beats) fitting.Beats {
 			b.Flow = [][]float64{calibrated(b.Flow[0], f, 0)}
 			return b
 		}})

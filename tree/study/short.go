@@ -3,6 +3,7 @@ package study
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"afterbeat/data"
 	"afterbeat/data/beat"
@@ -31,7 +32,10 @@ func (s Study) shortSection() casenote.Section {
 		label := fmt.Sprintf("%s (%s), %s", p.Name, r.Model.Name, r.Model.Parameters()[i].Meaning)
 		out.Rows = append(out.Rows, casenote.Quantity(label, p.Estimate, p.Unit, data.Estimated))
 	}
-	if s.Comparison != nil && s.Comparison.Reason == "" {
+	if s.Forecast != nil && s.Forecast.Reason == "" {
+		out.Words = words(s.Forecast.shortWords())
+		out.Rows = slices.Concat(s.Forecast.shortRows(), s.Comparison.shortRows(), out.Rows)
+	} else if s.Comparison != nil && s.Comparison.Reason == "" {
 		out.Words = []data.Text{data.Clean("The retained pulse is that of a yardstick without a ventricle, no forecast; its interval holds if the posing did. Each line has its place below.")}
 		out.Rows = append(out.Rows, s.Comparison.shortRows()...)
 	}
@@ -88,7 +92,7 @@ func (c Comparison) shortRows() []casenote.Row {
 			continue
 		}
 		near := nearestHalf(a.Comparisons)
-		label := fmt.Sprintf("retained pulse, share %.2g, %s", near.Share, a.Posing)
+		label := fmt.Sprintf("yardstick, share %.2g, %s: retained pulse", near.Share, a.Posing)
 		rows = append(rows, casenote.Quantity(label, near.RetainedPressure, "of native", data.Estimated))
 	}
 	return rows

@@ -15,6 +15,7 @@ type Study struct {
 	Beats      *Beats
 	Fit        *Fit
 	Comparison *Comparison
+	Forecast   *Forecast
 }
 
 // Stage names a stage of the work that is computed.
@@ -22,11 +23,12 @@ type Stage string
 
 // The stages that [Study.Next] computes, in their order.
 const (
-	StageIntake  Stage = "intake"
-	StageBeats   Stage = "beats"
-	StageFit     Stage = "fit"
-	StageSupport Stage = "support"
-	StageDone    Stage = ""
+	StageIntake   Stage = "intake"
+	StageBeats    Stage = "beats"
+	StageFit      Stage = "fit"
+	StageSupport  Stage = "support"  // the yardsticks
+	StageForecast Stage = "forecast" // ventricle, pump and load
+	StageDone     Stage = ""
 )
 
 // Pending is the stage that Next would compute; StageDone where none is left.
@@ -40,6 +42,8 @@ func (s Study) Pending() Stage {
 		return StageFit
 	case s.Comparison == nil:
 		return StageSupport
+	case s.Forecast == nil:
+		return StageForecast
 	}
 	return StageDone
 }
@@ -57,6 +61,8 @@ func (s Study) Next(ctx context.Context) (Study, error) {
 		next.Fit, err = pointer(FitLoad(ctx, *s.Beats))
 	case StageSupport:
 		next.Comparison, err = pointer(Compare(ctx, *s.Fit))
+	case StageForecast:
+		next.Forecast, err = pointer(Predict(ctx, *s.Comparison))
 	}
 	if err != nil {
 		return s, err
@@ -95,8 +101,11 @@ func (s Study) With(c casefile.Case) Study {
 	if touched == StageFit {
 		s.Fit = nil
 	}
-	if touched != StageDone {
+	if touched == StageFit || touched == StageSupport {
 		s.Comparison = nil
+	}
+	if touched != StageDone {
+		s.Forecast = nil
 	}
 	return s.carrying()
 }
@@ -124,6 +133,11 @@ func (s Study) carrying() Study {
 		k.Fit = *s.Fit
 		s.Comparison = &k
 	}
+	if s.Forecast != nil {
+		f := *s.Forecast
+		f.Comparison = *s.Comparison
+		s.Forecast = &f
+	}
 	return s
 }
 
@@ -138,6 +152,9 @@ func (s Study) Warnings() []data.Warning {
 	}
 	if s.Comparison != nil {
 		all = append(all, s.Comparison.Warnings...)
+	}
+	if s.Forecast != nil {
+		all = append(all, s.Forecast.Warnings...)
 	}
 	return once(all)
 }

@@ -77,7 +77,7 @@ func TestAStageWithAnErrorIsNotComputed(t *testing.T) {
 
 func TestRunStopsAtAStage(t *testing.T) {
 	c, f := demoCase(t), demoFolder(t)
-	next := map[Stage]Stage{StageIntake: StageBeats, StageBeats: StageFit, StageFit: StageSupport, StageSupport: StageDone}
+	next := map[Stage]Stage{StageIntake: StageBeats, StageBeats: StageFit, StageFit: StageSupport, StageSupport: StageForecast, StageForecast: StageDone}
 	for last, want := range next {
 		s, err := try(c, f, last)
 		if err != nil || s.Pending() != want {

@@ -13,8 +13,11 @@ func firstTouched(a, b casefile.Case) Stage {
 	if same(a, b) {
 		return StageDone
 	}
+	if same(withoutForecast(a), withoutForecast(b)) {
+		return StageForecast
+	}
 	a.Share, b.Share = nil, nil
-	if same(a, b) {
+	if same(withoutForecast(a), withoutForecast(b)) {
 		return StageSupport
 	}
 	if same(withoutFit(a), withoutFit(b)) {
@@ -32,7 +35,15 @@ func withoutWords(c casefile.Case) casefile.Case {
 // withoutFit is the case without the choices that bear on the fit and on what
 // follows from it, but on nothing before.
 func withoutFit(c casefile.Case) casefile.Case {
+	c = withoutForecast(c)
 	c.Model, c.OutflowPressure, c.Replicates, c.Seed = "", nil, nil, nil
+	return c
+}
+
+// withoutForecast is the case without the choices that bear on the forecast
+// alone.
+func withoutForecast(c casefile.Case) casefile.Case {
+	c.EDVML, c.EF, c.Pump, c.Speed = nil, nil, "", nil
 	return c
 }
 

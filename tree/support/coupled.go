@@ -58,7 +58,7 @@ func NewCoupled(c Coupling) (*Coupled, error) {
 	if math.IsNaN(line.Flow) {
 		line.Flow = 0
 	}
-	if err := errors.Join(c.Ventricle.Check(), line.Check(), c.Load.Check()); err != nil {
+	if err := errors.Join(c.Ventricle.Check(), line.Check(), c.Load.check(math.Inf(-1))); err != nil {
 		return nil, firstOf(err)
 	}
 	if !(c.FillingLag > 0) || math.IsInf(c.FillingLag, 0) {

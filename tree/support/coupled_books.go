@@ -17,6 +17,7 @@ const (
 	sigVolume
 	sigPlv
 	sigFill
+	sigRoot
 	signals
 )
 
@@ -95,7 +96,7 @@ func (b *books) add(r *run) {
 // signals are those at the place last looked at.
 func (r *run) signals() [signals]float64 {
 	i, y := &r.now, &r.step.y
-	return [signals]float64{sigPao: i.pao, sigPump: y[qp], sigValve: i.qav, sigVolume: y[vol], sigPlv: i.plv, sigFill: i.pfill}
+	return [signals]float64{sigPao: i.pao, sigPump: y[qp], sigValve: i.qav, sigVolume: y[vol], sigPlv: i.plv, sigFill: i.pfill, sigRoot: i.qav + y[qp]}
 }
 
 // powers adds the powers of the place last looked at, for a time w.

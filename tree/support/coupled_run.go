@@ -17,6 +17,7 @@ type run struct {
 	size      float64 // of the next step, s
 	slack     float64 // see turn
 	books     *books  // nil: nobody asks
+	tape      *tape   // nil: nobody asks
 }
 
 // The fewest steps of a beat, so that no short event is stepped over; and the most
@@ -121,6 +122,9 @@ func (r *run) accept(end, corner float64) {
 	s := &r.step
 	if r.books != nil {
 		r.books.add(r)
+	}
+	if r.tape != nil {
+		r.tape.add(r)
 	}
 	s.t = end
 	if corner-end < 1e-12*r.heart.Period {

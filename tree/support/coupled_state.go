@@ -16,6 +16,7 @@ type CoupledState struct {
 	Arterial    Range   // Pao, mmHg
 	PumpFlow    Range   // mL/s
 	ValveFlow   Range   // through the aortic valve, mL/s
+	RootFlow    Range   // Qav + Qp, mL/s
 	ValveOpen   float64 // s a beat
 	ValveOpened bool
 	Volume      Range   // of the ventricle, mL
@@ -66,7 +67,7 @@ func (k *Coupled) stateOf(o orbit, speed float64, b *books) CoupledState {
 	surplus := b.surplus()
 	s := CoupledState{
 		Speed: speed, Beats: o.beats, Settled: o.settled, start: o.start,
-		Arterial: b.of(sigPao), PumpFlow: b.of(sigPump), ValveFlow: b.of(sigValve),
+		Arterial: b.of(sigPao), PumpFlow: b.of(sigPump), ValveFlow: b.of(sigValve), RootFlow: b.of(sigRoot),
 		Volume: b.of(sigVolume), Ventricular: b.of(sigPlv), Filling: o.start[out],
 		StrokeWork: b.power[powVentricle],
 		EEP:        b.of(sigPao).Mean + surplus, SHE: unit.DynPerMmHg * surplus,

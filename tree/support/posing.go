@@ -18,6 +18,8 @@ const (
 	ScaledPosing Posing = "scaled"
 	// LateValvePosing is what the native flow has above a threshold, on a steady one.
 	LateValvePosing Posing = "late-valve"
+	// CoupledPosing is no rule: ventricle, pump and load settle what each does.
+	CoupledPosing Posing = "coupled"
 )
 
 // Posings lists the posings that take a share, in the order of help texts.

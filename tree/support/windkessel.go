@@ -43,7 +43,11 @@ type Windkessel struct {
 
 // Check tells why these cannot be the values of a load: an error for a person
 // to read.
-func (w Windkessel) Check() error {
+func (w Windkessel) Check() error { return w.check(0) }
+
+// check is Check with the least outflow pressure that passes. A drawn one may be
+// below 0, as the error of a given one says.
+func (w Windkessel) check(leastPv float64) error {
 	if w.Kind.Symbols() == nil {
 		return fmt.Errorf("model %q is none of %v", w.Kind, LoadKinds())
 	}
@@ -57,7 +61,7 @@ func (w Windkessel) Check() error {
 		{"C", w.C, w.C > 0, "above 0"},
 		{"Zc", w.Zc, w.Zc >= 0, "of 0 or more"},
 		{"L", w.L, w.L >= 0, "of 0 or more"},
-		{"Pv", w.OutflowPressure, w.OutflowPressure >= 0, "of 0 or more"},
+		{"Pv", w.OutflowPressure, w.OutflowPressure >= leastPv, "of 0 or more"},
 	} {
 		if !p.ok || math.IsInf(p.value, 0) {
 			return fmt.Errorf("%s = %v is not a number %s", p.name, p.value, p.want)

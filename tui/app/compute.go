@@ -188,6 +188,9 @@ func (m Model) start(s tui.Stage) Model {
 func (m Model) cancel() Model {
 	m = m.halt()
 	m.said = data.Clean("stopped; the digit of a stage in ( ) computes on")
+	if m.job.stage == study.StageForecast {
+		m.said = data.Clean("stopped; 5 or 6 computes the forecast")
+	}
 	return m
 }
 
@@ -202,8 +205,8 @@ func (m Model) progress(msg tickMsg) (Model, tea.Cmd) {
 
 func (j job) words() string {
 	if j.stage == study.StageDone {
-		return "reading the recording 1/5, esc cancels"
+		return "reading the recording 1/6, esc cancels"
 	}
-	at := map[study.Stage]int{study.StageIntake: 2, study.StageBeats: 3, study.StageFit: 4, study.StageSupport: 5}[j.stage]
-	return fmt.Sprintf("computing %s %d/5, esc cancels", j.stage, at)
+	at := map[study.Stage]int{study.StageIntake: 2, study.StageBeats: 3, study.StageFit: 4, study.StageSupport: 5, study.StageForecast: 6}[j.stage]
+	return fmt.Sprintf("computing %s %d/6, esc cancels", j.stage, at)
 }

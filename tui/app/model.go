@@ -132,7 +132,7 @@ func (m Model) resize(a tui.Area) (Model, tea.Cmd) {
 }
 
 // openStage shows a stage. Of one that cannot be shown yet the status line says
-// why; one whose computing was stopped is computed again.
+// why. Where the computing of what it shows was stopped, it goes on.
 func (m Model) openStage(s tui.Stage) (Model, tea.Cmd) {
 	if s < tui.Intake || s > tui.Note {
 		return m, nil
@@ -140,10 +140,12 @@ func (m Model) openStage(s tui.Stage) (Model, tea.Cmd) {
 	m.open, m.moved = s, true
 	why := s.Missing(m.study)
 	m.said = data.Text{}
-	if why == "" {
+	if why == "" && !(s >= tui.Support && m.study.Pending() == study.StageForecast) {
 		return m, nil
 	}
-	m.said = data.Clean(s.String() + ": " + why)
+	if why != "" {
+		m.said = data.Clean(s.String() + ": " + why)
+	}
 	if m.job.running || m.study.Pending() == study.StageDone {
 		return m, nil
 	}

@@ -42,7 +42,7 @@ func TestEveryStageIsShownAtOnce(t *testing.T) {
 			seen = append(seen, p)
 		}
 	}
-	want := []study.Stage{study.StageIntake, study.StageBeats, study.StageFit, study.StageSupport, study.StageDone}
+	want := []study.Stage{study.StageIntake, study.StageBeats, study.StageFit, study.StageSupport, study.StageForecast, study.StageDone}
 	if len(seen) != len(want) {
 		t.Errorf("shown with pending %v, want %v", seen, want)
 	}
@@ -272,10 +272,10 @@ func TestOnlyWhatAChangeBearsOnIsComputed(t *testing.T) {
 		loads  int
 		stages int
 	}{
-		{func(c *casefile.Case) { c.Share = []float64{0.3} }, 0, 1},
-		{func(c *casefile.Case) { c.Model = "wk2" }, 0, 2},
-		{func(c *casefile.Case) { c.Invert = []string{"x"} }, 0, 4},
-		{func(c *casefile.Case) { c.Unit = map[string]string{"x": "kPa"} }, 1, 4},
+		{func(c *casefile.Case) { c.Share = []float64{0.3} }, 0, 2},
+		{func(c *casefile.Case) { c.Model = "wk2" }, 0, 3},
+		{func(c *casefile.Case) { c.Invert = []string{"x"} }, 0, 5},
+		{func(c *casefile.Case) { c.Unit = map[string]string{"x": "kPa"} }, 1, 5},
 		{func(c *casefile.Case) { c.Label = "p-1" }, 0, 0},
 	} {
 		loads, stages = 0, nil
@@ -302,13 +302,13 @@ func TestProgressAndCancel(t *testing.T) {
 		t.Error("progress in the first moments")
 	}
 	d.send(tickMsg{d.m.job.number})
-	d.wantStatus("reading the recording 1/5, esc cancels")
+	d.wantStatus("reading the recording 1/6, esc cancels")
 	for d.m.study.Beats == nil {
 		d.step(0)
 	}
 	d.wantStatus("reading") // no sooner than the next tick
 	d.send(tickMsg{d.m.job.number})
-	d.wantStatus("computing fit 4/5, esc cancels")
+	d.wantStatus("computing fit 4/6, esc cancels")
 	ctx := d.m.job.ctx
 	d.keys("esc")
 	if ctx.Err() == nil || d.m.job.running {
@@ -500,5 +500,36 @@ func TestSmall(t *testing.T) {
 	d.keys("q")
 	if !d.quits {
 		t.Error("q does not quit")
+	}
+}
+
+// A forecast that was stopped is computed on where it is shown: the yardsticks
+// are there, so that the stage is not missing.
+func TestStoppedForecastGoesOn(t *testing.T) {
+	for _, c := range []struct {
+		digit string
+		on    bool
+	}{{"3", false}, {"5", true}, {"6", true}} {
+		d := newDriver(t, nil)
+		d.hold = true
+		d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+		d.send(startMsg{})
+		for d.m.study.Comparison == nil {
+			d.step(0)
+		}
+		d.send(tickMsg{d.m.job.number})
+		d.wantStatus("computing forecast 6/6, esc cancels")
+		d.keys("esc")
+		d.wantStatus("5 or 6 computes the forecast")
+		d.hold = false
+		d.run()
+		if d.m.study.Forecast != nil {
+			t.Fatal("computed on after esc")
+		}
+		d.keys(c.digit)
+		d.run()
+		if (d.m.study.Forecast != nil) != c.on {
+			t.Errorf("after %s there is a forecast: %v", c.digit, !c.on)
+		}
 	}
 }

@@ -68,6 +68,8 @@ func revealed(ctx context.Context, s study.Study) (study.Study, error) {
 		s.Fit = whole.Fit
 	case study.StageSupport:
 		s.Comparison = whole.Comparison
+	case study.StageForecast:
+		s.Forecast = whole.Forecast
 	}
 	return s, nil
 }

@@ -82,7 +82,7 @@ func (m Model) Resize(a tui.Area, t tui.Theme) (tui.Screen, tea.Cmd) {
 
 // upToFit leaves out what the comparison warns of.
 func upToFit(s study.Study) []warning {
-	s.Comparison = nil
+	s.Comparison, s.Forecast = nil, nil
 	return s.Warnings()
 }
 

@@ -21,6 +21,7 @@ type curves struct {
 	pressure, flow traces
 	sweeps         [3]lines // by quantity
 	held           []string // the page of what is held equal
+	coupled        coupledCurves
 }
 
 // traces are the waves of all states in bounds that they share.
@@ -58,7 +59,7 @@ func (m Model) prepare() (tui.Screen, tea.Cmd) {
 	if !m.there() {
 		return m, nil
 	}
-	c, request, p, area, theme := *m.comparison, m.request, m.plan(), m.area, m.theme
+	c, f, request, p, area, theme := *m.comparison, m.forecast, m.request, m.plan(), m.area, m.theme
 	return m, func() tea.Msg {
 		all := curves{
 			ready:    true,
@@ -69,31 +70,47 @@ func (m Model) prepare() (tui.Screen, tea.Cmd) {
 		for q := range all.sweeps {
 			all.sweeps[q] = linesOf(c, p, quantity(q))
 		}
+		if f != nil {
+			all.coupled = coupledCurvesOf(f, p, area, theme)
+		}
 		return curvesMsg{request: request, curves: all}
 	}
 }
 
 // tracesOf brings one signal of all states to the columns of a plan.
 func tracesOf(c study.Comparison, p plan, name, unit string, of func(support.State) data.Period) traces {
-	native := of(c.Native)
-	all := [][]float64{native.Samples}
+	var supported [][]data.Period
 	for _, a := range c.Answers {
+		var states []data.Period
 		for _, s := range a.Supported {
-			all = append(all, of(s).Samples)
+			states = append(states, of(s))
+		}
+		supported = append(supported, states)
+	}
+	return overlaid(name+" of "+c.Fit.Results[c.Fit.Chosen].Model.Name, unit, p, of(c.Native), supported)
+}
+
+// overlaid brings native and supported waves to the columns of a plan, in bounds
+// that hold them all.
+func overlaid(name, unit string, p plan, native data.Period, supported [][]data.Period) traces {
+	all := [][]float64{native.Samples}
+	for _, states := range supported {
+		for _, s := range states {
+			all = append(all, s.Samples)
 		}
 	}
 	t := traces{
-		name: name + " of " + c.Fit.Results[c.Fit.Chosen].Model.Name, y: chart.Covering(unit, all...),
+		name: name, y: chart.Covering(unit, all...),
 		x: chart.Axis{Low: 0, High: float64(len(native.Samples)-1) / native.Rate, Name: "time", Unit: "s"},
 	}
 	columns, _ := t.plot("").Area(p.width, p.plot)
 	t.native = columnsOf(native.Samples, columns)
-	for _, a := range c.Answers {
-		var states [][]float64
-		for _, s := range a.Supported {
-			states = append(states, columnsOf(of(s).Samples, columns))
+	for _, states := range supported {
+		var drawn [][]float64
+		for _, s := range states {
+			drawn = append(drawn, columnsOf(s.Samples, columns))
 		}
-		t.supported = append(t.supported, states)
+		t.supported = append(t.supported, drawn)
 	}
 	return t
 }
@@ -118,7 +135,7 @@ func linesOf(c study.Comparison, p plan, q quantity) lines {
 	columns, _ := frame(l.y).Area(p.sweep(q), p.picture-1)
 	for i, a := range c.Answers {
 		shares, _ := points(a, q)
-		l.each = append(l.each, joined(shares, y[i], columns))
+		l.each = append(l.each, joined(shares, y[i], chart.Axis{Low: 0, High: 1}, columns))
 	}
 	return l
 }
@@ -168,13 +185,13 @@ func frame(y chart.Axis) chart.Plot {
 	return chart.Plot{X: chart.Axis{Low: 0, High: 1, Name: "share"}, Y: y}
 }
 
-// joined puts straight lines through points of rising x in 0 .. 1, one value a
-// column; columns outside of them have none.
-func joined(x, y []float64, columns int) []float64 {
+// joined puts straight lines through points of rising x, one value a column of
+// the axis; columns outside of them have none.
+func joined(x, y []float64, axis chart.Axis, columns int) []float64 {
 	out := make([]float64, max(columns, 0))
 	for c := range out {
 		out[c] = math.NaN()
-		at := float64(c) / float64(max(columns-1, 1))
+		at := axis.Low + (axis.High-axis.Low)*float64(c)/float64(max(columns-1, 1))
 		for i := 1; i < len(x); i++ {
 			if at >= x[i-1] && at <= x[i] {
 				out[c] = y[i-1] + (y[i]-y[i-1])*(at-x[i-1])/(x[i]-x[i-1])
@@ -186,11 +203,7 @@ func joined(x, y []float64, columns int) []float64 {
 
 // milliwatt turns a power into the unit in print.
 func milliwatt(e data.Estimate) data.Estimate {
-	const f = unit.MilliwattPerMmHgMLPerS
-	e.Value *= f
-	e.Total = data.Interval{Low: f * e.Total.Low, High: f * e.Total.High}
-	e.Random = data.Interval{Low: f * e.Random.Low, High: f * e.Random.High}
-	return e
+	return scaledBy(e, unit.MilliwattPerMmHgMLPerS)
 }
 
 func flowUnit(c study.Comparison) string {

@@ -43,6 +43,13 @@ const indexCells = 14
 func (m Model) indices() []string {
 	a := m.shown()
 	n, s := a.Native, a.Supported[m.state]
+	words := "Of the computed waves, without intervals; amplitudes have theirs on the waves."
+	return m.indexTable(flowUnit(*m.comparison), [4]beat.Measures{n.PressureMeasures, s.PressureMeasures, n.FlowMeasures, s.FlowMeasures}, words)
+}
+
+// indexTable has the measures of native and supported pressure, and of native and
+// supported flow.
+func (m Model) indexTable(flowUnit string, measures [4]beat.Measures, words string) []string {
 	line := func(cells ...string) string {
 		out := pad(cells[0], labelCells+1)
 		for _, c := range cells[1:] {
@@ -51,13 +58,13 @@ func (m Model) indices() []string {
 		return out
 	}
 	out := []string{
-		line("", "pressure, mmHg", "", "flow, "+flowUnit(*m.comparison), ""),
+		line("", "pressure, mmHg", "", "flow, "+flowUnit, ""),
 		line("", "native", "supported", "native", "supported"),
 	}
 	var remarks []string
 	for _, i := range indexRows() {
 		cells := []string{i.name}
-		for k, of := range []beat.Measures{n.PressureMeasures, s.PressureMeasures, n.FlowMeasures, s.FlowMeasures} {
+		for k, of := range measures {
 			if i.pressureOnly && k > 1 {
 				cells = append(cells, "-")
 				continue
@@ -70,7 +77,7 @@ func (m Model) indices() []string {
 		}
 		out = append(out, line(cells...))
 	}
-	out = append(out, "Of the computed waves, without intervals; amplitudes have theirs on the waves.")
+	out = append(out, words)
 	for _, r := range remarks {
 		out = append(out, layout.Wrap(layout.Clean(r, m.theme), m.area.Width)...)
 	}

@@ -9,6 +9,7 @@ type keyMap struct {
 	flow, table            key.Binding
 	sweep, energy, indices key.Binding
 	held                   key.Binding
+	depends, ventricle     key.Binding
 }
 
 func newKeys() keyMap {
@@ -26,6 +27,9 @@ func newKeys() keyMap {
 		energy:   bind("e", "energy", "e"),
 		indices:  bind("m", "indices", "m"),
 		held:     bind("h", "what is held", "h"),
+
+		depends:   bind("d", "depends on", "d"),
+		ventricle: bind("p", "ventricle, pump", "p"),
 	}
 }
 
@@ -37,25 +41,50 @@ func (m Model) bindings() keyMap {
 	for _, b := range []*key.Binding{&k.flow, &k.table, &k.sweep, &k.energy, &k.indices, &k.held} {
 		b.SetEnabled(there)
 	}
-	moving := there && m.view != held
+	v := m.viewing()
+	moving := there && !v.paged()
 	k.more.SetEnabled(moving && m.count() > 1)
 	k.less.SetEnabled(moving && m.count() > 1)
-	k.next.SetEnabled(moving && len(m.comparison.Answers) > 1)
-	k.previous.SetEnabled(moving && len(m.comparison.Answers) > 1)
-	k.flow.SetEnabled(there && (m.view == waves || m.view == sweep))
-	k.table.SetEnabled(there && (m.view == waves || m.view == sweep || m.view == energy))
-	if m.flow {
+	k.next.SetEnabled(moving && len(m.posings()) > 1)
+	k.previous.SetEnabled(moving && len(m.posings()) > 1)
+	k.flow.SetEnabled(there && (v == waves || v == sweep || v == indices && m.coupled()))
+	k.table.SetEnabled(there && (v == waves || v == sweep || v == energy && !m.coupled()))
+	k.depends.SetEnabled(m.coupled())
+	k.ventricle.SetEnabled(m.coupled())
+	return m.helped(k)
+}
+
+// helped names what the keys do as things stand.
+func (m Model) helped(k keyMap) keyMap {
+	if m.coupled() {
+		k.more.SetHelp("up", "speed up")
+		k.less.SetHelp("down", "speed down")
+	}
+	switch {
+	case m.viewing() == indices && m.figured:
+		k.flow.SetHelp("f", "indices")
+	case m.viewing() == indices:
+		k.flow.SetHelp("f", "figures")
+	case m.flow:
 		k.flow.SetHelp("f", "pressure")
 	}
 	if m.table {
 		k.table.SetHelp("t", "picture")
 	}
-	for v, b := range map[view]*key.Binding{sweep: &k.sweep, energy: &k.energy, indices: &k.indices, held: &k.held} {
-		if m.view == v {
+	for v, b := range k.views() {
+		if m.viewing() == v {
 			b.SetHelp(b.Help().Key, "back to the waves")
 		}
 	}
 	return k
+}
+
+// views are the keys that open a view, and leave it.
+func (k *keyMap) views() map[view]*key.Binding {
+	return map[view]*key.Binding{
+		sweep: &k.sweep, energy: &k.energy, indices: &k.indices, held: &k.held,
+		depends: &k.depends, ventricle: &k.ventricle,
+	}
 }
 
 // Keys are the bindings that work now, the most useful first.
@@ -64,9 +93,9 @@ func (m Model) Keys() []key.Binding {
 		return m.warnings.Keys.Bindings()
 	}
 	k := m.bindings()
-	all := []key.Binding{k.more, k.next, k.sweep, k.energy, k.flow, k.indices, k.held, k.table, k.less, m.warnings.Keys.Open, k.previous}
-	if m.view == held && m.there() {
-		all = append([]key.Binding{k.held}, m.pageKeys.Bindings()...)
+	all := []key.Binding{k.more, k.next, k.sweep, k.energy, k.depends, k.flow, k.indices, k.held, k.ventricle, k.table, k.less, m.warnings.Keys.Open, k.previous}
+	if v := m.viewing(); v.paged() && m.there() {
+		all = append([]key.Binding{*k.views()[v]}, m.pageKeys.Bindings()...)
 	}
 	var on []key.Binding
 	for _, b := range all {

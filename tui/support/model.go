@@ -2,6 +2,7 @@ package support
 
 import (
 	"math"
+	"slices"
 
 	"github.com/charmbracelet/bubbles/key"
 	tea "github.com/charmbracelet/bubbletea"
@@ -19,18 +20,24 @@ import (
 type view int
 
 const (
-	waves   view = iota // native and supported over one another
-	sweep               // retained pulse against share
-	energy              // power against share
-	indices             // of both waves
-	held                // what is the same in all states
+	waves     view = iota // native and supported over one another
+	sweep                 // retained pulse against share, pressures against speed
+	energy                // power against share, or of the coupled state
+	indices               // of both waves
+	held                  // what is the same in all states
+	depends               // what moves the forecast, and what would prove it wrong
+	ventricle             // the parameters of ventricle and pump
 )
 
-// The state that the screen begins with: the posing that is no identity, at
-// half of the flow.
+// paged tells a view of text that scrolls.
+func (v view) paged() bool { return v == held || v == depends || v == ventricle }
+
+// The state that the screen begins with: the forecast where there is one, else
+// the yardstick that is no identity, at half of the flow.
 const (
-	firstPosing = support.LateValvePosing
-	firstShare  = 0.5
+	coupledPosing  support.Posing = "coupled"
+	firstYardstick                = support.LateValvePosing
+	firstShare                    = 0.5
 )
 
 // Model is the screen.
@@ -39,13 +46,17 @@ type Model struct {
 	theme      tui.Theme
 	study      study.Study
 	comparison *study.Comparison // nil while it is computed
-	posing     support.Posing    // the one shown; kept while comparisons come and go
+	forecast   *study.Forecast   // nil while there is none
+	posing     support.Posing    // the one wanted; kept while comparisons come and go
 	share      float64           // so is the share
+	speed      float64           // and the speed; 0: the middle one
 	answer     int               // of the comparison, with that posing
+	at         int               // of the speeds of the forecast, nearest to it
 	state      int               // of the answer, with the share nearest to it
 	view       view
 	table      bool // numbers in place of the picture
 	flow       bool // in place of pressure
+	figured    bool // figures of the forecast in place of indices
 	curves     curves
 	picture    string     // of the view, the state and the size
 	words      [][]string // of each answer: what its power means, and what not
@@ -60,7 +71,7 @@ var _ tui.Screen = Model{}
 // New is the screen before anything was computed.
 func New() Model {
 	return Model{
-		posing: firstPosing, share: firstShare, pageKeys: page.NewKeys(),
+		posing: coupledPosing, share: firstShare, pageKeys: page.NewKeys(),
 		warnings: warnlist.New("Warnings of the study", nil),
 	}
 }
@@ -68,9 +79,12 @@ func New() Model {
 // Typing is false: there is no text field.
 func (m Model) Typing() bool { return false }
 
-// Show takes over what has been computed. Posing and share stay.
+// Show takes over what has been computed. Posing, share and speed stay.
 func (m Model) Show(s study.Study) (tui.Screen, tea.Cmd) {
-	m.study, m.comparison = s, s.Comparison
+	m.study, m.comparison, m.forecast = s, s.Comparison, nil
+	if f := s.Forecast; f != nil && f.Reason == "" && len(f.Speeds) > 0 && m.there() {
+		m.forecast = f
+	}
 	m.warnings = m.warnings.Hold(s.Warnings())
 	m.curves = curves{}
 	m.request++ // what is under way belongs to another study
@@ -96,7 +110,7 @@ func (m Model) worded() Model {
 // Resize takes over size and theme.
 func (m Model) Resize(a tui.Area, t tui.Theme) (tui.Screen, tea.Cmd) {
 	if t != m.theme {
-		m.page = m.page.Hold(nil)
+		m.curves = curves{} // pages are of the theme that was
 	}
 	m.area, m.theme = a, t
 	m.warnings = m.warnings.Resize(a, t)
@@ -109,10 +123,40 @@ func (m Model) there() bool {
 	return m.comparison != nil && len(m.comparison.Answers) > 0 && len(m.comparison.Answers[0].Supported) > 0
 }
 
-// count is how many shares there are.
-func (m Model) count() int { return len(m.shown().Supported) }
+// coupled tells that the forecast is shown.
+func (m Model) coupled() bool { return m.forecast != nil && m.posing == coupledPosing }
 
-// shown is the answer of the posing shown.
+// viewing is the view shown: one of the forecast is kept until there is one.
+func (m Model) viewing() view {
+	if !m.coupled() && (m.view == depends || m.view == ventricle) {
+		return waves
+	}
+	return m.view
+}
+
+// posings are those that can be shown, the forecast first.
+func (m Model) posings() []support.Posing {
+	var all []support.Posing
+	if m.forecast != nil {
+		all = append(all, coupledPosing)
+	}
+	if m.there() {
+		for _, a := range m.comparison.Answers {
+			all = append(all, a.Posing)
+		}
+	}
+	return all
+}
+
+// count is how many shares there are, or speeds.
+func (m Model) count() int {
+	if m.coupled() {
+		return len(m.forecast.Speeds)
+	}
+	return len(m.shown().Supported)
+}
+
+// shown is the answer of the yardstick shown.
 func (m Model) shown() support.Answer {
 	if !m.there() {
 		return support.Answer{}
@@ -120,14 +164,19 @@ func (m Model) shown() support.Answer {
 	return m.comparison.Answers[m.answer]
 }
 
-// placed finds posing and share in the comparison.
+// placed finds posing and share in the comparison, and the speed in the forecast.
 func (m Model) placed() Model {
-	m.answer, m.state = 0, 0
+	m.answer, m.state, m.at = 0, 0, 0
 	if !m.there() {
 		return m
 	}
+	m = m.speedPlaced()
+	wanted := m.posing
+	if wanted == coupledPosing {
+		wanted = firstYardstick
+	}
 	for i, a := range m.comparison.Answers {
-		if a.Posing == m.posing {
+		if a.Posing == wanted {
 			m.answer = i
 		}
 	}
@@ -146,7 +195,6 @@ func (m Model) Update(msg tea.Msg) (tui.Screen, tea.Cmd) {
 	case curvesMsg:
 		if msg.request == m.request {
 			m.curves = msg.curves
-			m.page = m.page.Hold(msg.curves.held)
 		}
 	case tea.KeyMsg:
 		m = m.press(msg)
@@ -161,50 +209,63 @@ func (m Model) press(msg tea.KeyMsg) Model {
 	}
 	switch k := m.bindings(); {
 	case key.Matches(msg, k.more):
-		return m.shareBy(1)
+		return m.stepBy(1)
 	case key.Matches(msg, k.less):
-		return m.shareBy(-1)
-	case key.Matches(msg, k.next, k.previous):
-		return m.otherPosing(msg, k)
+		return m.stepBy(-1)
+	case key.Matches(msg, k.next):
+		return m.otherPosing(1)
+	case key.Matches(msg, k.previous):
+		return m.otherPosing(-1)
+	case key.Matches(msg, k.flow) && m.viewing() == indices:
+		m.figured = !m.figured
 	case key.Matches(msg, k.flow):
 		m.flow = !m.flow
 	case key.Matches(msg, k.table):
 		m.table = !m.table
-	case key.Matches(msg, k.sweep):
-		m.view = toggled(m.view, sweep)
-	case key.Matches(msg, k.energy):
-		m.view = toggled(m.view, energy)
-	case key.Matches(msg, k.indices):
-		m.view = toggled(m.view, indices)
-	case key.Matches(msg, k.held):
-		m.view = toggled(m.view, held)
-	case m.view == held:
+	default:
+		return m.look(msg, k)
+	}
+	return m
+}
+
+// look opens a view, or leaves it for the waves, or moves through its page.
+func (m Model) look(msg tea.KeyMsg, k keyMap) Model {
+	now := m.viewing()
+	for v, b := range k.views() {
+		if !key.Matches(msg, *b) {
+			continue
+		}
+		m.view = v
+		if now == v {
+			m.view = waves
+		}
+		m.page = page.Scroll{}.Resize(m.area.Height - 1)
+		return m
+	}
+	if now.paged() {
 		m.page = m.page.Update(msg, m.pageKeys)
 	}
 	return m
 }
 
-func toggled(now, v view) view {
-	if now == v {
-		return waves
+// stepBy goes to another share or speed; at the ends it stays.
+func (m Model) stepBy(n int) Model {
+	if m.coupled() {
+		m.at = max(0, min(m.at+n, m.count()-1))
+		m.speed = m.forecast.Speeds[m.at].Speed
+		return m
 	}
-	return v
-}
-
-// shareBy goes to another share; at the ends it stays.
-func (m Model) shareBy(n int) Model {
 	m.state = max(0, min(m.state+n, m.count()-1))
 	m.share = m.shown().Supported[m.state].Share
 	return m
 }
 
-// otherPosing goes round the posings, at the same share.
-func (m Model) otherPosing(msg tea.KeyMsg, k keyMap) Model {
-	n, by := len(m.comparison.Answers), 1
-	if key.Matches(msg, k.previous) {
-		by = -1
+// otherPosing goes round the posings, at the same share and speed.
+func (m Model) otherPosing(by int) Model {
+	all, now := m.posings(), m.shown().Posing
+	if m.coupled() {
+		now = coupledPosing
 	}
-	m.answer = (m.answer + by + n) % n
-	m.posing = m.shown().Posing
-	return m
+	m.posing = all[(slices.Index(all, now)+by+len(all))%len(all)]
+	return m.placed()
 }

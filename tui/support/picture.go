@@ -10,11 +10,16 @@ import (
 // nothing.
 func (m Model) drawn() Model {
 	m.picture = ""
+	m.page = m.page.Hold(m.pageLines())
 	if !m.there() || !m.curves.ready {
 		return m
 	}
 	p := m.plan()
-	switch m.view {
+	if m.coupled() {
+		m.picture = m.coupledPicture(p)
+		return m
+	}
+	switch m.viewing() {
 	case waves:
 		m.picture = m.waves(p)
 	case sweep:
@@ -29,6 +34,22 @@ func (m Model) drawn() Model {
 		}
 	}
 	return m
+}
+
+// pageLines are those of the view that scrolls.
+func (m Model) pageLines() []string {
+	c := m.curves
+	switch {
+	case m.viewing() == depends:
+		return c.coupled.depends
+	case m.viewing() == ventricle:
+		return c.coupled.ventricle
+	case m.viewing() == held && m.coupled():
+		return c.coupled.held
+	case m.viewing() == held:
+		return c.held
+	}
+	return nil
 }
 
 // waves are native and supported over one another, or as a table.

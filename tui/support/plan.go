@@ -17,6 +17,7 @@ const (
 	leastPlot    = 8  // lines of the waves, before there are figures
 	besideWidth  = 80 // from here the table of a sweep stands beside its picture
 	leastPicture = 9  // lines of a sweep with its title, above the figures of power
+	noticeHeight = 16 // of the area, from which there is room for a third line of the head
 
 	shareCells    = 7 // of the columns of the table of a sweep
 	identityCells = 7
@@ -24,9 +25,9 @@ const (
 	powerCells    = 20
 )
 
-// plan divides the area. It does not depend on share, posing, or view.
+// plan divides the area. It does not depend on share, speed, posing, or view.
 func (m Model) plan() plan {
-	p := plan{width: m.area.Width, height: m.area.Height, head: 2, status: 1}
+	p := plan{width: m.area.Width, height: m.area.Height, head: 2 + len(m.notice()), status: 1}
 	rest := m.area.Height - p.head - p.status
 	if rest-figureRows >= leastPlot {
 		p.figures = figureRows

@@ -2,6 +2,7 @@ package support_test
 
 import (
 	"fmt"
+	"io/fs"
 	"slices"
 	"strings"
 	"sync"
@@ -12,6 +13,7 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/casefile"
 	"afterbeat/data/casenote"
+	records "afterbeat/data/demo"
 	"afterbeat/data/unit"
 	"afterbeat/tree/study"
 	posing "afterbeat/tree/support"
@@ -27,10 +29,10 @@ var (
 	demo study.Study
 )
 
-// computed is the demo, computed once for all tests.
+// computed is the demo as far as the yardsticks, computed once for all tests.
 func computed(t testing.TB) study.Study {
 	t.Helper()
-	once.Do(func() { demo = screentest.Demo(t, nil) })
+	once.Do(func() { demo = yardsticks(t, nil) })
 	return demo
 }
 
@@ -38,6 +40,24 @@ var (
 	small = tui.Area{Width: 80, Height: 20}
 	large = tui.Area{Width: 160, Height: 46}
 )
+
+// yardsticks is the demo as change makes its case, without a forecast.
+func yardsticks(t testing.TB, change func(*casefile.Case)) study.Study {
+	t.Helper()
+	c := screentest.DemoCase(t)
+	if change != nil {
+		change(&c)
+	}
+	in, err := study.Read(c, func(name string) ([]byte, error) { return fs.ReadFile(records.Files(), name) })
+	if err != nil {
+		t.Fatal(err)
+	}
+	s, err := study.Run(t.Context(), in, study.StageSupport)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return s
+}
 
 func open(s study.Study, keys ...string) *screentest.Bench {
 	return screentest.New(support.New(), s, small, tui.Theme{}).Press(keys...)
@@ -161,7 +181,7 @@ func TestShareAndPosingStay(t *testing.T) {
 	b.Show(study.Study{})
 	b.Show(s)
 	says(t, b.View(), "scaled share 0.7")
-	b.Show(screentest.Demo(t, func(c *casefile.Case) { c.Share = []float64{0.25, 0.625} }))
+	b.Show(yardsticks(t, func(c *casefile.Case) { c.Share = []float64{0.25, 0.625} }))
 	says(t, b.View(), "scaled share 0.625")
 	b.Press("w")
 	says(t, b.View(), "0.25 0.7500")
@@ -220,7 +240,7 @@ func TestHeldScrolls(t *testing.T) {
 }
 
 func TestWithoutAComparisonTheReasonAndTheCure(t *testing.T) {
-	b := open(screentest.Demo(t, func(c *casefile.Case) { c.DiameterCM = nil }))
+	b := open(yardsticks(t, func(c *casefile.Case) { c.DiameterCM = nil }))
 	says(t, b.View(), "There is no comparison: the fit is per unit area", "Intake (1)", "a diameter for a velocity")
 	b.Press("up", "left", "w", "e", "m", "h", "t", "f")
 	says(t, b.View(), "There is no comparison")
@@ -245,7 +265,7 @@ func TestLateCurvesAreDropped(t *testing.T) {
 }
 
 func TestWarningsOpenWithTheirCures(t *testing.T) {
-	b := open(screentest.Demo(t, func(c *casefile.Case) { c.OutflowPressure = nil }), "v")
+	b := open(yardsticks(t, func(c *casefile.Case) { c.OutflowPressure = nil }), "v")
 	says(t, b.View(), "outflow-pressure-assumed", "cure: ")
 	b.Press("v")
 	says(t, b.View(), "native (95 %)")
@@ -274,9 +294,9 @@ func TestSurvives(t *testing.T) {
 		computed(t),
 		{},
 		screentest.Pressure(t, "P\x1b[31m", false),
-		screentest.Demo(t, func(c *casefile.Case) { c.DiameterCM = nil }),
-		screentest.Demo(t, func(c *casefile.Case) { c.Share = []float64{1}; c.OutflowPressure = nil }),
-		screentest.Demo(t, func(c *casefile.Case) { c.Share = []float64{0.123456, 0.98765} }),
+		yardsticks(t, func(c *casefile.Case) { c.DiameterCM = nil }),
+		yardsticks(t, func(c *casefile.Case) { c.Share = []float64{1}; c.OutflowPressure = nil }),
+		yardsticks(t, func(c *casefile.Case) { c.Share = []float64{0.123456, 0.98765} }),
 	}
 	screentest.Survives(t, fresh, studies, "left", "right", "up", "down", "+", "-", "w", "e", "m", "h", "f", "t", "v")
 }

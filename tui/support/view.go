@@ -17,13 +17,17 @@ func (m Model) View() string {
 		return m.warnings.View()
 	case !m.there():
 		return layout.Fit(m.absent(), m.area)
-	case m.view == held:
+	case m.viewing().paged():
 		return layout.Fit(append(m.page.Window(), m.page.Position()), m.area)
 	}
 	p := m.plan()
-	lines := m.headline(p)
+	if m.coupled() {
+		lines := append(m.coupledHead(p), m.coupledBody(p)...)
+		return layout.Fit(append(lines, m.coupledStatus(p)), m.area)
+	}
+	lines := append(m.headline(p), m.notice()...)
 	body := p.height - p.head - p.status
-	switch m.view {
+	switch m.viewing() {
 	case sweep:
 		lines = append(lines, layout.Lines(strings.Join(m.sweep(p, m.sweepQuantity()), "\n"), body)...)
 	case energy:
@@ -60,6 +64,40 @@ func (m Model) headline(p plan) []string {
 		return []string{fmt.Sprintf("%-10s %-*s  %s", a.Posing, m.shareWidth(), share(s.Share), m.retained()), second}
 	}
 	return []string{first, second + "; " + m.valve()}
+}
+
+// notice says whether there is a forecast beside the yardsticks: a line below the
+// head, or two, where there is room. The head of the forecast itself needs the
+// same room.
+func (m Model) notice() []string {
+	if !m.there() {
+		return nil
+	}
+	roomy := m.area.Height >= noticeHeight
+	words := "The forecast is not computed yet; until it is, these are the yardsticks."
+	switch f := m.study.Forecast; {
+	case m.forecast != nil && !roomy:
+		return nil
+	case m.forecast != nil:
+		words = "The forecast is the posing coupled (left, right)."
+	case f != nil && f.Reason != "":
+		words = "No forecast: " + f.Reason + "."
+	case f != nil:
+		words = "No forecast: it has no speed."
+	}
+	most := 1
+	if roomy {
+		most = 2
+	}
+	lines := layout.Wrap(layout.Clean(words, m.theme), m.area.Width)
+	if m.forecast != nil {
+		return lines[:1]
+	}
+	if len(lines) > most {
+		lines = lines[:most]
+		lines[most-1] = layout.Pad(layout.Clean(lines[most-1], m.theme), max(m.area.Width-2, 0)) + " ~"
+	}
+	return lines
 }
 
 // shareWidth is the width of the widest share.

@@ -1,0 +1,141 @@
+package study
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"slices"
+
+	"gonum.org/v1/gonum/stat"
+
+	"afterbeat/data"
+	"afterbeat/tree/heart"
+	"afterbeat/tree/support"
+)
+
+// intervals makes the draws, and gives every number its intervals.
+func (f *Forecast) intervals(ctx context.Context, d *drawing, k support.Coupling) error {
+	count := min(forecastDraws, len(d.replicates.Random), len(d.replicates.Total))
+	random, err := d.rows(ctx, count, d.random)
+	if err != nil {
+		return err
+	}
+	d.choose(count)
+	total, err := d.rows(ctx, count, d.total)
+	if err != nil {
+		return err
+	}
+	f.Draws = min(len(random), len(total))
+	if err := f.ventricle(k, d, random, total); err != nil {
+		return err
+	}
+	if f.Draws < 2 {
+		return nil
+	}
+	for i := range len(f.Speeds) + 1 {
+		s := f.state(i)
+		for _, e := range s.estimates() {
+			doubt(e.into, random, total, func(r *row) float64 { return e.of(r.states[i], r.states[0]) })
+		}
+		opened := 0
+		for j := range total {
+			if total[j].opened[i] {
+				opened++
+			}
+		}
+		s.ValveOpenDraws = float64(opened) / float64(len(total))
+	}
+	doubt(&f.ValveLimit, random, total, func(r *row) float64 { return r.limit })
+	return nil
+}
+
+// doubt gives a value its intervals over the draws. A value that there is none
+// of keeps its reason.
+func doubt(e *data.Estimate, random, total []row, of func(*row) float64) {
+	if math.IsNaN(e.Value) {
+		return
+	}
+	e.Why = ""
+	e.Random = about(e.Value, valuesOf(random, of))
+	e.Total = over(e.Value, valuesOf(total, of))
+	e.Total.Low, e.Total.High = min(e.Total.Low, e.Random.Low), max(e.Total.High, e.Random.High)
+	if !e.Total.Defined() {
+		e.Random, e.Total = data.NoInterval(), data.NoInterval()
+		e.Why = "undefined in some of the draws"
+	}
+}
+
+func valuesOf(rows []row, of func(*row) float64) []float64 {
+	values := make([]float64, len(rows))
+	for i := range rows {
+		values[i] = of(&rows[i])
+	}
+	slices.Sort(values)
+	return values
+}
+
+func quantile(sorted []float64, p float64) float64 {
+	return stat.Quantile(p, stat.LinInterp, sorted, nil)
+}
+
+// over is the 95 % interval of a value over draws of ranges: the percentiles 2.5
+// and 97.5, and wide enough to hold the value, which need not be their middle.
+func over(value float64, sorted []float64) data.Interval {
+	if math.IsNaN(sorted[0]) {
+		return data.NoInterval()
+	}
+	return data.Interval{Low: min(value, quantile(sorted, 0.025)), High: max(value, quantile(sorted, 0.975))}
+}
+
+// about is the 95 % interval about a value over draws of random error: the
+// distances of the percentiles from their median. Noise that is left in a drawn
+// beat shifts all draws together, which is no doubt about the value.
+func about(value float64, sorted []float64) data.Interval {
+	if math.IsNaN(sorted[0]) {
+		return data.NoInterval()
+	}
+	shift := value - quantile(sorted, 0.5)
+	return data.Interval{Low: min(value, quantile(sorted, 0.025)+shift), High: max(value, quantile(sorted, 0.975)+shift)}
+}
+
+// ventricle fills the table of parameters.
+func (f *Forecast) ventricle(k support.Coupling, d *drawing, random, total []row) error {
+	ranges, err := freeOf(f.caseOf(), d.nominal.strokeVolume)
+	if err != nil {
+		return err
+	}
+	v := k.Ventricle
+	set := func(symbol, meaning, unit string, value float64, of func(*row) float64) {
+		e := data.Estimate{Value: value, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: noDraws}
+		if len(random) > 1 && len(total) > 1 {
+			doubt(&e, random, total, of)
+		}
+		if width := e.Total.Width(); width > math.Abs(value) {
+			e.Identified, e.Why = false, "it follows from what the traces do not fix"
+		}
+		f.Ventricle = append(f.Ventricle, VentricleParameter{symbol, meaning, unit, e, data.Estimated})
+	}
+	drawnFrom := func(symbol, meaning, unit string, value float64, r freeRange, o data.Origin, why string) {
+		f.Ventricle = append(f.Ventricle, VentricleParameter{symbol, meaning, unit, data.Estimate{
+			Value: value, Total: data.Interval{Low: r.low, High: r.high}, Random: data.NoInterval(), Identified: o == data.Measured, Why: why,
+		}, o})
+	}
+	const why = "not fixed by the traces; drawn evenly"
+	period := data.Exact(v.Period)
+	f.Ventricle = append(f.Ventricle, VentricleParameter{"T", "heart period", "s", period, data.Measured})
+	set("Emax", "end-systolic elastance", "mmHg/mL", v.Emax, func(r *row) float64 { return r.ventricle.Emax })
+	set("Emin", "diastolic elastance", "mmHg/mL", v.Emin, func(r *row) float64 { return r.ventricle.Emin })
+	set("Tes", "time to end systole", "s", v.Tes, func(r *row) float64 { return r.ventricle.Tes })
+	set("Tr", "time of relaxation, Tes/2", "s", v.Tr, func(r *row) float64 { return r.ventricle.Tr })
+	drawnFrom("EDV", "end-diastolic volume, native", "mL", d.choice.edv, ranges.edv, ranges.volumeOrigin, ranges.volumeWhy)
+	drawnFrom("V0", "volume at no pressure", "mL", d.choice.v0, ranges.v0, data.Assumed, why)
+	drawnFrom("Pfill", "filling pressure, native", "mmHg", d.choice.pfill, ranges.pfill, data.Assumed, why)
+	drawnFrom("Rmv", "mitral valve", "mmHg s/mL", d.choice.rmv, ranges.rmv, data.Assumed, why)
+	drawnFrom("Rav", "aortic valve", "mmHg s/mL", d.choice.rav, ranges.rav, data.Assumed, why)
+	slope := heart.RampSlope * d.slopeError
+	f.Ventricle = append(f.Ventricle, VentricleParameter{"slope", "fall of filling pressure with output", "mmHg s/mL", data.Estimate{
+		Value: heart.RampSlope, Total: data.Interval{Low: max(0, heart.RampSlope-slope), High: heart.RampSlope + slope}, Random: data.NoInterval(),
+		Identified: true, Why: fmt.Sprintf("from a ramp study of 35 patients, +-%.0f %%", 100*d.slopeError),
+	}, data.Assumed})
+	return nil
+}

@@ -1,0 +1,300 @@
+package study
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"afterbeat/data"
+	"afterbeat/data/casenote"
+	"afterbeat/data/unit"
+)
+
+// sections describe the forecast for a note.
+func (f Forecast) sections() []casenote.Section {
+	if f.Reason != "" {
+		return []casenote.Section{{
+			Title: "Forecast with a ventricle and a pump",
+			Words: []data.Text{data.Clean(fmt.Sprintf("There is no forecast: %s.", f.Reason))},
+		}}
+	}
+	return []casenote.Section{
+		f.ventricleSection(), f.pumpSection(), f.sweepSection(), f.valveSection(), f.powerSection(),
+		f.leaningSection(), f.publishedSection(), f.heldSection(),
+	}
+}
+
+func words(paragraphs ...string) []data.Text {
+	all := make([]data.Text, len(paragraphs))
+	for i, p := range paragraphs {
+		all[i] = data.Clean(p)
+	}
+	return all
+}
+
+// ventricleSection lists the ventricle, and how near its native state comes to
+// what was measured.
+func (f Forecast) ventricleSection() casenote.Section {
+	s := casenote.Section{
+		Title: "Forecast: the ventricle",
+		Words: words(
+			"A time-varying elastance, Plv = E(t) (V - V0), cosine in time, between two valves, that natively ejects into the fitted load what was measured: Emax, Emin and Tes are solved for stroke volume, ejection time and end-diastolic volume.",
+			"Arterial traces do not fix the rest. It is drawn evenly from the ranges below (assumptions), and every draw that meets the native state counts in the total intervals; the values stand for the middle of the ranges. An end-diastolic volume (--edv-ml) or an ejection fraction (--ef) narrows them.",
+		),
+	}
+	for _, p := range f.Ventricle {
+		s.Rows = append(s.Rows, casenote.Quantity(p.Symbol+", "+p.Meaning, p.Estimate, p.Unit, p.Origin))
+	}
+	t := casenote.Table{Header: []string{"native state, unit", "measured, in it", "of the model, in it", "model less measured, %"}, Foot: f.mismatchWords()}
+	for _, m := range f.Mismatch {
+		t.Rows = append(t.Rows, []casenote.Cell{
+			{Words: data.Clean(m.Quantity + ", " + m.Unit)}, plain(m.Measured), plain(m.Modelled), plain(rounded(m.Percent())),
+		})
+	}
+	s.Tables = append(s.Tables, t)
+	return s
+}
+
+// rounded drops what lies below the accuracy of a set-up, in percent.
+func rounded(percent float64) float64 {
+	if math.Abs(percent) < 0.01 {
+		return 0
+	}
+	return percent
+}
+
+// mismatchWords say whether the native state is reproduced.
+func (f Forecast) mismatchWords() string {
+	worst := f.Mismatch[0]
+	for _, m := range f.Mismatch {
+		if math.Abs(m.Percent()) > math.Abs(worst.Percent()) {
+			worst = m
+		}
+	}
+	if math.Abs(worst.Percent()) < 0.5 {
+		return "The model reproduces the native state."
+	}
+	return fmt.Sprintf("The largest difference is that of %s, %+.1f %%. Retained pulse below is that of the model against its own native state.", worst.Quantity, worst.Percent())
+}
+
+func (f Forecast) pumpSection() casenote.Section {
+	p := f.Pump
+	s := casenote.Section{
+		Title: "Forecast: the pump",
+		Words: words("H = a n^2 - b n Q - c Q|Q|, from the ventricle to the root, behind cannulas of resistance Rc and inertance Lc; n in 1000/min. The speed is held constant."),
+		Rows: []casenote.Row{
+			casenote.Words("set of coefficients", p.Name+" ("+p.Origin+")"),
+		},
+	}
+	for _, c := range []struct {
+		name, unit string
+		value      float64
+	}{
+		{"a", "mmHg min2/10^6", p.A},
+		{"b", "mmHg s min/(mL 1000)", p.B},
+		{"c", "mmHg s2/mL2", p.C},
+		{"Rc", "mmHg s/mL", p.Resistance},
+		{"Lc", "mmHg s2/mL", p.Inertance},
+	} {
+		s.Rows = append(s.Rows, casenote.Quantity(c.name, data.Exact(c.value), c.unit, data.Assumed))
+	}
+	s.Rows = append(s.Rows, casenote.Words("range of speed", fmt.Sprintf("%g to %g, 1000/min", p.Low, p.High)))
+	return s
+}
+
+// sweepSection has tables with a row a speed.
+func (f Forecast) sweepSection() casenote.Section {
+	return casenote.Section{
+		Title: "Forecast: native and supported, coupled",
+		Words: words(fmt.Sprintf("Ventricle, pump and load settle among themselves what each does; a forecast as far as arteries, heart rate and contractility stay as they are. Speed 0 is the native state of the model. Total intervals: %d draws of the fit's replicates, the ranges of the ventricle and the filling slope together; random ones: the replicates of random error alone, at the nominal ventricle.", f.Draws)),
+		Tables: []casenote.Table{
+			f.pulseTable(),
+			f.speedTable("mean pressure, mmHg", func(s *ForecastState) data.Estimate { return s.MeanPressure },
+				"output, L/min", func(s *ForecastState) data.Estimate { return times(s.Output, litresPerMinute) }),
+			f.speedTable("filling pressure, mmHg", func(s *ForecastState) data.Estimate { return s.FillingPress },
+				"valve open, ms a beat", func(s *ForecastState) data.Estimate { return times(s.ValveOpenTime, 1000) }),
+			f.speedTable("surplus energy, erg/cm3", func(s *ForecastState) data.Estimate { return s.SurplusEnergy },
+				"swing of pump flow, mL/s", func(s *ForecastState) data.Estimate { return s.PumpSwing }),
+		},
+	}
+}
+
+func (f Forecast) speedTable(first string, one func(*ForecastState) data.Estimate, second string, two func(*ForecastState) data.Estimate) casenote.Table {
+	t := casenote.Table{Header: []string{"speed, 1000/min", first, second}}
+	for i := range len(f.Speeds) + 1 {
+		s := f.state(i)
+		t.Rows = append(t.Rows, []casenote.Cell{{Words: data.Clean(fmt.Sprintf("%.4g", s.Speed))}, forecastCell(one(s)), forecastCell(two(s))})
+	}
+	return t
+}
+
+// pulseTable is the sweep in short: the pulse, and whether the valve opens.
+func (f Forecast) pulseTable() casenote.Table {
+	t := f.speedTable("pulse pressure, mmHg", func(s *ForecastState) data.Estimate { return s.PulsePressure },
+		"retained pulse, of native", func(s *ForecastState) data.Estimate { return s.RetainedPulse })
+	t.Header = append(t.Header, "valve opens")
+	for i := range t.Rows {
+		t.Rows[i] = append(t.Rows[i], casenote.Cell{Words: data.Clean(fmt.Sprintf("%.0f %%", 100*f.state(i).ValveOpenDraws))})
+	}
+	t.Foot = "Valve opens: the part of the draws in which the aortic valve opens at all."
+	return t
+}
+
+// powerSection has what enters the arteries beside what is spent.
+func (f Forecast) powerSection() casenote.Section {
+	milliwatt := func(of func(*ForecastState) data.Estimate) func(*ForecastState) data.Estimate {
+		return func(s *ForecastState) data.Estimate { return times(of(s), unit.MilliwattPerMmHgMLPerS) }
+	}
+	period := f.Comparison.Fit.Beats.Flow.Period.Duration()
+	t := casenote.Table{
+		Header: []string{"speed, 1000/min", "from ventricle, mW", "from pump, mW", "from filling, mW", "valves, cannulas, mW"},
+		Foot:   "Of the nominal ventricle, mean over the beat.",
+	}
+	for i := range len(f.Speeds) + 1 {
+		s, e := f.state(i), f.state(i).Energy
+		cells := []casenote.Cell{{Words: data.Clean(fmt.Sprintf("%.4g", s.Speed))}}
+		for _, energy := range []float64{e.Ventricle, e.Pump, e.Filling, e.Mitral + e.Aortic + e.Cannula} {
+			cells = append(cells, plain(math.Round(energy/period*unit.MilliwattPerMmHgMLPerS)))
+		}
+		t.Rows = append(t.Rows, cells)
+	}
+	return casenote.Section{
+		Title: "Forecast: power",
+		Words: words("What enters the arteries, and what ventricle and pump spend on the blood; the power that the pump's motor takes is more, and is not known here. A lumped load knows the pulsatile power that enters it, and not where in the body it is lost."),
+		Tables: []casenote.Table{
+			f.speedTable("power in, mW", milliwatt(func(s *ForecastState) data.Estimate { return s.InputPower }),
+				"pulsatile part, mW", milliwatt(func(s *ForecastState) data.Estimate { return s.PulsatilePower })),
+			t,
+		},
+	}
+}
+
+func forecastCell(e data.Estimate) casenote.Cell {
+	return casenote.Cell{Number: &casenote.Number{Estimate: e, Origin: data.Estimated}}
+}
+
+// times is an estimate in another unit.
+func times(e data.Estimate, factor float64) data.Estimate {
+	e.Value *= factor
+	for _, i := range []*data.Interval{&e.Total, &e.Random} {
+		i.Low, i.High = factor*i.Low, factor*i.High
+	}
+	return e
+}
+
+// valveSection has the valve limit.
+func (f Forecast) valveSection() casenote.Section {
+	return casenote.Section{
+		Title: "Forecast: the aortic valve",
+		Words: words("The valve limit is the lowest speed at which the valve stays shut over the whole beat. Below it the model opens in every beat; a patient near it opens in some."),
+		Rows:  []casenote.Row{casenote.Quantity("valve limit", f.ValveLimit, "1000/min", data.Estimated)},
+	}
+}
+
+// shownMove is the least change of the retained pulse that the note lists.
+const shownMove = 0.01
+
+// leaningSection says what the forecast depends on, and what would prove it
+// wrong.
+func (f Forecast) leaningSection() casenote.Section {
+	t := casenote.Table{Header: []string{"assumption", "change", "retained pulse", "retained pulse, difference"}}
+	small := 0
+	for _, s := range f.Sensitivity {
+		if math.Abs(s.Difference) < shownMove {
+			small++
+			continue
+		}
+		t.Rows = append(t.Rows, []casenote.Cell{
+			{Words: data.Clean(s.Assumption)}, {Words: data.Clean(s.Change)}, plain(s.RetainedPulse), plain(s.Difference),
+		})
+	}
+	if small > 0 {
+		t.Foot = fmt.Sprintf("%d further moves change it by less than %g.", small, shownMove)
+	}
+	middle := f.Speeds[f.Middle]
+	return casenote.Section{
+		Title: "Forecast: what it depends on",
+		Words: words(
+			fmt.Sprintf("Retained pulse at %.4g (1000/min), nominally %.3g, when one assumption is moved and the native state is met again; \"on support\" moves it on support only. The largest effect comes first.", middle.Speed, middle.RetainedPulse.Value),
+			"What matters most: "+f.heaviestWords()+".",
+			"What would prove it wrong: "+f.Disproof,
+			fmt.Sprintf("C at another mean pressure follows the aorta's curve (Langewouters 1984) at %d years of age, an assumption and an upper bound.", assumedAge),
+		),
+		Tables: []casenote.Table{t},
+	}
+}
+
+// heaviestWords name the two assumptions that matter most.
+func (f Forecast) heaviestWords() string {
+	var all []string
+	for _, s := range f.heaviest(2) {
+		all = append(all, fmt.Sprintf("%s (%s: retained pulse %.2f)", s.Assumption, s.Change, s.RetainedPulse))
+	}
+	return strings.Join(all, "; ")
+}
+
+func (f Forecast) publishedSection() casenote.Section {
+	t := casenote.Table{Header: []string{"number, unit", "at, 1000/min", "forecast, in it", "published", ""}}
+	var sources []string
+	number := map[string]int{}
+	for _, p := range f.Published {
+		if number[p.Source] == 0 {
+			sources = append(sources, fmt.Sprintf("[%d] %s", len(sources)+1, p.Source))
+			number[p.Source] = len(sources)
+		}
+		inside := "inside"
+		switch {
+		case p.Reason != "":
+			inside = p.Reason
+		case !p.Inside():
+			inside = "OUTSIDE"
+		}
+		t.Rows = append(t.Rows, []casenote.Cell{
+			{Words: data.Clean(strings.TrimSuffix(p.Name+", "+p.Unit, ", "))},
+			{Words: data.Clean(p.At)},
+			plain(p.Value),
+			{Words: data.Clean(fmt.Sprintf("%g to %g [%d]", p.Low, p.High, number[p.Source]))},
+			{Words: data.Clean(inside)},
+		})
+	}
+	return casenote.Section{
+		Title:  "Forecast: beside published ranges",
+		Words:  words("Ranges of patients with durable pumps, mean +- 2 SD or the interquartile range widened by half. They say what is plausible, not what is right. " + strings.Join(sources, "; ") + "."),
+		Tables: []casenote.Table{t},
+	}
+}
+
+// heldSection says what is the same at every speed, and what is not modelled.
+func (f Forecast) heldSection() casenote.Section {
+	s := casenote.Section{Title: "Forecast: held at every speed", Words: words(
+		"Mean flow and mean pressure are not matched: they follow from ventricle, pump and load. Filling pressure follows the line through the native state.",
+		"Not modelled: reflexes and autoregulation (resistance may change by 20 % either way: see what the forecast depends on), the right heart, the site of the graft, aortic regurgitation.",
+	)}
+	for _, h := range f.Held {
+		e := data.Estimate{Value: h.Value, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: "held"}
+		s.Rows = append(s.Rows, casenote.Quantity(h.Quantity, e, h.Unit, h.Origin))
+	}
+	return s
+}
+
+// shortRows are the forecast in a few lines: the middle speed.
+func (f Forecast) shortRows() []casenote.Row {
+	s := f.Speeds[f.Middle]
+	at := fmt.Sprintf(", forecast at %.4g/min", 1000*s.Speed)
+	return []casenote.Row{
+		casenote.Quantity("retained pulse"+at, s.RetainedPulse, "of native", data.Estimated),
+		casenote.Quantity("pulse pressure"+at, s.PulsePressure, "mmHg", data.Estimated),
+		casenote.Quantity("mean pressure"+at, s.MeanPressure, "mmHg", data.Estimated),
+		casenote.Quantity("valve stays shut from, forecast", f.ValveLimit, "1000/min", data.Estimated),
+	}
+}
+
+// shortWords say what the forecast rests on.
+func (f Forecast) shortWords() string {
+	volume := "an end-diastolic volume and filling drawn from assumed ranges"
+	if c := f.caseOf(); c.EDVML != nil || c.EF != nil {
+		volume = "the end-diastolic volume given and filling drawn from assumed ranges"
+	}
+	return fmt.Sprintf("The forecast couples a ventricle (set up to eject what was measured, with %s) and the pump %s (%s) to the fitted load, which is held. What matters most: %s. The yardstick has no ventricle and is no forecast. Each line has its place below.",
+		volume, f.Pump.Name, f.Pump.Origin, f.heaviestWords())
+}
