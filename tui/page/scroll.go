@@ -6,7 +6,7 @@ import (
 	"github.com/charmbracelet/bubbles/key"
 	tea "github.com/charmbracelet/bubbletea"
 
-	_ "afterbeat/tui/background"
+	"afterbeat/tui"
 )
 
 // Keys move through a page.
@@ -20,18 +20,18 @@ func NewKeys() Keys {
 		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
 	}
 	return Keys{
-		Down:     bind("j", "down", "j", "down"),
-		Up:       bind("k", "up", "k", "up"),
-		PageDown: bind("space", "page", " ", "pgdown"),
+		Down:     bind("j/down", "line down", "j", "down"),
+		Up:       bind("k/up", "line up", "k", "up"),
+		PageDown: bind("space/pgdown", "page", " ", "pgdown"),
 		PageUp:   bind("pgup", "page up", "pgup"),
-		First:    bind("g", "top", "g", "home"),
-		Last:     bind("G", "end", "G", "end"),
+		First:    bind("g/home", "top", "g", "home"),
+		Last:     bind("G/end", "bottom", "G", "end"),
 	}
 }
 
-// Bindings lists the keys, the most useful first.
+// Bindings lists the keys, the most useful first, line up and line down as one.
 func (k Keys) Bindings() []key.Binding {
-	return []key.Binding{k.Down, k.Up, k.PageDown, k.PageUp, k.First, k.Last}
+	return []key.Binding{tui.Pair("j/k/up/down", "line", k.Down, k.Up), k.PageDown, k.PageUp, k.First, k.Last}
 }
 
 // Scroll is a window on lines. The zero Scroll shows nothing.
