@@ -16,8 +16,8 @@ import (
 
 	"afterbeat/data"
 	"afterbeat/data/beat"
-	"afterbeat/data/casenote"
 	"afterbeat/data/casefile"
+	"afterbeat/data/casenote"
 	demofiles "afterbeat/data/demo"
 	"afterbeat/data/unit"
 	"afterbeat/tree/study"
