@@ -84,7 +84,9 @@ type stub struct {
 	typed  string
 	pasted int
 	got    []string
-	view   string // in place of the usual one
+	// pressed are the keys that came.
+	pressed []string
+	view    string // in place of the usual one
 }
 
 type ownMsg struct{ to string }
@@ -112,6 +114,7 @@ func (s stub) Update(msg tea.Msg) (tui.Screen, tea.Cmd) {
 	case ownMsg:
 		s.got = append(slices.Clone(s.got), msg.to)
 	case tea.KeyMsg:
+		s.pressed = append(slices.Clone(s.pressed), msg.String())
 		return s.press(msg)
 	}
 	return s, nil
