@@ -92,6 +92,12 @@ func (s Scroll) Window() []string {
 	return s.lines[s.top:min(s.top+s.rows, len(s.lines))]
 }
 
+// Lines is how many there are in all.
+func (s Scroll) Lines() int { return len(s.lines) }
+
+// Longer tells that there are more lines than the window shows.
+func (s Scroll) Longer() bool { return len(s.lines) > s.rows }
+
 // Top is the index of the first line shown.
 func (s Scroll) Top() int { return s.top }
 
