@@ -19,6 +19,7 @@ import (
 	"afterbeat/tree/study"
 	"afterbeat/tui"
 	"afterbeat/tui/screentest"
+	"afterbeat/tui/warnlist"
 )
 
 var area = tui.Area{Width: 80, Height: 20}
@@ -534,5 +535,29 @@ func BenchmarkView(b *testing.B) {
 	b.ReportAllocs()
 	for b.Loop() {
 		bench.View()
+	}
+}
+
+// Every key that a cure names is one of this screen.
+func TestCuresNameKeysThatWork(t *testing.T) {
+	bound := map[string]bool{}
+	for _, k := range demoed(t).Screen.Keys() {
+		for _, name := range k.Keys() {
+			bound[name] = true
+		}
+	}
+	for code, cure := range warnlist.Intake() {
+		named := 0
+		for word := range strings.FieldsSeq(cure) {
+			if len(word) == 1 || word == "enter" {
+				named++
+				if !bound[word] {
+					t.Errorf("%s: %q is no key here", code, word)
+				}
+			}
+		}
+		if named == 0 {
+			t.Errorf("%s: %q names no key", code, cure)
+		}
 	}
 }
