@@ -166,7 +166,7 @@ func (m Model) settle() Model {
 		m.said = data.Clean(choose(s.Intake.Ambiguous))
 		return m.start(tui.Intake)
 	case s.Beats == nil && s.Intake != nil && unchosen(s.Intake.Selection):
-		m.said = data.Clean("no column is known to be a pressure or a flow: j/k, then enter")
+		m.said = data.Clean("no column is known as a pressure or a flow: j/k, then e states its unit")
 		return m.start(tui.Intake)
 	case s.Fit != nil:
 		if m.said == (data.Text{}) {

@@ -2,6 +2,8 @@ package app
 
 import (
 	"context"
+	"fmt"
+	"math"
 	"slices"
 	"strings"
 	"testing"
@@ -77,7 +79,7 @@ func TestStartsWhereAPersonIsNeeded(t *testing.T) {
 				s.Intake = &in
 			}
 			return s, err
-		}, "[1 Intake]", "no column is known to be a pressure or a flow: j/k, then enter"},
+		}, "[1 Intake]", "no column is known as a pressure or a flow: j/k, then e states its unit"},
 		{"a choice that makes no sense", func(_ context.Context, s study.Study) (study.Study, error) {
 			return s, &study.ChoiceError{Key: "site.q", What: "\x1b is no site"}
 		}, "[1 Intake]", `Error: site of q: \x1b is no site`},
@@ -573,6 +575,34 @@ func TestAChoiceMadeAtTheStart(t *testing.T) {
 	d.wantView("it is chosen at the start, by --replicates or in the case file")
 	d.keys("1 i esc 3 x")
 	d.wantView("u takes the last change back")
+}
+
+// TestRecordingsThatNeedAPerson reads and computes in earnest.
+func TestRecordingsThatNeedAPerson(t *testing.T) {
+	for head, want := range map[string]string{
+		"time_s,p1_mmHg,p2_mmHg":          "two channels could be the pressure: j/k, then enter",
+		"time_s,p1_mmHg,p2_mmHg,p3_mmHg":  "three channels could be the pressure: j/k, then enter",
+		"time_s,abp_mmHg,q1_mL_s,q2_mL_s": "two channels could be the flow: j/k, then enter",
+		"time_s,a,b":                      "no column is known as a pressure or a flow: j/k, then e states its unit",
+	} {
+		var file strings.Builder
+		file.WriteString(head + "\n")
+		for i := range 1000 {
+			seconds := float64(i) / 100
+			value := fmt.Sprintf(",%.3f", 80+20*max(0, math.Sin(7*seconds)))
+			fmt.Fprintf(&file, "%.2f%s\n", seconds, strings.Repeat(value, strings.Count(head, ",")))
+		}
+		d := composed(t, true, func(o *Options) {
+			o.Case = casefile.Case{Recording: "x.csv"}
+			o.Load = func(_ context.Context, c casefile.Case) (study.Inputs, error) {
+				return study.Read(c, func(string) ([]byte, error) { return []byte(file.String()), nil })
+			}
+		})
+		d.wantView("[1 Intake]")
+		if got := d.status(); got != want {
+			t.Errorf("%s: status %q, want %q", head, got, want)
+		}
+	}
 }
 
 // TestAnOutflowPressureAboveTheMean computes in earnest.
