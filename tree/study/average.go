@@ -43,24 +43,47 @@ func (b Beats) averageSection() casenote.Section {
 // its reason below the table.
 func (b Beats) indexTable() casenote.Table {
 	t := casenote.Table{Header: []string{"index of the average beat"}}
-	var columns []indexColumn
+	var columns [][]IndexEstimate
 	add := func(name, unit string, a beat.Average) {
 		if a.Count > 0 {
 			t.Header = append(t.Header, name+", "+unit)
-			columns = append(columns, indexColumn{beat.Measure(a.Period), b.Ensemble.LeaveOut(len(columns)), 1 / a.Period.Rate})
+			columns = append(columns, b.Indices(len(columns)))
 		}
 	}
 	add("pressure", b.pressureUnit(), b.Pressure)
 	add("flow", b.flowUnit(), b.Flow)
-	for _, row := range indexRows() {
+	for i, row := range indexRows() {
 		cells := []casenote.Cell{{Words: data.Clean(row.label)}}
 		for _, c := range columns {
-			cells = append(cells, casenote.Cell{Number: &casenote.Number{Estimate: c.estimate(row), Origin: data.Measured}})
+			cells = append(cells, casenote.Cell{Number: &casenote.Number{Estimate: c[i].Estimate, Origin: data.Measured}})
 		}
 		t.Rows = append(t.Rows, cells)
 	}
 	t.Foot = "Intervals are of random error, from the scatter of blocks of beats; calibration is not in them."
 	return t
+}
+
+// IndexEstimate is an index of an average beat with its interval of random
+// error; Why is what there is to say of it, or why it is undefined.
+type IndexEstimate struct {
+	Label string
+	Index beat.Index // empty for mean, maximum, minimum and their difference
+	data.Estimate
+}
+
+// Indices are those of the average beat of a signal of the ensemble, in the order
+// of the note's table: signal 0 is the pressure, or the flow where there is none.
+func (b Beats) Indices(signal int) []IndexEstimate {
+	a := b.Flow
+	if signal == 0 {
+		a = b.some()
+	}
+	c := indexColumn{beat.Measure(a.Period), b.Ensemble.LeaveOut(signal), 1 / a.Period.Rate}
+	var out []IndexEstimate
+	for _, row := range indexRows() {
+		out = append(out, IndexEstimate{row.label, row.index, c.estimate(row)})
+	}
+	return out
 }
 
 // indexColumn is the measures of one signal's average beat, and those with one

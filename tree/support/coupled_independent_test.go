@@ -17,7 +17,8 @@ import (
 type plain struct {
 	Coupling
 	fill, speed float64
-	open        bool // the valve of wk4s
+	gap, lag    float64 // of the filling pressure above fill, in transients
+	open        bool    // the valve of wk4s
 }
 
 // root is what follows from the state v, pc, qp, qx at a time.
@@ -33,7 +34,11 @@ func (p *plain) root(t float64, y [4]float64) (plv, pao, qmv, qav, dqp, dqx floa
 		e = (1 + math.Cos(math.Pi*(t-v.Tes)/v.Tr)) / 2
 	}
 	plv = (v.Emin + (v.Emax-v.Emin)*e) * (y[0] - v.V0)
-	qmv = math.Max(0, (p.fill-plv)/v.Rmv)
+	fill := p.fill
+	if p.lag > 0 {
+		fill += p.gap * math.Exp(-t/p.lag)
+	}
+	qmv = math.Max(0, (fill-plv)/v.Rmv)
 	n, q := p.speed, y[2]
 	drive := p.Pump.A*n*n - p.Pump.B*n*q - p.Pump.C*q*math.Abs(q) - p.Pump.Resistance*q
 	running := n > 0

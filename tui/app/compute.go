@@ -56,7 +56,7 @@ type (
 // compute starts to compute what is missing of the study of the present case.
 func (m Model) compute() (Model, tea.Cmd) {
 	m = m.halt()
-	m.job.running, m.job.shown = true, ""
+	m.job.running, m.job.shown, m.defect = true, "", nil
 	m.job.ctx, m.job.stop = context.WithCancel(m.base)
 	tick := m.after(firstTick, tickMsg{m.job.number})
 	m, cmd := m.proceed()
@@ -128,7 +128,7 @@ func (m Model) computed(msg stageMsg) (Model, tea.Cmd) {
 		return m.broke(msg.err)
 	}
 	m.study = msg.study
-	return m.settle().further()
+	return m.arrived().settle().further()
 }
 
 // further shows what has been computed, and computes on.
@@ -147,12 +147,13 @@ func (m Model) broke(err error) (Model, tea.Cmd) {
 		return m, nil
 	}
 	m = m.start(tui.Intake)
-	if ambiguous := (*data.AmbiguousError)(nil); errors.As(err, &ambiguous) && ambiguous.Role != "" {
-		m.said = data.Clean("to settle first, on 1 Intake: what is the " + ambiguous.Role)
-		return m, nil
-	}
 	n := noticeOf(err)
 	n.computing = true
+	m.defect = &n
+	if n.question {
+		m.said = n.text
+		return m, nil
+	}
 	return m.complain(n), nil
 }
 
@@ -162,6 +163,10 @@ func (m Model) settle() Model {
 	switch s := m.study; {
 	case m.settled:
 	case s.Beats == nil && s.Intake != nil && s.Intake.Ambiguous != nil:
+		m.said = data.Clean(choose(s.Intake.Ambiguous))
+		return m.start(tui.Intake)
+	case s.Beats == nil && s.Intake != nil && unchosen(s.Intake.Selection):
+		m.said = data.Clean("no column is known as a pressure or a flow: j/k, then e states its unit")
 		return m.start(tui.Intake)
 	case s.Fit != nil:
 		if m.said == (data.Text{}) {
@@ -175,6 +180,9 @@ func (m Model) settle() Model {
 	return m
 }
 
+// unchosen tells that no column was taken for anything.
+func unchosen(s data.Selection) bool { return max(s.Pressure, s.Flow, s.Velocity) < 0 }
+
 // start opens the stage to start on, unless the user has moved.
 func (m Model) start(s tui.Stage) Model {
 	if !m.settled && !m.moved {
@@ -187,7 +195,7 @@ func (m Model) start(s tui.Stage) Model {
 // cancel stops the computing at the user's wish.
 func (m Model) cancel() Model {
 	m = m.halt()
-	m.said = data.Clean("stopped; the digit of a stage in ( ) computes on")
+	m.said = data.Clean("stopped; the digit of a stage in ( ) goes on")
 	if m.job.stage == study.StageForecast {
 		m.said = data.Clean("stopped; 5 or 6 computes the forecast")
 	}

@@ -2,10 +2,12 @@ package app
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 	"unicode/utf8"
 
 	"github.com/charmbracelet/bubbles/key"
+	tea "github.com/charmbracelet/bubbletea"
 	"github.com/charmbracelet/x/ansi"
 
 	"afterbeat/data"
@@ -100,7 +102,7 @@ func (m Model) body() []string {
 	if m.helping {
 		rows = m.helpRows()
 		rows = rows[min(m.scroll, len(rows)):]
-	} else {
+	} else if rows = m.why(m.open).rows(m); rows == nil {
 		rows = strings.Split(m.screens[m.open].View(), "\n")
 	}
 	rows = append(rows[:min(len(rows), a.Height)], make([]string, max(a.Height-len(rows), 0))...)
@@ -131,16 +133,22 @@ func (m Model) keysNow() (always, more []key.Binding) {
 	case m.typing():
 		return nil, m.screens[m.open].Keys()
 	case m.offer != nil:
-		return []key.Binding{keys.resume, keys.ignore, keys.interrupt}, nil
+		return []key.Binding{keys.resume, keys.forget, keys.quit, keys.interrupt}, nil
 	case m.small():
 		return []key.Binding{keys.quit}, nil
 	}
 	most, others := m.everywhere()
-	more = append(m.screens[m.open].Keys(), others...)
-	if len(m.errors) > 0 {
-		more = append([]key.Binding{keys.answer}, more...)
+	return most, append(m.ofScreen(), others...)
+}
+
+// ofScreen are the keys of the open screen; esc closes an error first.
+func (m Model) ofScreen() []key.Binding {
+	all := slices.Clone(m.screens[m.open].Keys())
+	if len(m.errors) == 0 {
+		return all
 	}
-	return most, more
+	all = slices.DeleteFunc(all, func(b key.Binding) bool { return key.Matches(tea.KeyMsg{Type: tea.KeyEsc}, b) })
+	return append([]key.Binding{keys.answer}, all...)
 }
 
 // listed is as many keys with their words as fit into width before end, which
@@ -169,26 +177,6 @@ func listed(bindings []key.Binding, width int, end string) string {
 		b.WriteString("  ")
 	}
 	return b.String() + end
-}
-
-// smallRows say what to do in a terminal that is too small.
-func (m Model) smallRows() []string {
-	rows := layout.Wrap(data.Clean(casenote.Caution), m.size.Width)
-	words := func(s string) {
-		if s != "" {
-			rows = append(rows, layout.Wrap(layout.Clean(s, m.theme), m.size.Width)...)
-		}
-	}
-	words(fmt.Sprintf("This terminal is %dx%d; the screens need %dx%d.", m.size.Width, m.size.Height, leastWidth, leastHeight))
-	if m.options.Screenless.Width() > 0 {
-		words("Without a screen: " + m.options.Screenless.String())
-	}
-	rows = append(rows, m.errorRows(m.size.Width)...)
-	if m.naming || m.leaving == asks || m.offer != nil {
-		words(m.status(leastWidth * 2))
-	}
-	words(m.keyRow(leastWidth * 2)) // wrapped, not cut
-	return rows
 }
 
 // faultRows stand where a frame could not be made.

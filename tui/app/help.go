@@ -13,14 +13,20 @@ import (
 
 // helpRows is the help, made from the keys that work now.
 func (m Model) helpRows() []string {
-	rows := []string{fmt.Sprintf("Keys of %d %s", m.open, m.open)}
-	rows = append(rows, keyRows(m.screens[m.open].Keys(), m.theme)...)
+	var rows []string
+	if m.said.Width() > 0 {
+		rows = append(m.paragraph("The last message", m.said.String())[1:], "")
+	}
+	rows = append(rows, fmt.Sprintf("Keys of %d %s", m.open, m.open))
+	rows = append(rows, keyRows(m.ofScreen(), m.theme)...)
 	rows = append(rows, "", "Keys on every stage")
 	most, others := m.everywhere()
 	rows = append(rows, keyRows(append(most, others...), m.theme)...)
-	rows = append(rows, m.paragraph("The last message", m.said.String())...)
+	if words := assumed(m.study); words != m.said {
+		rows = append(rows, m.paragraph("What is used, and what was assumed", words.String())...)
+	}
 	for _, s := range tui.Stages() {
-		rows = append(rows, m.paragraph(fmt.Sprintf("Why (%d %s) is not possible yet", s, s), s.Missing(m.study))...)
+		rows = append(rows, m.paragraph(fmt.Sprintf("Why (%d %s) is not possible yet", s, s), m.why(s).words)...)
 	}
 	return rows
 }

@@ -57,6 +57,7 @@ func (m Model) redo() (Model, tea.Cmd) {
 func (m Model) become(c casefile.Case, said data.Text) (Model, tea.Cmd) {
 	m.present, m.said = c, said
 	m.changes++
+	m.defect = nil
 	m.errors = slices.DeleteFunc(slices.Clone(m.errors), func(n notice) bool { return n.computing })
 	if m.reading.fits(c) {
 		m.study = m.study.With(c)

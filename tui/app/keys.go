@@ -2,6 +2,7 @@ package app
 
 import (
 	"github.com/charmbracelet/bubbles/key"
+	tea "github.com/charmbracelet/bubbletea"
 
 	"afterbeat/tui"
 )
@@ -18,7 +19,7 @@ type keyMap struct {
 	cancel, answer       key.Binding
 	confirm, back        key.Binding // of the name of a note
 	first, discard, stay key.Binding // of the question on quitting
-	resume, ignore       key.Binding // of the question on starting
+	resume, forget       key.Binding // of the question on starting
 	up, down             key.Binding // of the help
 	pageUp, pageDown     key.Binding
 	top, bottom, close   key.Binding
@@ -38,14 +39,14 @@ var keys = keyMap{
 	interrupt: key.NewBinding(key.WithKeys("ctrl+c"), key.WithHelp("ctrl+c", "leave at once")),
 	suspend:   key.NewBinding(key.WithKeys("ctrl+z"), key.WithHelp("ctrl+z", "to the shell")),
 	cancel:    key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "stop computing")),
-	answer:    key.NewBinding(key.WithKeys("esc", "enter"), key.WithHelp("esc", "close error")),
+	answer:    key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "close error")),
 	confirm:   key.NewBinding(key.WithKeys("enter"), key.WithHelp("enter", "save")),
 	back:      key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "back")),
 	first:     key.NewBinding(key.WithKeys("s"), key.WithHelp("s", "save the note first")),
 	discard:   key.NewBinding(key.WithKeys("y"), key.WithHelp("y", "discard and quit")),
 	stay:      key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "stay")),
 	resume:    key.NewBinding(key.WithKeys("r"), key.WithHelp("r", "resume")),
-	ignore:    key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "ignore")),
+	forget:    key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "discard")),
 	up:        key.NewBinding(key.WithKeys("up", "k"), key.WithHelp("up/k", "up")),
 	down:      key.NewBinding(key.WithKeys("down", "j"), key.WithHelp("down/j", "down")),
 	pageUp:    key.NewBinding(key.WithKeys("pgup"), key.WithHelp("pgup", "page up")),
@@ -83,7 +84,7 @@ func (m Model) everywhere() (most, others []key.Binding) {
 	undo, redo, cancel, suspend := keys.undo, keys.redo, keys.cancel, keys.suspend
 	undo.SetEnabled(len(m.past) > 0)
 	redo.SetEnabled(len(m.future) > 0)
-	cancel.SetEnabled(m.job.running)
+	cancel.SetEnabled(m.job.running && len(m.errors) == 0 && !m.screenWants(tea.KeyMsg{Type: tea.KeyEsc}))
 	suspend.SetEnabled(!m.leader)
 	return []key.Binding{keys.stages(), keys.save, keys.help, keys.quit},
 		[]key.Binding{cancel, undo, redo, keys.next, keys.previous, keys.ascii, keys.redraw, suspend, keys.interrupt}

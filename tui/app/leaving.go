@@ -116,12 +116,17 @@ func (m Model) keep() (Model, tea.Cmd) {
 // store is the command that keeps the choices, or forgets them where nothing
 // is unsaved.
 func (m Model) store(last bool) tea.Cmd {
-	to, order, c, unsaved := m.options.State, m.changes, m.present, m.unsaved()
+	to, order, c, unsaved, answered := m.options.State, m.changes, m.present, m.unsaved(), m.answered
 	return func() tea.Msg {
+		write := to.Clear
 		if unsaved {
-			return keptMsg{to.Keep(order, c), last}
+			write = func(order int) error { return to.Keep(order, c) }
 		}
-		return keptMsg{to.Clear(order), last}
+		err := write(order)
+		if err == nil && answered { // not before the choices taken over are kept again
+			err = to.Drop()
+		}
+		return keptMsg{err, last}
 	}
 }
 
@@ -149,25 +154,34 @@ func (m Model) lookForOffer() tea.Cmd {
 }
 
 // offered offers choices that differ from those of the start. They are about
-// the recording of the start, whatever they say.
+// the recording of the start, whatever they say. Those that do not differ need
+// no answer.
 func (m Model) offered(msg offerMsg) Model {
 	msg.found.Recording = m.present.Recording
-	if msg.ok && m.changes == 0 && !same(msg.found, m.present) {
+	switch {
+	case !msg.ok || m.changes > 0:
+	case same(msg.found, m.present):
+		m.answered = true
+	default:
 		m.offer = &offer{msg.found, msg.when}
 	}
 	return m
 }
 
-// offerKey answers the question whether to resume.
+// offerKey answers the question whether to resume. Whoever leaves instead is
+// asked again at the next start.
 func (m Model) offerKey(msg tea.KeyMsg) (Model, tea.Cmd) {
 	switch {
 	case key.Matches(msg, keys.resume):
 		found := m.offer.found
-		m.offer = nil
+		m.offer, m.answered = nil, true
 		return m.change(data.Clean("the choices of the interrupted run"), found)
-	case key.Matches(msg, keys.ignore):
-		m.offer = nil
-		m.said = data.Text{}
+	case key.Matches(msg, keys.forget):
+		m.offer, m.answered = nil, true
+		m.said = data.Clean("the choices of the interrupted run are discarded")
+		return m, m.store(false)
+	case key.Matches(msg, keys.quit):
+		return m.quit()
 	}
 	return m, nil
 }

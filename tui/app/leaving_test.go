@@ -2,6 +2,7 @@ package app
 
 import (
 	"io/fs"
+	"os"
 	"strings"
 	"testing"
 
@@ -39,9 +40,19 @@ func TestSaveANote(t *testing.T) {
 	d.keys("s")
 	d.wantStatus("save the note as: demo-2.note.txt|")
 	d.keys("esc q")
-	if o := d.outcome(); o.String() != "note saved to demo.note.txt" {
+	if o := d.outcome(); o.String() != "note saved to demo.note.txt in "+here(t) {
 		t.Errorf("%q", o)
 	}
+}
+
+// here is the folder that the tests run in, where notes without a folder go.
+func here(t *testing.T) string {
+	t.Helper()
+	folder, err := os.Getwd()
+	if err != nil {
+		t.Fatal(err)
+	}
+	return folder
 }
 
 func TestAnExistingFileIsNotTouched(t *testing.T) {
@@ -85,15 +96,15 @@ func TestQuit(t *testing.T) {
 		{"q", "nothing was saved"},
 		{"1 i u q", "nothing was saved"},
 		{"1 i q y", "nothing was saved; the choices made since are discarded"},
-		{"1 i q s enter", "note saved to demo.note.txt"},
+		{"1 i q s enter", "note saved to demo.note.txt in HERE"},
 		{"1 i q esc u q", "nothing was saved"},
 		{"1 i q s esc q y", "nothing was saved; the choices made since are discarded"},
-		{"s enter 1 i q y", "note saved to demo.note.txt; the choices made since are discarded"},
-		{"s enter 1 i q s enter", "note saved to demo-2.note.txt"},
+		{"s enter 1 i q y", "note saved to demo.note.txt in HERE; the choices made since are discarded"},
+		{"s enter 1 i q s enter", "note saved to demo-2.note.txt in HERE"},
 	} {
 		d := started(t, nil)
 		d.keys(c.keys)
-		if got := d.outcome().String(); got != c.want {
+		if got := strings.ReplaceAll(d.outcome().String(), here(t), "HERE"); got != c.want {
 			t.Errorf("%s: %q, want %q", c.keys, got, c.want)
 		}
 	}
@@ -142,7 +153,7 @@ func TestChoicesAreKeptAndOffered(t *testing.T) {
 	changed := d.m.present
 	d = keeping(t, folder)
 	d.wantStatus("Choices of an interrupted run of ")
-	d.keys("2 d s q ?")
+	d.keys("2 d s ?")
 	d.wantView("[3 Fit]")
 	d.keys("r")
 	if !same(d.m.present, changed) {
@@ -158,15 +169,86 @@ func TestChoicesAreKeptAndOffered(t *testing.T) {
 	}
 }
 
-func TestAnOfferThatIsIgnored(t *testing.T) {
+func TestAnOfferThatIsNotAnsweredStays(t *testing.T) {
+	for name, leave := range map[string]tea.Msg{"q": keyOf("q"), "ctrl+c": keyOf("ctrl+c"), "hang-up": SignalMsg{}} {
+		folder := t.TempDir()
+		d := keeping(t, folder)
+		d.keys("1 i")
+		d.tick()
+		left := d.m.options.State.Path()
+		d = keeping(t, folder)
+		d.wantView("r resume  esc discard  q quit  ctrl+c leave at once")
+		d.send(leave)
+		d.run()
+		if got := d.outcome().String(); !strings.Contains(got, "stay on offer") {
+			t.Errorf("%s: %q", name, got)
+		}
+		if _, err := os.Stat(left); err != nil {
+			t.Errorf("%s: %v", name, err)
+		}
+		keeping(t, folder).wantStatus("Choices of an interrupted run of ")
+	}
+	folder := t.TempDir()
+	d := keeping(t, folder)
+	d.keys("1 i")
+	d.tick()
+	d = keeping(t, folder)
+	if _, err := d.m.finish(tea.ErrProgramKilled); err != nil {
+		t.Fatal(err)
+	}
+	keeping(t, folder).wantStatus("Choices of an interrupted run of ")
+}
+
+func TestASecondSessionLeavesTheFileOfTheFirst(t *testing.T) {
+	folder := t.TempDir()
+	first, second := keeping(t, folder), keeping(t, folder)
+	first.keys("1 i")
+	first.tick()
+	second.keys("2 d")
+	second.tick()
+	second.keys("q y")
+	second.outcome()
+	if _, err := os.Stat(first.m.options.State.Path()); err != nil {
+		t.Error(err)
+	}
+	if _, err := os.Stat(second.m.options.State.Path()); err == nil {
+		t.Error("the second session leaves its file behind")
+	}
+}
+
+func TestChoicesTakenOverAreInOneFile(t *testing.T) {
+	folder := t.TempDir()
+	d := keeping(t, folder)
+	d.keys("1 i")
+	d.tick()
+	d = keeping(t, folder)
+	d.keys("r")
+	files := func() int {
+		list, err := os.ReadDir(folder)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return len(list)
+	}
+	if files() != 1 {
+		t.Error("the choices are gone before they are kept again")
+	}
+	d.tick()
+	if _, err := os.Stat(d.m.options.State.Path()); err != nil || files() != 1 {
+		t.Errorf("%d files, %v", files(), err)
+	}
+}
+
+func TestAnOfferThatIsDiscarded(t *testing.T) {
 	folder := t.TempDir()
 	d := keeping(t, folder)
 	d.keys("1 i")
 	d.tick()
 	d = keeping(t, folder)
 	d.keys("esc")
-	if len(d.m.present.Invert) != 0 || d.m.offer != nil {
-		t.Error("not ignored")
+	d.wantStatus("the choices of the interrupted run are discarded")
+	if _, _, ok := d.m.options.State.Kept(); ok || len(d.m.present.Invert) != 0 || d.m.offer != nil {
+		t.Error("not discarded")
 	}
 	d.keys("1 l u")
 	d.tick()

@@ -36,7 +36,9 @@ type Model struct {
 	settled bool // the stage to start on is decided
 
 	said   data.Text // what the last key did
+	await  await     // what the status line says is still being computed
 	errors []notice  // unanswered, the oldest first
+	defect *notice   // why computing could not go on
 
 	naming  bool // the name of a note is asked for
 	name    field.Model
@@ -46,7 +48,9 @@ type Model struct {
 	helping bool
 	scroll  int // of the help
 	offer   *offer
-	keeping bool // choices will be kept in a moment
+	// answered tells that the choices which were found may be removed.
+	answered bool
+	keeping  bool // choices will be kept in a moment
 
 	outcome Outcome
 	failed  error // why nothing could be opened
@@ -137,20 +141,19 @@ func (m Model) openStage(s tui.Stage) (Model, tea.Cmd) {
 	if s < tui.Intake || s > tui.Note {
 		return m, nil
 	}
-	m.open, m.moved = s, true
-	why := s.Missing(m.study)
-	m.said = data.Text{}
-	if why == "" && !(s >= tui.Support && m.study.Pending() == study.StageForecast) {
+	m.open, m.moved, m.said = s, true, data.Text{}
+	missing := s.Missing(m.study) != ""
+	forecast := s >= tui.Support && m.study.Pending() == study.StageForecast
+	if !missing && !forecast {
 		return m, nil
 	}
-	if why != "" {
-		m.said = data.Clean(s.String() + ": " + why)
+	if m.idle() && (m.defect == nil || !m.reading.fits(m.present)) {
+		return m.compute()
 	}
-	if m.job.running || m.study.Pending() == study.StageDone {
+	if !missing {
 		return m, nil
 	}
-	m.said = data.Text{}
-	return m.compute()
+	return m.saying(s, s.String()+": "), nil
 }
 
 // unsaved tells whether choices were made that no saved note has.

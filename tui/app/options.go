@@ -33,10 +33,12 @@ type Options struct {
 
 // Outcome is how the screens ended.
 type Outcome struct {
+	Folder      string // of the note; empty where it is not known
 	Saved       string // the note saved last; empty where none was
 	Unsaved     bool   // choices were made that no saved note has
 	Interrupted bool   // by a signal, ctrl+c, or the loss of the terminal
 	Kept        string // the recovery file; empty where there is none
+	Waiting     bool   // choices of an interrupted run were not answered for
 }
 
 // String is the line for the normal screen: what was saved and where.
@@ -44,6 +46,9 @@ func (o Outcome) String() string {
 	s := "nothing was saved"
 	if o.Saved != "" {
 		s = fmt.Sprintf("note saved to %s", data.Clean(o.Saved))
+		if o.Folder != "" {
+			s += fmt.Sprintf(" in %s", data.Clean(o.Folder))
+		}
 	}
 	if o.Interrupted {
 		s = "interrupted; " + s
@@ -53,6 +58,8 @@ func (o Outcome) String() string {
 		s += "; the choices made since are offered at the next start"
 	case o.Unsaved:
 		s += "; the choices made since are discarded"
+	case o.Waiting:
+		s += "; the choices of the interrupted run stay on offer"
 	}
 	return s
 }

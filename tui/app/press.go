@@ -82,7 +82,9 @@ func (m Model) one(msg tea.KeyMsg) (Model, tea.Cmd) {
 	case m.small():
 		return m, nil
 	}
-	m.said = data.Text{}
+	if !key.Matches(msg, keys.help) { // which shows it in full
+		m.said = data.Text{}
+	}
 	return m.browse(msg)
 }
 

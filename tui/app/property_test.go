@@ -1,6 +1,7 @@
 package app
 
 import (
+	"os"
 	"slices"
 	"strings"
 	"testing"
@@ -129,12 +130,12 @@ func checkBytes(rt *rapid.T, row string, ascii bool) {
 
 // TestUnsavedWorkIsNeverLost makes choices, ends in any way, and starts again.
 func TestUnsavedWorkIsNeverLost(t *testing.T) {
-	folder := t.TempDir()
 	rapid.Check(t, func(rt *rapid.T) {
-		st := state.New(folder, "demo")
-		if err := state.New(folder, "demo").Remove(); err != nil {
+		folder, err := os.MkdirTemp(t.TempDir(), "")
+		if err != nil {
 			rt.Fatal(err)
 		}
+		st := state.New(folder, "demo")
 		d := started(t, func(o *Options) { o.State = st })
 		for range rapid.IntRange(0, 12).Draw(rt, "keys") {
 			d.send(keyOf(rapid.SampledFrom(strings.Fields("1 2 i d l u ctrl+r s enter esc ? /")).Draw(rt, "key")))

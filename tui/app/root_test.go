@@ -2,6 +2,8 @@ package app
 
 import (
 	"context"
+	"fmt"
+	"math"
 	"slices"
 	"strings"
 	"testing"
@@ -58,10 +60,29 @@ func TestStartsWhereAPersonIsNeeded(t *testing.T) {
 		{"a choice", func(_ context.Context, s study.Study) (study.Study, error) {
 			s.Intake = &study.Intake{}
 			return s, &data.AmbiguousError{Role: "pressure", Names: []data.Text{data.Clean("a"), data.Clean("b\x1b")}, Flag: "--pressure"}
-		}, "[1 Intake]", "to settle first, on 1 Intake: what is the pressure"},
+		}, "[1 Intake]", "two channels could be the pressure: j/k, then enter"},
+		{"a choice that is known early", func(ctx context.Context, s study.Study) (study.Study, error) {
+			s, err := revealed(ctx, s)
+			if s.Beats == nil {
+				in := *s.Intake
+				in.Selection = data.Selection{Pressure: -1, Flow: -1, Velocity: -1}
+				in.Ambiguous = &data.AmbiguousError{Role: "flow", Names: make([]data.Text, 5)}
+				s.Intake = &in
+			}
+			return s, err
+		}, "[1 Intake]", "5 channels could be the flow: j/k, then enter"},
+		{"no column chosen", func(ctx context.Context, s study.Study) (study.Study, error) {
+			s, err := revealed(ctx, s)
+			if s.Beats == nil {
+				in := *s.Intake
+				in.Selection = data.Selection{Pressure: -1, Flow: -1, Velocity: -1}
+				s.Intake = &in
+			}
+			return s, err
+		}, "[1 Intake]", "no column is known as a pressure or a flow: j/k, then e states its unit"},
 		{"a choice that makes no sense", func(_ context.Context, s study.Study) (study.Study, error) {
 			return s, &study.ChoiceError{Key: "site.q", What: "\x1b is no site"}
-		}, "[1 Intake]", `Error: --site q: \x1b is no site`},
+		}, "[1 Intake]", `Error: site of q: \x1b is no site`},
 		{"no pulse", func(ctx context.Context, s study.Study) (study.Study, error) {
 			s, err := revealed(ctx, s)
 			if s.Beats != nil && s.Fit == nil {
@@ -321,7 +342,11 @@ func TestProgressAndCancel(t *testing.T) {
 	}
 	d.wantStatus("stopped")
 	d.keys("s")
-	d.wantStatus("once everything is computed")
+	d.wantStatus("no note yet: stopped: press 6 to go on")
+	d.keys("?")
+	d.wantView("no note yet: stopped: press 6 to go on")
+	d.keys("esc")
+	d.wantView("Fit: nothing to show yet\nstopped: press 3 to go on")
 	d.keys("5")
 	if d.m.study.Comparison == nil {
 		t.Error("the digit of a stage that is missing does not compute on")
@@ -360,21 +385,23 @@ func TestErrorsStayUntilAnswered(t *testing.T) {
 	}
 	d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
 	d.do(d.m.Init())
-	d.wantView(`Error: --site abp: "x" is no site`)
+	d.wantView(`Error: site of abp: "x" is no site`)
 	d.wantView("Hint: sites: root, lvot")
 	if d.m.study.Fit != nil || d.m.study.Beats == nil {
 		t.Error("the study does not stay as far as it came")
 	}
 	d.keys("1 2 e ?")
-	d.wantView("Error (1 of 2): --site")
+	d.wantView("Error (1 of 2): site of")
 	d.keys("esc esc")
 	d.wantView(`Error: beats: that is not possible\x1b[2J`)
 	d.keys("enter")
+	d.wantView("Error: beats")
+	d.keys("esc")
 	if strings.Contains(d.m.View(), "Error") {
 		t.Error(d.m.View())
 	}
 	d.keys("i")
-	d.wantView("Error: --site")
+	d.wantView("Error: site of")
 	fails = false
 	d.keys("i")
 	if strings.Contains(d.m.View(), "Error") || d.m.study.Fit == nil {
@@ -410,6 +437,7 @@ func TestAFaultIsAPlaceWithoutAValue(t *testing.T) {
 	d.m.next = func(context.Context, study.Study) (study.Study, error) { panic(secret) }
 	d.keys("i")
 	d.wantView("fault at app.Test")
+	d.m.next = revealed
 	d.keys("esc u")
 	d.keys("3 V")
 	d.wantView("Nothing is lost.")
@@ -531,5 +559,190 @@ func TestStoppedForecastGoesOn(t *testing.T) {
 		if (d.m.study.Forecast != nil) != c.on {
 			t.Errorf("after %s there is a forecast: %v", c.digit, !c.on)
 		}
+	}
+}
+
+// ending is a study whose fit fails.
+func ending(err error) func(context.Context, study.Study) (study.Study, error) {
+	return func(ctx context.Context, s study.Study) (study.Study, error) {
+		if s.Pending() == study.StageFit {
+			return s, err
+		}
+		return revealed(ctx, s)
+	}
+}
+
+func TestAFailureStaysOnThePage(t *testing.T) {
+	d := newDriver(t, nil)
+	d.m.next = ending(errChoice)
+	d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+	d.do(d.m.Init())
+	d.keys("esc 5")
+	d.wantStatus(`Support: 1 Intake: site of abp: "x" is no site`)
+	d.keys("x") // a key of nobody
+	d.wantView("Support: nothing to show yet\n1 Intake: site of abp: \"x\" is no site\nsites: root, lvot")
+	d.keys("s")
+	d.wantStatus("no note yet: 1 Intake: site of abp")
+	d.keys("1")
+	if strings.Contains(d.m.View(), "nothing to show") || strings.Contains(d.m.View(), "Error") {
+		t.Error("the failure covers the stage where it is cured")
+	}
+	d.m.next = revealed
+	d.keys("i 5")
+	if strings.Contains(d.m.View(), "nothing to show") || d.m.study.Comparison == nil {
+		t.Error("a change does not cure it")
+	}
+}
+
+func TestAChoiceMadeAtTheStart(t *testing.T) {
+	d := newDriver(t, nil)
+	d.m.next = ending(&study.ChoiceError{Key: "replicates", What: "0 are too few", Hint: "for instance --replicates 1000"})
+	d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+	d.do(d.m.Init())
+	d.wantView("Error: replicates: 0 are too few")
+	d.wantView("Hint: for instance replicates 1000")
+	d.keys("esc 3 x")
+	d.wantView("Fit: nothing to show yet\nreplicates: 0 are too few")
+	d.wantView("it is chosen at the start, by --replicates or in the case file")
+	d.keys("1 i esc 3 x")
+	d.wantView("u takes the last change back")
+}
+
+// TestRecordingsThatNeedAPerson reads and computes in earnest.
+func TestRecordingsThatNeedAPerson(t *testing.T) {
+	for head, want := range map[string]string{
+		"time_s,p1_mmHg,p2_mmHg":          "two channels could be the pressure: j/k, then enter",
+		"time_s,p1_mmHg,p2_mmHg,p3_mmHg":  "three channels could be the pressure: j/k, then enter",
+		"time_s,abp_mmHg,q1_mL_s,q2_mL_s": "two channels could be the flow: j/k, then enter",
+		"time_s,a,b":                      "no column is known as a pressure or a flow: j/k, then e states its unit",
+	} {
+		var file strings.Builder
+		file.WriteString(head + "\n")
+		for i := range 1000 {
+			seconds := float64(i) / 100
+			value := fmt.Sprintf(",%.3f", 80+20*max(0, math.Sin(7*seconds)))
+			fmt.Fprintf(&file, "%.2f%s\n", seconds, strings.Repeat(value, strings.Count(head, ",")))
+		}
+		d := composed(t, true, func(o *Options) {
+			o.Case = casefile.Case{Recording: "x.csv"}
+			o.Load = func(_ context.Context, c casefile.Case) (study.Inputs, error) {
+				return study.Read(c, func(string) ([]byte, error) { return []byte(file.String()), nil })
+			}
+		})
+		d.wantView("[1 Intake]")
+		if got := d.status(); got != want {
+			t.Errorf("%s: status %q, want %q", head, got, want)
+		}
+	}
+}
+
+// TestAnOutflowPressureAboveTheMean computes in earnest.
+func TestAnOutflowPressureAboveTheMean(t *testing.T) {
+	d := composed(t, true, func(o *Options) {
+		above := 77.0
+		o.Case.OutflowPressure = &above
+	})
+	d.wantView("[1 Intake]")
+	d.wantView("Error: outflow pressure: ")
+	d.keys("esc 5")
+	d.wantView("Support: 1 Intake: outflow pressure: ")
+	if v := d.m.View(); strings.Contains(v, "--outflow") || strings.Contains(v, "still") {
+		t.Error(v)
+	}
+}
+
+func TestTheWordsOfAChoice(t *testing.T) {
+	for _, c := range []struct{ key, what, want string }{
+		{"outflow_pressure", "a", "outflow pressure: a"},
+		{"diameter_cm", "a", "diameter: a"},
+		{"angle_deg", "a", "angle: a"},
+		{"site.abp_mmHg", "b-c --x", "site of abp_mmHg: b-c x"},
+		{"scale.p", "--error flow=10% or --diameter-cm", "scale of p: error flow=10% or diameter cm"},
+	} {
+		if got := inWords(&study.ChoiceError{Key: c.key, What: c.what}); got != c.want {
+			t.Errorf("%q, want %q", got, c.want)
+		}
+	}
+}
+
+func TestAWordOfComputingGoesWhenItIsDone(t *testing.T) {
+	d := newDriver(t, nil)
+	d.hold = true
+	d.send(tea.WindowSizeMsg{Width: 80, Height: 24})
+	d.send(startMsg{})
+	d.keys("5")
+	d.wantStatus("Support: still being computed")
+	for d.m.study.Fit == nil {
+		d.step(0)
+	}
+	d.wantStatus("Support: still being computed")
+	d.run()
+	if strings.Contains(d.m.View(), "still") {
+		t.Errorf("status %q", d.status())
+	}
+	d.keys("1 i s")
+	d.wantStatus("no note yet: still being computed")
+	d.run()
+	if d.status() != "" {
+		t.Errorf("status %q", d.status())
+	}
+}
+
+func TestWhatWasAssumedCanBeReadInFull(t *testing.T) {
+	d := newDriver(t, nil)
+	d.m.next = func(ctx context.Context, s study.Study) (study.Study, error) {
+		s, err := revealed(ctx, s)
+		if s.Fit != nil && s.Comparison == nil {
+			f := *s.Fit
+			for _, a := range assumptions {
+				f.Warnings = append(slices.Clip(f.Warnings), data.Warning{Code: a.code})
+			}
+			s.Fit = &f
+		}
+		return s, err
+	}
+	d.do(d.m.Init())
+	d.send(tea.WindowSizeMsg{Width: 60, Height: 24})
+	whole := d.m.said.String()
+	d.wantStatus("~ (? all)")
+	read := func() string {
+		var seen []string
+		for range 60 {
+			for _, row := range d.rows()[2:22] {
+				if n := len(seen); n == 0 || !slices.Contains(seen, row) {
+					seen = append(seen, row)
+				}
+			}
+			d.keys("j")
+		}
+		return strings.Join(strings.Fields(strings.Join(seen, " ")), " ")
+	}
+	d.keys("?")
+	if got := read(); !strings.Contains(got, "The last message "+whole) {
+		t.Errorf("%q is not in %q", whole, got)
+	}
+	d.keys("esc")
+	d.wantStatus("used: ")
+	d.keys("1 ?")
+	if got := read(); !strings.Contains(got, "What is used, and what was assumed "+whole) {
+		t.Errorf("%q is not in %q", whole, got)
+	}
+}
+
+// TestNoKeyIsTakenUnlisted presses enter while an error stands.
+func TestNoKeyIsTakenUnlisted(t *testing.T) {
+	d := started(t, nil)
+	d.keys("1 o e")
+	row := d.rows()[23]
+	if !strings.HasPrefix(row, "esc close error") || strings.Count(row, "esc ") != 1 {
+		t.Errorf("keys %q", row)
+	}
+	d.keys("enter")
+	if len(d.m.errors) != 1 || !slices.Contains(d.screen(tui.Intake).pressed, "enter") {
+		t.Errorf("%d errors, the screen got %q", len(d.m.errors), d.screen(tui.Intake).pressed)
+	}
+	d.keys("esc")
+	if len(d.m.errors) != 0 || !d.screen(tui.Intake).inner {
+		t.Error("esc does not close the error alone")
 	}
 }

@@ -91,9 +91,16 @@ func (m Model) finish(err error) (Outcome, error) {
 		out.Unsaved = true
 		if to != nil && to.Keep(m.changes, m.present) == nil {
 			out.Kept = to.Path()
+			if m.answered {
+				_ = to.Drop()
+			}
 		}
 		return out, nil
 	}
 	_ = to.Remove() // a file that stays would only be offered once more
+	if m.answered {
+		_ = to.Drop()
+	}
+	out.Waiting = m.offer != nil
 	return out, nil
 }

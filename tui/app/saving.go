@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"io/fs"
+	"path/filepath"
 	"strings"
 
 	"github.com/charmbracelet/bubbles/key"
@@ -13,14 +14,16 @@ import (
 	"afterbeat/data/casefile"
 	"afterbeat/data/casenote"
 	"afterbeat/tree/study"
+	"afterbeat/tui"
 	"afterbeat/tui/field"
 )
 
 // savedMsg is the end of saving a note of a case.
 type savedMsg struct {
-	name string
-	of   casefile.Case
-	err  error
+	name   string
+	folder string
+	of     casefile.Case
+	err    error
 }
 
 // askName asks for the name of the note, unless there is nothing to save yet.
@@ -28,10 +31,8 @@ func (m Model) askName() (Model, tea.Cmd) {
 	switch {
 	case m.study.Comparison != nil:
 		m.naming, m.refused, m.name = true, data.Text{}, field.New(m.options.SaveAs)
-	case m.job.running:
-		m.said = data.Clean("the note can be saved once everything is computed, in a moment")
 	default:
-		m.said = data.Clean("the note can be saved once everything is computed; a digit in ( ) computes on")
+		m = m.saying(tui.Note, "no note yet: ")
 	}
 	return m, nil
 }
@@ -60,7 +61,11 @@ func (m Model) write() (Model, tea.Cmd) {
 	m.writing = true
 	s, save, options := m.study, m.options.Save, casenote.Options{ASCII: m.theme.ASCII}
 	return m, func() tea.Msg {
-		return savedMsg{name, s.Inputs.Case, save(name, []byte(study.Text(s.Note(), options)))}
+		folder := ""
+		if whole, err := filepath.Abs(name); err == nil {
+			folder = filepath.Dir(whole)
+		}
+		return savedMsg{name, folder, s.Inputs.Case, save(name, []byte(study.Text(s.Note(), options)))}
 	}
 }
 
@@ -71,7 +76,7 @@ func (m Model) wrote(msg savedMsg) (Model, tea.Cmd) {
 	if msg.err != nil {
 		m.refused = refusal(msg.err)
 	} else {
-		m.naming, m.saved, m.outcome.Saved = false, msg.of, msg.name
+		m.naming, m.saved, m.outcome.Saved, m.outcome.Folder = false, msg.of, msg.name, msg.folder
 		m.said = data.Clean("note saved to " + msg.name)
 		m.options.SaveAs = following(msg.name)
 	}

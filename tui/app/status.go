@@ -1,39 +1,12 @@
 package app
 
 import (
-	"errors"
 	"fmt"
 	"slices"
 
 	"afterbeat/data"
-	"afterbeat/tree/study"
 	"afterbeat/tui/layout"
 )
-
-// notice is an error that stands until it is answered.
-type notice struct {
-	text, hint data.Text
-	computing  bool // of the present case, so that a change of it takes it away
-}
-
-// most errors that wait to be answered.
-const most = 9
-
-// noticeOf makes an error and its hint safe to show.
-func noticeOf(err error) notice {
-	var (
-		file   *data.FileError
-		choice *study.ChoiceError
-	)
-	n := notice{text: data.Clean(err.Error())}
-	switch {
-	case errors.As(err, &file):
-		n.hint = data.Clean(file.Hint)
-	case errors.As(err, &choice):
-		n.hint = data.Clean(choice.Hint)
-	}
-	return n
-}
 
 // complain adds an error, unless it waits to be answered already.
 func (m Model) complain(n notice) Model {
@@ -52,17 +25,22 @@ func (m Model) status(width int) string {
 	case m.leaving == asks:
 		return "Unsaved choices: s save a note first, y discard them, esc stay"
 	case m.offer != nil && !m.typing():
-		return fmt.Sprintf("Choices of an interrupted run of %s: r resume, esc ignore", m.offer.when.Format("2 Jan 15:04"))
+		return fmt.Sprintf("Choices of an interrupted run of %s: r resume, esc discard", m.offer.when.Format("2 Jan 15:04"))
 	}
 	said := layout.Clean(m.said.String(), m.theme)
-	if m.job.shown == "" {
-		return said.Cut(width).String()
+	if m.job.shown == "" && said.Width() > width {
+		return said.Cut(width-len(wholeInHelp)).String() + wholeInHelp
+	} else if m.job.shown == "" {
+		return said.String()
 	}
 	if said.Width() > 0 {
 		said = data.Clean(said.Cut(max(width-len(m.job.shown)-2, 0)).String() + ";")
 	}
 	return data.Clean(said.String() + " " + m.job.shown).String()
 }
+
+// wholeInHelp ends a line that was cut: the help shows it in full.
+const wholeInHelp = " (? all)"
 
 // nameRow is the field of the name, behind why the last one was not taken.
 func (m Model) nameRow(width int) string {

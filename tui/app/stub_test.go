@@ -86,7 +86,9 @@ type stub struct {
 	typed  string
 	pasted int
 	got    []string
-	view   string // in place of the usual one
+	// pressed are the keys that came.
+	pressed []string
+	view    string // in place of the usual one
 }
 
 type ownMsg struct{ to string }
@@ -114,6 +116,7 @@ func (s stub) Update(msg tea.Msg) (tui.Screen, tea.Cmd) {
 	case ownMsg:
 		s.got = append(slices.Clone(s.got), msg.to)
 	case tea.KeyMsg:
+		s.pressed = append(slices.Clone(s.pressed), msg.String())
 		return s.press(msg)
 	}
 	return s, nil

@@ -17,6 +17,7 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/beat"
 	"afterbeat/data/casefile"
+	"afterbeat/data/casenote"
 	demofiles "afterbeat/data/demo"
 	"afterbeat/data/unit"
 	"afterbeat/tree/study"
@@ -466,6 +467,54 @@ func TestKeysAreListedOnceAndAreNotTheRoots(t *testing.T) {
 	if len(seen) < 20 {
 		t.Errorf("only %d keys", len(seen))
 	}
+}
+
+func TestEveryKeyIsListedWithAllItsNames(t *testing.T) {
+	for _, keys := range [][]string{nil, {"o"}, {"i"}, {"t"}, {"v"}} {
+		screentest.NamesAll(t, demoed(t).Press(keys...).Screen)
+	}
+}
+
+func TestKeysOfBeatsNeedBeats(t *testing.T) {
+	b := screentest.New(New(), screentest.Pressure(t, "aortic_pressure", false), area, tui.Theme{})
+	for _, k := range b.Screen.Keys() {
+		for _, name := range []string{"n", "p", "N", "g", "G", "d"} {
+			if slices.Contains(k.Keys(), name) {
+				t.Errorf("%q %s is listed without a beat", name, k.Help().Desc)
+			}
+		}
+	}
+}
+
+// The screen shows the indices as the note does, with the one computation: the
+// time to the peak is read off to a sample, so that it is never exact.
+func TestIntervalsAreThoseOfTheNote(t *testing.T) {
+	s := demo(t, nil)
+	indices := s.Beats.Indices(1)
+	v := demoed(t).Press("c", "i").View()
+	for _, e := range indices {
+		if e.Index != beat.TimeToPeak {
+			continue
+		}
+		want := casenote.FormatRange(e.Value, e.Total)
+		if !(e.Total.Width() > 0) || !strings.Contains(v, want) || strings.Contains(v, "exact") {
+			t.Errorf("time to peak is not %s:\n%s", want, v)
+		}
+	}
+	if !strings.Contains(v, "flow from velocity (diameter ") {
+		t.Errorf("the flow does not say where it comes from:\n%s", v)
+	}
+}
+
+func TestATooShortBeatSaysItsLength(t *testing.T) {
+	b := demoed(t).Press("c")
+	for range 9 {
+		b.Press("N")
+		if v := b.View(); strings.Contains(v, "too short;") && strings.Contains(v, " s long") {
+			return
+		}
+	}
+	t.Errorf("no line of a beat too short has its length:\n%s", b.View())
 }
 
 func TestKeysThatAreNotListedDoNothing(t *testing.T) {

@@ -5,6 +5,7 @@ import (
 
 	"github.com/charmbracelet/bubbles/key"
 
+	"afterbeat/tui"
 	"afterbeat/tui/trace"
 	"afterbeat/tui/warnlist"
 )
@@ -23,14 +24,14 @@ func newKeys() keyMap {
 		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
 	}
 	return keyMap{
-		Next:           bind("n/p", "beat", "n", "right", "l", "down", "j"),
-		Previous:       bind("p", "beat before", "p", "left", "h", "up", "k"),
+		Next:           bind("n/l/j/right/down", "next beat", "n", "right", "l", "down", "j"),
+		Previous:       bind("p/h/k/left/up", "beat before", "p", "left", "h", "up", "k"),
 		NextUnused:     bind("N", "next beat not used", "N"),
 		PreviousUnused: bind("P", "beat not used before", "P"),
-		First:          bind("g", "first beat", "g", "home"),
-		Last:           bind("G", "last beat", "G", "end"),
+		First:          bind("g/home", "first beat", "g", "home"),
+		Last:           bind("G/end", "last beat", "G", "end"),
 		Drop:           bind("d", "drop", "d"),
-		Channel:        bind("c", "channel", "c", "enter"),
+		Channel:        bind("c/enter", "channel", "c", "enter"),
 		Overlay:        bind("o", "overlay", "o"),
 		Over:           bind("b", "beat over average", "b"),
 		All:            bind("i", "all indices", "i"),
@@ -59,6 +60,10 @@ func (m Model) bindings() keyMap {
 	if len(m.ready.signals) == 0 {
 		return k
 	}
+	there := len(m.beatsShown()) > 0
+	for _, b := range []*key.Binding{&k.Next, &k.Previous, &k.NextUnused, &k.PreviousUnused, &k.First, &k.Last, &k.Drop} {
+		b.SetEnabled(there)
+	}
 	averaged := m.signal().ensemble >= 0
 	overlay := averaged && (m.divide().both || m.aside) && !m.all
 	k.Channel.SetEnabled(len(m.ready.signals) > 1)
@@ -77,7 +82,10 @@ func (m Model) Keys() []key.Binding {
 	case len(m.ready.signals) == 0:
 		return []key.Binding{k.List.Open}
 	}
-	all := []key.Binding{k.Next, k.Drop, k.Overlay, k.Over, k.Channel, k.All, k.NextUnused, k.PreviousUnused}
-	all = append(all, k.Trace.In, k.Trace.Out, k.Trace.Whole, k.Trace.Table, k.List.Open, k.Previous, k.First, k.Last)
+	all := []key.Binding{
+		tui.Pair("n/p/hjkl/arrows", "beat", k.Next, k.Previous), k.Drop, k.Overlay, k.Over, k.Channel, k.All,
+		tui.Pair("N/P", "beat not used", k.NextUnused, k.PreviousUnused),
+	}
+	all = append(all, k.Trace.In, k.Trace.Out, k.Trace.Whole, k.Trace.Table, k.List.Open, k.First, k.Last)
 	return slices.DeleteFunc(all, func(b key.Binding) bool { return !b.Enabled() })
 }

@@ -44,16 +44,8 @@ func New() Model {
 
 // cures says what can be done about a warning from here.
 func cures() map[data.Code]string {
-	const (
-		span = "1 opens the intake, where [ and ] set the span"
-		keep = "d uses the beat under the cursor, or leaves it out"
-	)
-	return map[data.Code]string{
-		data.CodeManyRejected: keep + "; " + span,
-		data.CodeFewBeats:     keep + "; " + span,
-		data.CodeIrregular:    span,
-		data.CodeOpenBeat:     span,
-	}
+	const keep = "d uses the beat under the cursor, or leaves it out; 1 opens the intake, where [ and ] set the span"
+	return warnlist.Elsewhere(map[data.Code]string{data.CodeManyRejected: keep, data.CodeFewBeats: keep})
 }
 
 // Show takes over the beats; what is drawn is made ready in a command. Until

@@ -25,38 +25,35 @@ func rows(b study.Beats, i int, s signal) []row {
 	if s.average.Count == 0 {
 		return out
 	}
-	m, leftOut := beat.Measure(s.average.Period), b.Ensemble.LeaveOut(s.ensemble)
-	for _, x := range measures(s) {
-		out = append(out, x.row(m, leftOut))
+	for _, e := range b.Indices(s.ensemble) {
+		if e.Index != beat.Augmentation || s.role == "pressure" && s.site == data.SiteRoot {
+			out = append(out, measured(e, s.unit))
+		}
 	}
 	return out
 }
 
-// measure is a number of the average beat.
-type measure struct {
-	name beat.Index
-	unit string
-	of   func(beat.Measures) float64
-}
-
-func measures(s signal) []measure {
-	out := []measure{
-		{"mean", s.unit, func(m beat.Measures) float64 { return m.Mean }},
-		{"maximum", s.unit, func(m beat.Measures) float64 { return m.Max }},
-		{"minimum", s.unit, func(m beat.Measures) float64 { return m.Min }},
-		{"max - min", s.unit, func(m beat.Measures) float64 { return m.Amplitude }},
-		{beat.GoslingPI, "", func(m beat.Measures) float64 { return m.GoslingPI }},
-		{beat.PourcelotRI, "", func(m beat.Measures) float64 { return m.PourcelotRI }},
-		{beat.SystolicRatio, "", func(m beat.Measures) float64 { return m.SystolicRatio }},
-		{beat.FormFactor, "", func(m beat.Measures) float64 { return m.FormFactor }},
-		{beat.PulsatilePower, "", func(m beat.Measures) float64 { return m.PulsatilePower }},
-		{beat.TimeToPeak, "s", func(m beat.Measures) float64 { return m.TimeToPeak }},
-		{beat.MaxSlope, perSecond(s.unit), func(m beat.Measures) float64 { return m.MaxSlope }},
+// measured writes an index; a remark on it stands behind its interval, or in its
+// place where it is undefined.
+func measured(e study.IndexEstimate, unit string) row {
+	r := row{e.Label, casenote.Format(e.Value, e.Total), "", casenote.FormatRange(e.Value, e.Total)}
+	switch e.Index {
+	case "":
+		r.unit = unit
+	case beat.TimeToPeak:
+		r.label, r.unit = string(e.Index), "s"
+	case beat.MaxSlope:
+		r.label, r.unit = string(e.Index), perSecond(unit)
+	default:
+		r.label = string(e.Index)
 	}
-	if s.role == "pressure" && s.site == data.SiteRoot {
-		out = append(out, measure{beat.Augmentation, "", func(m beat.Measures) float64 { return m.Augmentation }})
+	switch {
+	case e.Why != "" && math.IsNaN(e.Value):
+		r.interval = e.Why
+	case e.Why != "":
+		r.interval += "; " + e.Why
 	}
-	return out
+	return r
 }
 
 // perSecond is the unit of a slope.
@@ -65,25 +62,6 @@ func perSecond(unit string) string {
 		return of + "/s2"
 	}
 	return unit + "/s"
-}
-
-// row writes a measure; a remark on it stands behind its interval, or in its
-// place where it is undefined.
-func (x measure) row(m beat.Measures, leftOut []beat.Measures) row {
-	values := make([]float64, len(leftOut))
-	for i, l := range leftOut {
-		values[i] = x.of(l)
-	}
-	v := x.of(m)
-	i := beat.JackknifeInterval(v, values)
-	interval := casenote.FormatRange(v, i)
-	switch why := m.Remark(x.name); {
-	case why != "" && math.IsNaN(v):
-		interval = why
-	case why != "":
-		interval += "; " + why
-	}
-	return row{string(x.name), casenote.Format(v, i), x.unit, interval}
 }
 
 // explained says in a few words what a reason means.

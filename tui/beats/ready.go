@@ -3,6 +3,7 @@ package beats
 import (
 	"fmt"
 	"math"
+	"strconv"
 	"strings"
 
 	tea "github.com/charmbracelet/bubbletea"
@@ -45,6 +46,7 @@ type signal struct {
 	cloud            [][]float64 // the beats averaged
 	average          beat.Average
 	gain             float64 // the average's unit for each of the channel's
+	diameter         string  // cm, of a velocity made into a flow
 	rows             []row
 }
 
@@ -123,6 +125,7 @@ func averaged(b study.Beats, i, ensemble int, average beat.Average) signal {
 	s.role = role
 	if i == b.FlowInfo.Channel && b.FlowInfo.Conversion != nil {
 		s.unit, s.gain = unit.Internal(unit.Flow).Name, b.FlowInfo.Conversion.Gain
+		s.diameter = strconv.FormatFloat(*b.Intake.Case.DiameterCM, 'g', -1, 64)
 	}
 	if average.Count > 0 {
 		s.ensemble, s.average, s.cloud = ensemble, average, b.Ensemble.Beats[ensemble]

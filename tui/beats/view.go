@@ -174,12 +174,23 @@ func (m Model) summary() string {
 	}
 	if len(m.ready.signals) > 0 {
 		s := m.signal()
-		words = append(words, fmt.Sprintf("%s: %s, site %s", s.role, m.clean(s.name).Cut(40), s.site))
+		words = append(words, m.called(s, m.area.Width-len(strings.Join(words, "   "))-len("   ")))
 	}
 	if m.busy {
 		words = append(words, "(working)")
 	}
 	return strings.Join(words, "   ")
+}
+
+// called names a signal in about width cells: its role, channel and site. Of a
+// velocity the role says that its indices are those of a flow.
+func (m Model) called(s signal, width int) string {
+	role, site := s.role+": ", fmt.Sprintf(", site %s", s.site)
+	if s.diameter != "" {
+		role = fmt.Sprintf("flow from velocity (diameter %s cm): ", s.diameter)
+		width -= len(role) + len(site)
+	}
+	return role + m.clean(s.name).Cut(max(min(width, 40), 8)).String() + site
 }
 
 // beatLine says what is under the cursor.
@@ -193,10 +204,14 @@ func (m Model) beatLine() string {
 	words := fmt.Sprintf("beat %d of %d: %s; onset %s s", m.at+1, len(beats), m.fateOf(m.at), strconv.FormatFloat(from, 'f', 3, 64))
 	rest := fmt.Sprintf(", %s to %s %s", casenote.Format(b.Min, data.NoInterval()), casenote.Format(b.Max, data.NoInterval()), m.signal().source.Unit)
 	length := fmt.Sprintf(", %s s long", strconv.FormatFloat(m.ready.grid.At(b.To)-from, 'f', 3, 64))
-	if len(words)+len(length)+len(rest) <= m.area.Width {
+	switch {
+	case len(words)+len(length)+len(rest) <= m.area.Width:
+		words += length + rest
+	case b.Rejected == beat.TooShort || b.Rejected == beat.TooLong: // what they are not used for
 		words += length
+	default:
+		words += rest
 	}
-	words += rest
 	if why := "; " + explained(b.Rejected); len(words)+len(why) <= m.area.Width && len(why) > 2 && m.byHand(m.at) == nothing {
 		words += why
 	}

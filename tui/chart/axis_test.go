@@ -69,7 +69,8 @@ func TestLineTicks(t *testing.T) {
 		want      []string
 	}{
 		{60, 140, 11, []string{"60", "80", "100", "120", "140"}},
-		{-1.5, 1.5, 4, []string{"-1.5", "1.5"}}, // a step of 5 would label 0 alone
+		{-1.5, 1.5, 4, []string{"-1.5", "0", "1.5"}}, // a step of 5 would label 0 alone
+		{-1, 2, 4, []string{"-1", "2"}},
 		{-2, 2, 5, []string{"-2", "0", "2"}},
 		{0.301, 0.92, 3, []string{"0.30", "0.92"}},
 		{1.1e7, 1.3e7, 9, []string{"1.10e+07", "1.15e+07", "1.20e+07", "1.25e+07", "1.30e+07"}},

@@ -66,7 +66,8 @@ func ticksAt(a Axis, s step, n int) []tick {
 }
 
 // lineTicks labels a y axis of n lines: at most every second line, and the
-// bounds themselves where fewer than two round numbers fit.
+// bounds themselves where fewer than two round numbers fit, with 0 where it lies
+// in their middle.
 func lineTicks(a Axis, n int) []tick {
 	if !a.valid() || n < 2 {
 		return nil
@@ -75,7 +76,11 @@ func lineTicks(a Axis, n int) []tick {
 	if len(ticks) >= 2 {
 		return ticks
 	}
-	return boundTicks(a, n)
+	bounds := boundTicks(a, n)
+	if a.Low == -a.High && n > 2 {
+		return []tick{bounds[0], {a.place(0, n), "0"}, bounds[1]}
+	}
+	return bounds
 }
 
 // boundTicks labels the bounds, to a hundredth of the range or better.

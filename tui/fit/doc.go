@@ -5,7 +5,9 @@
 // Left and right step through the models at hand, enter takes the one shown to
 // the next stages, up and down move through its numbers and x opens the one
 // under the cursor into its equation, its source and how its interval came
-// about. [ and ] move one assumption, by fits that the study has made already.
+// about; r opens the recommendation, and what is not identified, in full. [ and ]
+// move one assumption, by fits that the study has made already.
 // Bounds and labels stay as they are from model to model, so that the eye sees
-// the difference and a slow line carries little.
+// the difference and a slow line carries little; only the residual has the range
+// of its own size, where it would else be a line of 0.
 package fit

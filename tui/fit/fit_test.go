@@ -88,26 +88,34 @@ func TestNumbersAreThoseOfTheStudy(t *testing.T) {
 	}
 }
 
-func TestSteppingKeepsBoundsAndLabels(t *testing.T) {
+// The pressure keeps its labels and every curve its place; the residual has the
+// range of its own size about a labelled 0.
+func TestSteppingKeepsThePressure(t *testing.T) {
 	b := open(computed(t))
-	axis := func(view string) (labels []string) {
-		for _, line := range strings.Split(view, "\n")[:12] {
-			labels = append(labels, strings.TrimRight(line[:4], " "))
+	axis := func(view string, from, to int) (labels []string) {
+		for _, line := range strings.Split(view, "\n")[from:to] {
+			labels = append(labels, strings.TrimRight(line[:6], " "))
 		}
 		return labels
 	}
-	first, before := b.View(), axis(b.View())
+	first := b.View()
 	b.Press("left")
-	if !slices.Equal(axis(b.View()), before) {
+	if !slices.Equal(axis(b.View(), 0, 7), axis(first, 0, 7)) {
 		t.Errorf("labels moved:\n%s\n%s", first, b.View())
 	}
 	if b.View() == first {
 		t.Error("another model looks the same")
 	}
+	for view, want := range map[string][]string{first: {"  0.3", "    0", " -0.3"}, b.View(): {"   20", "    0", "  -20"}} {
+		if got := axis(view, 7, 10); !slices.Equal(got, want) {
+			t.Errorf("the residual has %q, want %q:\n%s", got, want, view)
+		}
+	}
 	b.Press("right")
 	if b.View() != first {
 		t.Error("back at the first model, it looks different")
 	}
+	says(t, first, "rms 0.06990, maximum 0.2524 mmHg")
 }
 
 // changes are the cases that were asked for.
@@ -236,9 +244,70 @@ func TestALongReasonIsCutVisibly(t *testing.T) {
 	f.Recommended.Why = strings.Repeat("it has no effect on the pressure; ", 9)
 	s.Fit = &f
 	lines := strings.Split(open(s).View(), "\n")
-	if got := lines[len(lines)-2]; !strings.HasSuffix(got, "~") {
+	if got := lines[len(lines)-2]; !strings.HasSuffix(got, "~ (r: in full)") {
 		t.Errorf("%q", got)
 	}
+	b := open(s, "r")
+	if n := strings.Count(strings.Join(strings.Fields(b.View()), " "), "it has no effect on the pressure"); n < 9 {
+		t.Errorf("%d of 9 reasons:\n%s", n, b.View())
+	}
+	if b.Press("esc"); strings.Contains(b.View(), "~ (r: in full)") == false {
+		t.Errorf("esc does not close it:\n%s", b.View())
+	}
+}
+
+// What is not identified is cut in its column, and in full with the
+// recommendation and where it is opened; there it can be read on, where it is
+// longer than the screen.
+func TestALongReasonOfANumberIsReadInFull(t *testing.T) {
+	s := computed(t)
+	f := *s.Fit
+	f.Results = slices.Clone(f.Results)
+	r := &f.Results[f.Chosen]
+	r.Parameters = slices.Clone(r.Parameters)
+	r.Parameters[0].Identified, r.Parameters[0].Why = false, strings.Repeat("it has no effect; ", 90)+"the end of it"
+	s.Fit = &f
+	for _, open_ := range []string{"x", "r"} {
+		b := open(s)
+		silent(t, b.View(), "the end of it")
+		b.Press(open_)
+		silent(t, b.View(), "the end of it")
+		screentest.NamesAll(t, b.Screen)
+		for range 3 {
+			b.Press(" ")
+		}
+		says(t, b.View(), "the end of it", "lines ")
+		screentest.Fits(t, b.View(), small, tui.Theme{})
+		b.Press("esc")
+		says(t, b.View(), "measured less wk3")
+	}
+}
+
+func TestEscClosesANumber(t *testing.T) {
+	b := open(computed(t), "x")
+	says(t, b.View(), "equation")
+	if !slices.ContainsFunc(b.Screen.Keys(), func(k key.Binding) bool { return slices.Contains(k.Keys(), "esc") && k.Help().Desc == "close" }) {
+		t.Error("esc is not listed as close")
+	}
+	if b.Press("esc"); !strings.Contains(b.View(), "measured less") {
+		t.Errorf("still open:\n%s", b.View())
+	}
+}
+
+func TestEveryKeyIsListedWithAllItsNames(t *testing.T) {
+	for _, keys := range [][]string{nil, {"x"}, {"r"}, {"t"}, {"f"}, {"v"}} {
+		screentest.NamesAll(t, open(computed(t), keys...).Screen)
+	}
+}
+
+func TestCOfTheDecayHasItsUnit(t *testing.T) {
+	b := screentest.New(fit.New(), computed(t), tui.Area{Width: 160, Height: 46}, tui.Theme{})
+	says(t, b.View(), "C 1.114 mL/mmHg")
+}
+
+func TestWarningsNameTheKeysOfTheIntake(t *testing.T) {
+	b := open(screentest.Demo(t, func(c *casefile.Case) { c.OutflowPressure = nil }), "v")
+	says(t, b.View(), "here: 1 opens the intake, where m states the outflow pressure")
 }
 
 func TestPressureAlone(t *testing.T) {
@@ -315,7 +384,7 @@ func TestSurvives(t *testing.T) {
 		screentest.Demo(t, func(c *casefile.Case) { c.DiameterCM = nil }),
 		screentest.Demo(t, func(c *casefile.Case) { c.Model = "wk2"; c.OutflowPressure = nil }),
 	}
-	screentest.Survives(t, fresh, studies, "left", "right", "up", "down", "enter", "x", "[", "]", "f", "t", "v")
+	screentest.Survives(t, fresh, studies, "left", "right", "up", "down", "enter", "x", "[", "]", "f", "t", "v", "r", "pgup")
 }
 
 func BenchmarkView(b *testing.B) {

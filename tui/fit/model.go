@@ -10,6 +10,7 @@ import (
 	"afterbeat/tree/study"
 	"afterbeat/tui"
 	_ "afterbeat/tui/background"
+	"afterbeat/tui/page"
 	"afterbeat/tui/warnlist"
 )
 
@@ -17,9 +18,10 @@ import (
 type view int
 
 const (
-	drawn  view = iota // the curves
-	opened             // the number under the cursor
-	tabled             // the curves as a table, over the whole area
+	drawn   view = iota // the curves
+	opened              // the number under the cursor
+	advised             // the recommendation in full
+	tabled              // the curves as a table, over the whole area
 )
 
 // Model is the screen.
@@ -35,6 +37,7 @@ type Model struct {
 	moved    int        // the assumption moved, counted from 1; 0: none
 	view     view
 	flow     bool
+	read     page.Scroll // what is opened, where it is longer than the picture
 	pictures pictures
 	request  int // of the pictures asked for last
 	warnings warnlist.Model
@@ -44,7 +47,7 @@ var _ tui.Screen = Model{}
 
 // New is the screen before anything was computed.
 func New() Model {
-	return Model{warnings: warnlist.New("Warnings of the fit and of what it rests on", nil)}
+	return Model{warnings: warnlist.New("Warnings of the fit and of what it rests on", warnlist.Elsewhere(nil))}
 }
 
 // Typing is false: there is no text field.
@@ -77,7 +80,7 @@ func (m Model) Resize(a tui.Area, t tui.Theme) (tui.Screen, tea.Cmd) {
 	}
 	m.area, m.theme = a, t
 	m.warnings = m.warnings.Resize(a, t)
-	return m.prepare()
+	return m.arranged().prepare()
 }
 
 // upToFit leaves out what the comparison warns of.
@@ -112,11 +115,15 @@ func (m Model) press(msg tea.KeyMsg) (tui.Screen, tea.Cmd) {
 	case key.Matches(msg, k.previous):
 		return m.step(-1)
 	case key.Matches(msg, k.down):
-		m.cursor++
+		m.cursor, m.read = m.cursor+1, page.Scroll{}
 	case key.Matches(msg, k.up):
-		m.cursor--
+		m.cursor, m.read = m.cursor-1, page.Scroll{}
 	case key.Matches(msg, k.number):
-		m.view = toggled(m.view, opened)
+		m.view, m.read = toggled(m.view, opened), page.Scroll{}
+	case key.Matches(msg, k.why):
+		m.view, m.read = toggled(m.view, advised), page.Scroll{}
+	case key.Matches(msg, k.page.PageDown, k.page.PageUp):
+		m.read = m.read.Update(msg, k.page)
 	case key.Matches(msg, k.table):
 		m.view = toggled(m.view, tabled)
 	case key.Matches(msg, k.flow):
@@ -143,6 +150,7 @@ func around(i, n int) int { return ((i % n) + n) % n }
 func (m Model) step(by int) (tui.Screen, tea.Cmd) {
 	m.shown = around(m.shown+by, m.count())
 	m.name = m.result().Model.Name
+	m.read = page.Scroll{}
 	return m.arranged(), nil
 }
 
@@ -164,9 +172,21 @@ func (m Model) takesBack() bool {
 	return m.count() > 0 && m.study.Inputs.Case.Model == m.result().Model.Name
 }
 
-// arranged keeps the cursor on a number.
+// arranged keeps the cursor on a number, and has what is opened ready.
 func (m Model) arranged() Model {
 	m.cursor = max(0, min(m.cursor, len(m.rows())-1))
+	p, lines := m.plan(), []string(nil)
+	switch {
+	case m.view == opened && len(m.rows()) > 0:
+		lines = m.opened(p)
+	case m.view == advised && len(m.sheets) > 0:
+		lines = m.advised(p)
+	}
+	rows := p.plot
+	if len(lines) > rows {
+		rows = m.area.Height - 1
+	}
+	m.read = m.read.Hold(lines).Resize(rows)
 	return m
 }
 

@@ -164,21 +164,31 @@ func (m Model) assumptions(p plan) []string {
 		lines = append(lines, line)
 	}
 	for _, e := range m.fit.Estimators {
-		lines = append(lines, estimatorLine(e))
+		lines = append(lines, m.estimatorLine(e))
 	}
 	return layout.Lines(strings.Join(lines, "\n"), p.assumptions)
 }
 
 // estimatorLine is another way to the same numbers.
-func estimatorLine(e fitting.Estimator) string {
+func (m Model) estimatorLine(e fitting.Estimator) string {
 	if e.Reason != "" {
 		return fmt.Sprintf("  By %s: none, %s", e.Name, e.Reason)
 	}
 	line := fmt.Sprintf("  By %s of late diastole: tau %s s", e.Name, bare(e.Tau))
 	if !math.IsNaN(e.C) {
-		line += fmt.Sprintf(", C %s", bare(e.C))
+		line += fmt.Sprintf(", C %s %s", bare(e.C), m.unitOf("C"))
 	}
 	return line + " (no interval)"
+}
+
+// unitOf is the unit of a parameter of the fits; empty where none has it.
+func (m Model) unitOf(parameter string) string {
+	for _, r := range m.fit.Results {
+		if p, ok := r.Parameter(parameter); ok {
+			return p.Unit
+		}
+	}
+	return ""
 }
 
 func blanks(n int) string { return strings.Repeat(" ", n) }

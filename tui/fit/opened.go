@@ -12,15 +12,7 @@ import (
 func (m Model) opened(p plan) []string {
 	r := m.rows()[m.cursor]
 	var lines []string
-	say := func(label, text string) {
-		const hang = 10
-		for k, line := range layout.Wrap(layout.Clean(text, m.theme), p.width-hang) {
-			if k > 0 {
-				label = ""
-			}
-			lines = append(lines, fmt.Sprintf("%-*s", hang, label)+line)
-		}
-	}
+	say := func(label, text string) { lines = append(lines, m.labelled(label, text, p.width)...) }
 	model := ""
 	if m.count() > 0 {
 		model = " of " + m.result().Model.Name
@@ -44,6 +36,42 @@ func (m Model) opened(p plan) []string {
 	}
 	if m.count() > 0 && math.IsNaN(m.result().AICc) {
 		say("AICc", "none: "+m.result().CriterionReason)
+	}
+	return lines
+}
+
+// labelled is text wrapped beside its label.
+func (m Model) labelled(label, text string, width int) []string {
+	const hang = 10
+	var lines []string
+	for k, line := range layout.Wrap(layout.Clean(text, m.theme), width-hang) {
+		if k > 0 {
+			label = ""
+		}
+		lines = append(lines, fmt.Sprintf("%-*s", hang, label)+line)
+	}
+	return lines
+}
+
+// advised is the recommendation in full, and what is not identified, of every
+// model.
+func (m Model) advised(p plan) []string {
+	lines := layout.Wrap(layout.Clean(m.advice(), m.theme), p.width)
+	for i, s := range m.sheets {
+		label := ""
+		if i < m.count() {
+			label = m.fit.Results[i].Model.Name
+		}
+		for _, r := range s.rows {
+			if r.broken() {
+				lines = append(lines, m.labelled(label, r.name+" "+r.number.String(), p.width)...)
+			}
+		}
+	}
+	for _, r := range m.fit.Results {
+		if math.IsNaN(r.AICc) {
+			lines = append(lines, m.labelled(r.Model.Name, "AICc: none, "+r.CriterionReason, p.width)...)
+		}
 	}
 	return lines
 }

@@ -1,7 +1,9 @@
 package fit
 
 import (
+	"cmp"
 	"fmt"
+	"math"
 	"slices"
 
 	tea "github.com/charmbracelet/bubbletea"
@@ -54,6 +56,7 @@ func (d drawing) pictures() pictures {
 	if len(d.fit.Results) == 0 {
 		out.models = []string{d.alone(d.pressure("average beat"))}
 	}
+	y := ranges(d.fit.Results)
 	for i, r := range d.fit.Results {
 		main := d.pressure(title(d.fit, i))
 		main.Series = append(main.Series, chart.Series{Name: r.Model.Name, Values: r.Modelled.Samples})
@@ -61,7 +64,7 @@ func (d drawing) pictures() pictures {
 			out.models = append(out.models, d.alone(main))
 			continue
 		}
-		out.models = append(out.models, d.stacked(chart.Stack{Main: main, Lower: d.residual(r)}))
+		out.models = append(out.models, d.stacked(chart.Stack{Main: main, Lower: d.residual(r, y[i])}))
 	}
 	return out
 }
@@ -71,6 +74,10 @@ func title(f study.Fit, i int) string {
 	return fmt.Sprintf("%s (%d of %d)", f.Results[i].Section().Title, i+1, len(f.Results))
 }
 
+// labelWidth is room for the labels of any residual but a tiny one, so that a
+// step from model to model does not move the picture.
+const labelWidth = 5
+
 // pressure is the measured one, within bounds that hold that of every model.
 func (d drawing) pressure(title string) chart.Plot {
 	p := d.fit.Beats.Pressure.Period
@@ -79,23 +86,60 @@ func (d drawing) pressure(title string) chart.Plot {
 		all = append(all, r.Modelled.Samples)
 	}
 	return chart.Plot{
-		Title: title, X: timeAxis(p), Y: chart.Covering("mmHg", all...),
+		Title: title, X: timeAxis(p), Y: chart.Covering("mmHg", all...), LabelWidth: labelWidth,
 		Series: []chart.Series{{Name: "measured", Values: p.Samples}},
 	}
 }
 
-// residual is that of a model, within bounds that hold that of every model. It
-// is made of dots, of one byte each: a line of Unicode would be most of what a
-// step from model to model sends.
-func (d drawing) residual(r fitting.Result) chart.Plot {
-	var all [][]float64
-	for _, other := range d.fit.Results {
-		all = append(all, other.Residual)
-	}
+// residual is that of a model about the line of 0, in the range of its own size.
+// It is made of stars and dots, of one byte each: lines of Unicode would be most
+// of what a step from model to model sends.
+func (d drawing) residual(r fitting.Result, y chart.Axis) chart.Plot {
+	zero := make([]float64, len(r.Residual))
 	return chart.Plot{
-		Title: fmt.Sprintf("measured less %s, rms %s mmHg", r.Model.Name, bare(r.RMSE)),
-		Y:     chart.Covering("mmHg", all...), Series: []chart.Series{{Values: r.Residual, Glyph: chart.Dots}},
+		Title: fmt.Sprintf("measured less %s, rms %s, maximum %s mmHg", r.Model.Name, bare(r.RMSE), bare(largest(r.Residual))),
+		Y:     y,
+		Series: []chart.Series{
+			{Values: zero, Glyph: chart.Dots},
+			{Values: r.Residual, Glyph: chart.Stars},
+		},
 	}
+}
+
+// suffices is the part of a range that a residual has to fill, at least, for the
+// range to be that of another model too.
+const suffices = 0.25
+
+// ranges are those of the residuals, about 0: rounded to steps of 1, 2 or 5 of
+// the residual's own size, and the same for models as long as it suffices.
+func ranges(results []fitting.Result) []chart.Axis {
+	order := make([]int, len(results))
+	for i := range order {
+		order[i] = i
+	}
+	slices.SortStableFunc(order, func(i, j int) int {
+		return cmp.Compare(largest(results[j].Residual), largest(results[i].Residual))
+	})
+	out := make([]chart.Axis, len(results))
+	var y chart.Axis
+	for _, i := range order {
+		if top := largest(results[i].Residual); !(top >= suffices*y.High) || y.High == 0 {
+			y = chart.Covering("mmHg", []float64{-top, top})
+		}
+		out[i] = y
+	}
+	return out
+}
+
+// largest is the largest size of a value; 0 where there is none.
+func largest(values []float64) float64 {
+	top := 0.0
+	for _, v := range values {
+		if size := math.Abs(v); size > top {
+			top = size
+		}
+	}
+	return top
 }
 
 func (d drawing) flow() string {

@@ -9,6 +9,7 @@ import (
 	"afterbeat/tui"
 	"afterbeat/tui/chart"
 	"afterbeat/tui/layout"
+	"afterbeat/tui/warnlist"
 )
 
 // View puts together what is there.
@@ -22,21 +23,23 @@ func (m Model) View() string {
 		return layout.Fit(strings.Split(m.table(), "\n"), m.area)
 	}
 	p := m.plan()
-	if m.view == opened {
-		if lines := m.opened(p); len(lines) > p.plot {
-			return layout.Fit(shortened(lines, m.area.Height, "a taller window shows them"), m.area)
+	if lines := m.read.Lines(); lines > p.plot && (m.view == opened || m.view == advised) {
+		foot := m.read.Position()
+		if m.read.Longer() {
+			foot += "   space and pgup read on"
 		}
+		return layout.Fit(append(slices.Clone(m.read.Window()), foot), m.area)
 	}
-	lines := layout.Lines(m.above(p), p.plot)
+	lines := layout.Lines(m.above(), p.plot)
 	lines = append(lines, m.below(p)...)
 	return layout.Fit(lines, m.area)
 }
 
 // above is what stands above the numbers: curves, or a number opened.
-func (m Model) above(p plan) string {
+func (m Model) above() string {
 	switch {
-	case m.view == opened:
-		return strings.Join(m.opened(p), "\n")
+	case m.view == opened, m.view == advised:
+		return strings.Join(m.read.Window(), "\n")
 	case m.flow:
 		return m.pictures.flow
 	case m.shown < len(m.pictures.models):
@@ -147,10 +150,14 @@ func (m Model) absent() []string {
 	}
 	say("", "Nothing could be fitted: "+m.fit.Reason+".")
 	lines = append(lines, "")
-	say("", "What cures it is chosen on Intake (1): channels, units, sites, the span. Beats (2) shows which beats are used, and why the others are not.")
+	say("", "What cures it is chosen on Intake (1): channels (enter), units (e), sites (o), the span ([ and ]), what was measured beside (m). Beats (2) shows which beats are used, and why the others are not.")
 	lines = append(lines, "")
+	here := warnlist.Elsewhere(nil)
 	for _, w := range upToFit(m.study) {
 		say("", strings.TrimPrefix(w.Channel.String()+": "+w.Text, ": "))
+		if keys := here[w.Code]; keys != "" {
+			say("  ", "here: "+keys)
+		}
 		say("  ", "cure: "+w.Cure)
 	}
 	return shortened(lines, m.area.Height, "v reads the warnings")
@@ -166,12 +173,13 @@ func shortened(lines []string, height int, how string) []string {
 }
 
 // wrapped is text in at most height lines; where it does not fit, the last one
-// ends with "~".
+// ends with "~" and the key that opens it.
 func wrapped(text string, width, height int, t tui.Theme) []string {
 	lines := layout.Wrap(layout.Clean(text, t), width)
 	if len(lines) <= height {
 		return lines
 	}
-	last := data.Clean(strings.Join(lines[height-1:], " ")).Cut(width)
-	return append(slices.Clone(lines[:height-1]), last.String())
+	const how = " (r: in full)"
+	last := data.Clean(strings.Join(lines[height-1:], " ")).Cut(max(width-len(how), 0))
+	return append(slices.Clone(lines[:height-1]), last.String()+how)
 }

@@ -9,6 +9,11 @@
 // equally well, the screen still shows the channels as they were read, and says
 // what has to be settled.
 //
+// What was measured beside the recording, and is no channel of it, is stated in
+// one line: the diameter and the angle of a velocity, the delay and the outflow
+// pressure. Once the beats are computed, their warnings of unlikely values stand
+// with the channels that they name.
+//
 // A choice is a changed copy of the case, sent to the root; the screen keeps
 // the copy, so that keys pressed before the answer comes build on it.
 package intake

@@ -19,6 +19,7 @@ import (
 	"afterbeat/tree/study"
 	"afterbeat/tui"
 	"afterbeat/tui/screentest"
+	"afterbeat/tui/warnlist"
 )
 
 var area = tui.Area{Width: 80, Height: 20}
@@ -100,6 +101,7 @@ func TestGolden(t *testing.T) {
 		{"span", spanned, []string{"+", "H", "H"}},
 		{"table", demo, []string{"t"}},
 		{"unit", demo, []string{"e", "f", "u", "r"}},
+		{"beside", demo, []string{"m"}},
 		{"unsettled", odd(t, nil), nil},
 		{"warnings", odd(t, nil), []string{"v"}},
 		{"nothing", study.Study{}, nil},
@@ -139,6 +141,12 @@ func TestKeysChangeTheCase(t *testing.T) {
 		"unit of the file": {[]string{"e", "kPa", "enter", "e", "ctrl+u", "enter"}, func(*casefile.Case) {}},
 		"calibration": {[]string{"c", "scale 1.02 offset -3", "enter"}, func(c *casefile.Case) {
 			c.Scale, c.Offset = map[string]float64{p: 1.02}, map[string]float64{p: -3}
+		}},
+		"beside": {[]string{"m", "ctrl+u", "diameter 2.1 angle 0 outflow 8", "enter"}, func(c *casefile.Case) {
+			c.DiameterCM, c.AngleDeg, c.OutflowPressure = ptr(2.1), ptr(0), ptr(8)
+		}},
+		"beside, one cleared": {[]string{"m", "ctrl+u", "delay none, Diameter=2", "enter"}, func(c *casefile.Case) {
+			c.Delay, c.DiameterCM = "", ptr(2)
 		}},
 		"calibration undone": {[]string{"c", "scale 2", "enter", "c", "ctrl+u", "enter"}, func(*casefile.Case) {}},
 	} {
@@ -245,6 +253,88 @@ func TestWrongTextIsAnsweredAtOnce(t *testing.T) {
 		if v := b.View(); !strings.Contains(v, want) {
 			t.Errorf("%q is not answered with %q:\n%s", text, want, v)
 		}
+	}
+}
+
+func TestBesideIsAnsweredAtOnce(t *testing.T) {
+	for text, want := range map[string]string{
+		"diameter":               "not taken: diameter needs a number in cm",
+		"diameter 0":             "not taken: the diameter is above 0 cm",
+		"angle 90":               "not taken: the angle is at least 0 and below 90",
+		"delay 25":               "not taken: the delay is in seconds, at most 1",
+		"outflow 80":             "not taken: the outflow pressure must lie below the mean pressure of 76.8",
+		"size 2":                 `not taken: "size" is none of diameter, angle, delay, outflow`,
+		"delay 25ms":             `not taken: delay needs a number in s, or none, not "25ms"`,
+		"diameter none":          "diameter none, angle none, delay 0.025 s, outflow 7 mmHg; none clears one",
+		"angle 9 diameter nan":   "not taken: diameter needs a number",
+		"diameter none angle 20": "not taken: an angle needs the diameter too",
+	} {
+		b := demoed(t).Press("m", "ctrl+u", text)
+		if v := b.View(); !strings.Contains(v, want) {
+			t.Errorf("%q is not answered with %q:\n%s", text, want, v)
+		}
+		if b.Press("enter"); strings.HasPrefix(want, "not taken") && (len(b.Told) != 0 || !b.Screen.Typing()) {
+			t.Errorf("%q is taken: %v", text, b.Told)
+		}
+	}
+	if v := demoed(t).Press("m").View(); !strings.Contains(v, "measured beside: diameter 2.2 delay 0.025 outflow 7|") {
+		t.Errorf("the field does not begin with what there is:\n%s", v)
+	}
+}
+
+func TestBesideIsShown(t *testing.T) {
+	s := screentest.Demo(t, nil)
+	b := screentest.New(New(), s, area, tui.Theme{})
+	b.Show(s.With(changed(t, b.Press("m", "ctrl+u", "diameter 2.1 delay none", "enter"))))
+	if v := b.View(); !strings.Contains(v, "measured beside: diameter 2.1 cm, angle none, delay none, outflow 7 mmHg") || strings.Contains(v, "(working)") {
+		t.Errorf("view:\n%s", v)
+	}
+	c := besideOf(casefile.Case{Delay: "0.0250"}).into(casefile.Case{Delay: "0.0250"})
+	if c.Delay != "0.0250" {
+		t.Errorf("the delay that was not changed is %q", c.Delay)
+	}
+}
+
+// Unlikely values show once the beats are computed, and a pressure upside down
+// before.
+func TestUnlikelyValuesAreWarnedOf(t *testing.T) {
+	s := screentest.Demo(t, func(c *casefile.Case) { c.Unit = map[string]string{"aortic_pressure_mmHg": "kPa"} })
+	unknown := s
+	unknown.Beats, unknown.Fit, unknown.Comparison = nil, nil, nil
+	b := screentest.New(New(), unknown, area, tui.Theme{})
+	if v := b.View(); !strings.Contains(v, "no warnings") {
+		t.Fatalf("warned before the beats:\n%s", v)
+	}
+	b.Show(s)
+	row := ""
+	for line := range strings.SplitSeq(b.View(), "\n") {
+		if strings.HasPrefix(line, "> aortic") {
+			row = line
+		}
+	}
+	if !strings.HasSuffix(row, " 1") {
+		t.Errorf("row %q", row)
+	}
+	if v := b.Press("v").View(); !strings.Contains(v, "unlikely-value: mean pressure is 576") || !strings.Contains(v, "here: e states the unit") {
+		t.Errorf("list:\n%s", v)
+	}
+	b = demoed(t).Press("i")
+	b.Show(screentest.Demo(t, nil).With(changed(t, b)))
+	if v := b.View(); !strings.Contains(v, "upside down? i turns it back") {
+		t.Errorf("view:\n%s", v)
+	}
+	if v := b.Press("v").View(); !strings.Contains(v, "below 0") {
+		t.Errorf("list:\n%s", v)
+	}
+	b = screentest.New(New(), screentest.Demo(t, func(c *casefile.Case) { c.Invert = []string{"lvot_velocity_cm_s"} }), area, tui.Theme{})
+	if v := b.Press("v").View(); !strings.Contains(v, "reversed-flow") || !strings.Contains(v, "here: i inverts") {
+		t.Errorf("list:\n%s", v)
+	}
+}
+
+func TestEveryKeyIsListedWithAllItsNames(t *testing.T) {
+	for _, keys := range [][]string{nil, {"e"}, {"m"}, {"t"}, {"v"}} {
+		screentest.NamesAll(t, demoed(t).Press(keys...).Screen)
 	}
 }
 
@@ -445,5 +535,29 @@ func BenchmarkView(b *testing.B) {
 	b.ReportAllocs()
 	for b.Loop() {
 		bench.View()
+	}
+}
+
+// Every key that a cure names is one of this screen.
+func TestCuresNameKeysThatWork(t *testing.T) {
+	bound := map[string]bool{}
+	for _, k := range demoed(t).Screen.Keys() {
+		for _, name := range k.Keys() {
+			bound[name] = true
+		}
+	}
+	for code, cure := range warnlist.Intake() {
+		named := 0
+		for word := range strings.FieldsSeq(cure) {
+			if len(word) == 1 || word == "enter" {
+				named++
+				if !bound[word] {
+					t.Errorf("%s: %q is no key here", code, word)
+				}
+			}
+		}
+		if named == 0 {
+			t.Errorf("%s: %q names no key", code, cure)
+		}
 	}
 }

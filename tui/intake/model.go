@@ -3,7 +3,6 @@ package intake
 import (
 	tea "github.com/charmbracelet/bubbletea"
 
-	"afterbeat/data"
 	"afterbeat/tree/study"
 	"afterbeat/tui"
 	"afterbeat/tui/trace"
@@ -21,6 +20,7 @@ type Model struct {
 	number, answered int          // of the latest request, and of the answer shown
 	busy             bool         // what is shown is older than the case
 	ready            ready
+	found            found
 
 	chosen   int  // the channel under the cursor
 	seen     bool // a channel was chosen to begin with
@@ -33,30 +33,15 @@ var _ tui.Screen = Model{}
 
 // New is the screen before a recording was read.
 func New() Model {
-	return Model{keys: newKeys(), trace: trace.New(), list: warnlist.New("Warnings of the intake", cures())}
-}
-
-// cures says what this screen can do about a warning.
-func cures() map[data.Code]string {
-	const span = "[ and ] set the span at the cursor"
-	return map[data.Code]string{
-		data.CodeMissing:      span,
-		data.CodeHole:         span,
-		data.CodeNoUnit:       "e states the unit",
-		data.CodeUncalibrated: "e states the unit, c its scale and offset",
-		data.CodeUnlikely:     "e states the unit, c calibrates, i inverts",
-		data.CodeGuessedRole:  "enter on a channel states it",
-		data.CodeStandIn:      "o sets the site, enter uses another channel",
-		data.CodeRegional:     "o sets the site, enter uses another channel",
-		data.CodeSiteUnknown:  "o sets the site",
-		data.CodeNegativeFlow: "i inverts the channel",
-	}
+	return Model{keys: newKeys(), trace: trace.New(), list: warnlist.New("Warnings of the intake", warnlist.Intake())}
 }
 
 // Show takes over the study. What it needs of the recording is made ready in a
 // command; until that is done the screen stays as it was.
 func (m Model) Show(s study.Study) (tui.Screen, tea.Cmd) {
 	m.inputs = s.Inputs
+	m.found = foundIn(s)
+	m = m.warned()
 	if s.Inputs.Recording == nil {
 		m.busy = true
 		return m, nil
@@ -78,7 +63,7 @@ func (m Model) take(msg readyMsg) (Model, tea.Cmd) {
 	}
 	m.answered, m.busy = msg.number, false
 	m.ready = msg.ready
-	m.list = m.list.Hold(m.ready.warnings)
+	m = m.warned()
 	if !m.seen {
 		s := m.ready.selection
 		m.chosen, m.seen = max(s.Pressure, 0), true

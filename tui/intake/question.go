@@ -15,6 +15,7 @@ const (
 	nothing subject = iota
 	ofUnit
 	ofCalibration
+	ofBeside
 )
 
 // question is the one text field of the screen. judge answers the text at

@@ -5,7 +5,6 @@ import (
 	"math"
 	"reflect"
 	"slices"
-	"strconv"
 	"strings"
 
 	tea "github.com/charmbracelet/bubbletea"
@@ -34,12 +33,13 @@ type ready struct {
 // channel is a channel, calibrated, over the whole recording.
 type channel struct {
 	data.Channel
-	unit      string // of the values, which may differ from that of the file
-	missing   string // the part of the rows without a value
-	low, high string
-	used      string // the role it is used in
-	warnings  string // how many speak of it
-	source    trace.Source
+	unit       string // of the values, which may differ from that of the file
+	missing    string // the part of the rows without a value
+	low, high  string
+	used       string // the role it is used in
+	warnings   string // how many speak of it
+	upsideDown bool   // by its mean
+	source     trace.Source
 }
 
 // readyMsg brings what request number asked for.
@@ -111,12 +111,13 @@ func asRead(rec *data.Recording) ([]data.Channel, data.Grid) {
 }
 
 func (r ready) channel(ch data.Channel, in study.Inputs, i, number int, grid data.Grid) channel {
-	c := channel{Channel: ch, unit: ch.Unit.Name, used: r.role(i), warnings: r.speakingOf(ch.Name)}
+	c := channel{Channel: ch, unit: ch.Unit.Name, used: r.role(i)}
 	if ch.Unit.Calibrated {
 		c.unit = unit.Internal(ch.Quantity).Name
 	}
 	c.missing = share(in.Recording.Channels[i].Missing(), len(in.Recording.Time))
 	c.low, c.high = extremes(ch.Values)
+	c.upsideDown = ch.Quantity == unit.Pressure && c.used != "" && mean(ch.Values) < 0
 	c.source = trace.Source{
 		ID: fmt.Sprintf("intake %d %d", number, i), Name: ch.Name.String(), Unit: c.unit,
 		Grid: grid, Values: ch.Values, Marks: r.marks(ch.Values, grid, in),
@@ -137,20 +138,6 @@ func (r ready) role(i int) string {
 	return ""
 }
 
-// speakingOf counts the warnings about a channel.
-func (r ready) speakingOf(name data.Text) string {
-	n := 0
-	for _, w := range r.warnings {
-		if w.Channel == name {
-			n++
-		}
-	}
-	if n == 0 {
-		return ""
-	}
-	return strconv.Itoa(n)
-}
-
 // extremes are the smallest and the largest value.
 func extremes(values []float64) (low, high string) {
 	l, h := math.NaN(), math.NaN()
@@ -166,6 +153,17 @@ func extremes(values []float64) (low, high string) {
 		return "none", "none"
 	}
 	return casenote.Format(l, data.NoInterval()), casenote.Format(h, data.NoInterval())
+}
+
+// mean is that of the values there are; NaN where there are none.
+func mean(values []float64) float64 {
+	sum, n := 0.0, 0
+	for _, v := range values {
+		if !math.IsNaN(v) {
+			sum, n = sum+v, n+1
+		}
+	}
+	return sum / float64(n)
 }
 
 // share is part of whole in percent.
@@ -239,6 +237,7 @@ func same(a, b casefile.Case) bool {
 		return casefile.Case{
 			Pressure: c.Pressure, Flow: c.Flow, Velocity: c.Velocity, Site: c.Site, Unit: c.Unit,
 			Scale: c.Scale, Offset: c.Offset, Invert: c.Invert, From: c.From, To: c.To,
+			DiameterCM: c.DiameterCM, AngleDeg: c.AngleDeg, Delay: c.Delay, OutflowPressure: c.OutflowPressure,
 		}
 	}
 	return reflect.DeepEqual(of(a), of(b))

@@ -53,6 +53,8 @@ func (m Model) press(msg tea.KeyMsg) (Model, tea.Cmd) {
 		return m.askUnit(), nil
 	case key.Matches(msg, k.Calibrate):
 		return m.askCalibration(), nil
+	case key.Matches(msg, k.Beside):
+		return m.askBeside(), nil
 	case key.Matches(msg, k.Invert):
 		said := "inverted"
 		if m.names().inverted(c, m.chosen) {
@@ -177,6 +179,22 @@ func (m Model) askCalibration() Model {
 	return m
 }
 
+func (m Model) askBeside() Model {
+	now := besideOf(m.inputs.Case)
+	velocity, mean := m.ready.selection.Velocity >= 0, m.found.pressure
+	m.question = ask(ofBeside, "measured beside", now.typed(), func(text string) (string, bool) {
+		b, err := now.changed(text)
+		if err != nil {
+			return err.Error(), false
+		}
+		if why := b.refused(velocity, mean); why != "" {
+			return why, false
+		}
+		return b.String() + "; none clears one", true
+	})
+	return m
+}
+
 // typed answers a key while the text field is open.
 func (m Model) typed(msg tea.KeyMsg) (Model, tea.Cmd) {
 	switch {
@@ -194,6 +212,10 @@ func (m Model) typed(msg tea.KeyMsg) (Model, tea.Cmd) {
 	of := m.question.subject
 	m.question = question{}
 	c := m.inputs.Case
+	if of == ofBeside {
+		b, _ := besideOf(c).changed(text)
+		return m.change("measured beside the recording: "+b.String(), b.into(c))
+	}
 	if of == ofCalibration {
 		k, _ := parseCalibration(text)
 		said := "calibration of " + m.name() + " as in the file"

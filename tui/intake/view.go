@@ -13,7 +13,7 @@ import (
 
 // shares is how the height is divided.
 type shares struct {
-	head  bool // the line about the file, and the heads of the table
+	head  bool // the lines about the file and what was measured beside it, and the heads of the table
 	notes int  // lines of what is to be settled
 	rows  int  // of the table, without its heads
 	plot  int
@@ -31,7 +31,7 @@ func (m Model) divide() shares {
 	s := shares{head: m.area.Height >= lowScreen, notes: min(len(m.notes()), mostNotes)}
 	free := m.area.Height - 2 - s.notes
 	if s.head {
-		free -= 2
+		free -= 3
 	}
 	n := len(m.ready.channels)
 	s.rows = max(0, min(n, max(2, free-easyPlot)))
@@ -76,7 +76,7 @@ func (m Model) View() string {
 	s := m.divide()
 	lines := m.notes()[:s.notes]
 	if s.head {
-		lines = append(lines, m.head())
+		lines = append(lines, m.head(), "measured beside: "+besideOf(m.inputs.Case).String())
 	}
 	table := m.table(s.rows)
 	if !s.head {
@@ -150,6 +150,9 @@ func (m Model) cursorLine() string {
 	}
 	if c := m.corrections(); c != "" {
 		words += "; as stated: " + c
+	}
+	if ch.upsideDown {
+		words += "; upside down? i turns it back"
 	}
 	return m.clean(words).String()
 }

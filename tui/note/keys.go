@@ -5,6 +5,7 @@ import (
 
 	"github.com/charmbracelet/bubbles/key"
 
+	"afterbeat/tui"
 	"afterbeat/tui/field"
 	"afterbeat/tui/page"
 )
@@ -14,6 +15,7 @@ type keyMap struct {
 	page           page.Keys
 	remark, search key.Binding
 	next, previous key.Binding // of what was searched for
+	end            key.Binding // of the search
 	left, right    key.Binding
 	accept, cancel key.Binding // of a text field
 }
@@ -28,8 +30,9 @@ func newKeys() keyMap {
 		search:   bind("/", "search", "/"),
 		next:     bind("n", "next match", "n"),
 		previous: bind("N", "match before", "N"),
-		left:     bind("left", "to the left", "left", "h"),
-		right:    bind("right", "to the right", "right", "l"),
+		end:      bind("esc", "end search", "esc"),
+		left:     bind("h/left", "to the left", "left", "h"),
+		right:    bind("l/right", "to the right", "right", "l"),
 		accept:   bind("enter", "accept", "enter"),
 		cancel:   bind("esc", "cancel", "esc"),
 	}
@@ -43,6 +46,7 @@ func (m Model) bindings() keyMap {
 	k.search.SetEnabled(there)
 	k.next.SetEnabled(len(m.matches) > 0)
 	k.previous.SetEnabled(len(m.matches) > 0)
+	k.end.SetEnabled(m.sought != "")
 	wide := there && m.widest > m.textWidth()
 	k.left.SetEnabled(wide)
 	k.right.SetEnabled(wide)
@@ -57,9 +61,10 @@ func (m Model) Keys() []key.Binding {
 	case m.typing != nothing:
 		all = slices.Concat([]key.Binding{k.accept, k.cancel}, field.Keys())
 	case m.there():
-		p := k.page
 		all = []key.Binding{
-			k.next, p.PageDown, k.remark, k.search, p.Down, p.Up, k.previous, p.PageUp, p.First, p.Last, k.right, k.left,
+			tui.Pair("n/N", "match", k.next, k.previous), k.end, k.page.PageDown, k.remark, k.search,
+			tui.Pair("j/k/up/down", "line", k.page.Down, k.page.Up), k.page.PageUp, k.page.First, k.page.Last,
+			tui.Pair("h/l/left/right", "sideways", k.left, k.right),
 		}
 	}
 	return slices.DeleteFunc(all, func(b key.Binding) bool { return !b.Enabled() })

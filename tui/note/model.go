@@ -152,6 +152,10 @@ func (m Model) press(msg tea.KeyMsg) Model {
 		return m.goTo(m.match + 1)
 	case key.Matches(msg, k.previous):
 		return m.goTo(m.match - 1)
+	case key.Matches(msg, k.end):
+		m.sought = ""
+		m = m.find()
+		m.shift = m.shiftBy(0)
 	case key.Matches(msg, k.left):
 		m.shift = m.shiftBy(-shiftStep)
 	case key.Matches(msg, k.right):

@@ -257,13 +257,39 @@ func TestKeysAreListedOnceAndNoneOfTheRoots(t *testing.T) {
 		seen := map[string]key.Binding{}
 		for _, one := range b.Screen.Keys() {
 			for _, k := range one.Keys() {
-				if _, twice := seen[k]; twice || slices.Contains(roots, k) {
+				if _, twice := seen[k]; twice || slices.Contains(roots, k) && one.Help().Desc != "end search" {
 					t.Errorf("key %q", k)
 				}
 				seen[k] = one
 			}
 		}
 	}
+}
+
+func TestEscEndsASearch(t *testing.T) {
+	b := open(computed(t), "/", "R", "enter")
+	if !strings.Contains(b.View(), "match 1 of") {
+		t.Fatalf("nothing found:\n%s", b.View())
+	}
+	if !slices.ContainsFunc(b.Screen.Keys(), func(k key.Binding) bool { return k.Help().Desc == "end search" }) {
+		t.Error("esc is not listed")
+	}
+	b.Press("esc")
+	if strings.Contains(b.View(), "match 1 of") {
+		t.Errorf("still searching:\n%s", b.View())
+	}
+	for _, k := range b.Screen.Keys() {
+		if k.Enabled() && slices.Contains(k.Keys(), "esc") {
+			t.Errorf("esc is listed as %q without a search", k.Help().Desc)
+		}
+	}
+}
+
+// TestEveryKeyIsListedWithAllItsNames: what the help names is what is bound.
+func TestEveryKeyIsListedWithAllItsNames(t *testing.T) {
+	b := open(computed(t), "/", "R", "enter")
+	b.Resize(tui.Area{Width: 60, Height: 11}, tui.Theme{})
+	screentest.NamesAll(t, b.Screen)
 }
 
 func TestSurvives(t *testing.T) {

@@ -6,7 +6,7 @@ import (
 	"github.com/charmbracelet/bubbles/key"
 	tea "github.com/charmbracelet/bubbletea"
 
-	_ "afterbeat/tui/background"
+	"afterbeat/tui"
 )
 
 // Keys move through a page.
@@ -20,18 +20,18 @@ func NewKeys() Keys {
 		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
 	}
 	return Keys{
-		Down:     bind("j", "down", "j", "down"),
-		Up:       bind("k", "up", "k", "up"),
-		PageDown: bind("space", "page", " ", "pgdown"),
+		Down:     bind("j/down", "line down", "j", "down"),
+		Up:       bind("k/up", "line up", "k", "up"),
+		PageDown: bind("space/pgdown", "page", " ", "pgdown"),
 		PageUp:   bind("pgup", "page up", "pgup"),
-		First:    bind("g", "top", "g", "home"),
-		Last:     bind("G", "end", "G", "end"),
+		First:    bind("g/home", "top", "g", "home"),
+		Last:     bind("G/end", "bottom", "G", "end"),
 	}
 }
 
-// Bindings lists the keys, the most useful first.
+// Bindings lists the keys, the most useful first, line up and line down as one.
 func (k Keys) Bindings() []key.Binding {
-	return []key.Binding{k.Down, k.Up, k.PageDown, k.PageUp, k.First, k.Last}
+	return []key.Binding{tui.Pair("j/k/up/down", "line", k.Down, k.Up), k.PageDown, k.PageUp, k.First, k.Last}
 }
 
 // Scroll is a window on lines. The zero Scroll shows nothing.
@@ -91,6 +91,12 @@ func (s Scroll) Update(msg tea.KeyMsg, k Keys) Scroll {
 func (s Scroll) Window() []string {
 	return s.lines[s.top:min(s.top+s.rows, len(s.lines))]
 }
+
+// Lines is how many there are in all.
+func (s Scroll) Lines() int { return len(s.lines) }
+
+// Longer tells that there are more lines than the window shows.
+func (s Scroll) Longer() bool { return len(s.lines) > s.rows }
 
 // Top is the index of the first line shown.
 func (s Scroll) Top() int { return s.top }

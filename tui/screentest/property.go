@@ -2,6 +2,7 @@ package screentest
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 	"testing"
 
@@ -51,6 +52,32 @@ func Survives(t *testing.T, fresh func() tui.Screen, studies []study.Study, keys
 			}
 		}
 	})
+}
+
+// NamesAll checks that the help of every key that a screen lists names each way
+// to press it, and that no two say the same.
+func NamesAll(t testing.TB, s tui.Screen) {
+	t.Helper()
+	words := strings.NewReplacer("pgdn", "pgdown", "hjkl", "h/j/k/l", "arrows", "left/right/up/down")
+	of := map[string]string{}
+	for _, b := range s.Keys() {
+		shown := strings.Split(words.Replace(b.Help().Key), "/")
+		if b.Help().Key == "/" {
+			shown = []string{"/"}
+		}
+		for _, k := range b.Keys() {
+			if k == " " {
+				k = "space"
+			}
+			if !slices.Contains(shown, k) {
+				t.Errorf("%q is not named in %q %s", k, b.Help().Key, b.Help().Desc)
+			}
+		}
+		if was, twice := of[b.Help().Desc]; twice {
+			t.Errorf("%q and %q both are %q", was, b.Help().Key, b.Help().Desc)
+		}
+		of[b.Help().Desc] = b.Help().Key
+	}
 }
 
 // anyKey is a key that the screen lists, one of others, or one that means nothing.

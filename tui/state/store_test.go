@@ -4,9 +4,11 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"strconv"
 	"strings"
 	"sync"
 	"testing"
+	"time"
 
 	"github.com/google/go-cmp/cmp"
 	"github.com/google/go-cmp/cmp/cmpopts"
@@ -120,6 +122,65 @@ func TestNothingIsKeptAfterAnOrderlyEnd(t *testing.T) {
 	gone("after Remove")
 }
 
+// under is what a session of another process has left in the folder of s.
+func under(t *testing.T, s *Store, process, label string, age time.Duration) string {
+	t.Helper()
+	path := filepath.Join(filepath.Dir(s.Path()), s.stem+"-"+process+"-OTHER"+suffix)
+	if err := os.WriteFile(path, casefile.Write(choices(label)), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	at := time.Now().Add(-age)
+	if err := os.Chtimes(path, at, at); err != nil {
+		t.Fatal(err)
+	}
+	return path
+}
+
+func TestSessionsLeaveEachOthersFilesAlone(t *testing.T) {
+	first := New(t.TempDir(), "k")
+	second := New(filepath.Dir(first.Path()), "k")
+	live := under(t, first, strconv.Itoa(os.Getppid()), "live-1", 0)
+	if _, _, ok := second.Kept(); ok {
+		t.Error("the choices of a session that runs are offered")
+	}
+	for _, end := range []func() error{second.Drop, func() error { return second.Clear(1) }, second.Remove} {
+		if err := end(); err != nil {
+			t.Error(err)
+		}
+	}
+	if _, err := os.Stat(live); err != nil {
+		t.Errorf("the file of another session is gone: %v", err)
+	}
+	if err := first.Keep(1, choices("p1")); err != nil {
+		t.Fatal(err)
+	}
+	if err := second.Remove(); err != nil {
+		t.Fatal(err)
+	}
+	if _, err := os.Stat(first.Path()); err != nil {
+		t.Errorf("the file of the first session is gone: %v", err)
+	}
+}
+
+func TestTheLatestThatWasLeftIsOfferedFirst(t *testing.T) {
+	s := New(t.TempDir(), "k")
+	const nobody = "999999999" // above the greatest number of a process
+	older, newer := under(t, s, nobody+"1", "older-1", time.Hour), under(t, s, nobody, "newer-1", time.Minute)
+	for _, want := range []string{"newer-1", "older-1"} {
+		if c, _, ok := s.Kept(); !ok || c.Label != want {
+			t.Errorf("offered %q, %v, want %q", c.Label, ok, want)
+		}
+		if err := s.Drop(); err != nil {
+			t.Fatal(err)
+		}
+	}
+	for _, path := range []string{older, newer} {
+		if _, err := os.Stat(path); err == nil {
+			t.Errorf("answered, and still there: %s", path)
+		}
+	}
+}
+
 func TestNoFolderIsAnErrorInWords(t *testing.T) {
 	file := filepath.Join(t.TempDir(), "file")
 	if err := os.WriteFile(file, nil, 0o600); err != nil {
@@ -145,7 +206,7 @@ func TestABrokenFileIsNotOffered(t *testing.T) {
 func TestNoStore(t *testing.T) {
 	var s *Store
 	_, _, ok := s.Kept()
-	if ok || s.Keep(1, choices("p1")) != nil || s.Clear(1) != nil || s.Remove() != nil || s.Path() != "" {
+	if ok || s.Keep(1, choices("p1")) != nil || s.Clear(1) != nil || s.Remove() != nil || s.Drop() != nil || s.Path() != "" {
 		t.Error("the nil store does something")
 	}
 }

@@ -24,7 +24,7 @@ type Keys struct {
 func NewKeys() Keys {
 	return Keys{
 		Open:  key.NewBinding(key.WithKeys("v"), key.WithHelp("v", "read the warnings")),
-		Close: key.NewBinding(key.WithKeys("v", "enter", "esc"), key.WithHelp("v", "close the list")),
+		Close: key.NewBinding(key.WithKeys("v", "enter", "esc"), key.WithHelp("v/enter/esc", "close the list")),
 		Page:  page.NewKeys(),
 	}
 }
@@ -107,10 +107,10 @@ func (m Model) wrapped() Model {
 	}
 	for i, w := range m.warnings {
 		add(fmt.Sprintf("%d. ", i+1), fmt.Sprintf("%s: %s", w.Code, w.Text))
-		add("   ", "cure: "+w.Cure)
 		if here := m.cures[w.Code]; here != "" {
 			add("   ", "here: "+here)
 		}
+		add("   ", "cure: "+w.Cure)
 	}
 	if len(lines) == 0 {
 		lines = []string{"Nothing to warn of."}

@@ -35,8 +35,8 @@ func TestEveryWarningHasItsCure(t *testing.T) {
 		`1. site-unknown: where the flow`,
 		`   \x1b[31mq\u{202e} was measured is not`,
 		"   known",
-		"   cure: --site q=SITE",
 		"   here: o sets the site",
+		"   cure: --site q=SITE",
 		"2. hole: the clock jumps",
 		"   cure: choose a stretch",
 	}
