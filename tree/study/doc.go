@@ -2,7 +2,7 @@
 // taking the stage before it as its argument and returning a value with its own
 // warnings.
 //
-//	Inputs -> TakeIn -> FindBeats -> FitLoad -> Compare -> Note
+//	Inputs -> TakeIn -> FindBeats -> FitLoad -> Compare -> Predict -> Note
 //
 // It is the only place that knows the order of the steps, and everything that a
 // screen shows or a report prints comes out of it. [Run] does all of them. The
@@ -17,6 +17,16 @@
 // the flow was measured decides what a fit means: with the flow of the root,
 // the outflow tract or a graft it is the load of the body, elsewhere that of one
 // bed, and is called regional.
+//
+// # The forecast
+//
+// [Predict] sets up a ventricle that natively ejects into the fitted load what
+// was measured ([support.SetUp]), couples it to the pump of the case, and reads
+// the periodic state at each speed. Of the ventricle the traces fix three things
+// (stroke volume, ejection time, period; end-systolic pressure follows with the
+// load). The rest (end-diastolic volume, V0, filling pressure, valves) is drawn
+// from stated ranges inside every total interval, together with the replicates
+// of the fit and the error of the filling slope.
 //
 // # What a person must choose
 //

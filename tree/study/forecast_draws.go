@@ -218,7 +218,7 @@ func (d *drawing) row(one draw) row {
 
 // valveLimit is the lowest speed at which the valve stays shut, 1000/min,
 // narrowed down from states that are known; +Inf where it opens up to the speed
-// most, 0 where it never opens.
+// most, 0 where it never opens, NaN where it was not found.
 func valveLimit(k *support.Coupled, known []support.CoupledState, most float64) float64 {
 	opens, shut := math.NaN(), most
 	for _, s := range known {
@@ -232,9 +232,14 @@ func valveLimit(k *support.Coupled, known []support.CoupledState, most float64) 
 	if math.IsNaN(opens) {
 		return 0
 	}
+	if shut == most {
+		if s, err := k.At(most); err != nil || s.ValveOpened {
+			return math.Inf(1)
+		}
+	}
 	limit, err := k.ValveLimit(opens, shut)
-	if err != nil || math.IsNaN(limit) {
-		return math.Inf(1)
+	if err != nil {
+		return math.NaN()
 	}
 	return limit
 }

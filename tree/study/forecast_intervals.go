@@ -45,7 +45,12 @@ func (f *Forecast) intervals(ctx context.Context, d *drawing, k support.Coupling
 		}
 		s.ValveOpenDraws = float64(opened) / float64(len(total))
 	}
-	doubt(&f.ValveLimit, random, total, func(r *row) float64 { return r.limit })
+	limited := func(all []row) []row {
+		return slices.DeleteFunc(slices.Clone(all), func(r row) bool { return math.IsNaN(r.limit) })
+	}
+	if random, total = limited(random), limited(total); min(len(random), len(total)) > f.Draws/2 {
+		doubt(&f.ValveLimit, random, total, func(r *row) float64 { return r.limit })
+	}
 	return nil
 }
 

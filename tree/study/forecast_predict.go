@@ -175,6 +175,8 @@ func (f *Forecast) limit(k *support.Coupled, states []support.CoupledState) data
 	case math.IsInf(e.Value, 1):
 		e.Value, e.Identified = math.NaN(), false
 		e.Why = fmt.Sprintf("the valve opens up to %.4g, twice the highest speed of the pump", f.farthest())
+	case math.IsNaN(e.Value):
+		e.Identified, e.Why = false, "no periodic state was found near it"
 	case e.Value == 0:
 		e.Value, e.Identified = math.NaN(), false
 		e.Why = "the valve does not open without a pump either"
@@ -245,6 +247,9 @@ func ratio(a, b float64) float64 {
 	}
 	return a / b
 }
+
+// strokeVolumeRow is the row of the stroke volume in [Forecast.Mismatch].
+const strokeVolumeRow = 2
 
 // mismatch sets the native state of the model beside the average beat.
 func (f *Forecast) mismatch() []Mismatch {

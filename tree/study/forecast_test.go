@@ -254,6 +254,16 @@ func TestWhatIsKnownOfTheVentricleNarrowsTheForecast(t *testing.T) {
 	}
 }
 
+// A volume and a fraction that say another stroke volume are warned of.
+func TestVolumesThatDisagree(t *testing.T) {
+	for fraction, want := range map[float64]bool{0.24: false, 0.45: true} {
+		s := demoWith(t, func(c *casefile.Case) { c.Speed, c.EDVML, c.EF = []float64{7}, ptr(200.0), ptr(fraction) })
+		if _, got := warned(s, data.CodeDisagree); got != want {
+			t.Errorf("EF %v: warned %v", fraction, got)
+		}
+	}
+}
+
 // Where there is no comparison there is no forecast, for the same reason, and
 // wrong choices are found all the same.
 func TestNoForecastSaysWhy(t *testing.T) {

@@ -3,6 +3,7 @@ package study
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"afterbeat/data"
@@ -46,7 +47,21 @@ func (f *Forecast) warnings() []data.Warning {
 			})
 		}
 	}
-	return append(out, f.beyond()...)
+	return slices.Concat(out, f.volumesDisagree(), f.beyond())
+}
+
+// volumesDisagree warns of a volume and a fraction that say another stroke
+// volume than the flow.
+func (f *Forecast) volumesDisagree() []data.Warning {
+	c, sv := f.caseOf(), f.Mismatch[strokeVolumeRow].Measured
+	if c.EDVML == nil || c.EF == nil || math.Abs(*c.EDVML**c.EF/sv-1) < 0.15 {
+		return nil
+	}
+	return []data.Warning{{
+		Code: data.CodeDisagree,
+		Text: fmt.Sprintf("end-diastolic volume and ejection fraction give a stroke volume of %.3g mL, the flow one of %.3g mL; the volume is used", *c.EDVML**c.EF, sv),
+		Cure: "check the three; leave out --edv-ml or --ef where it is doubtful",
+	}}
 }
 
 // stateWarnings gathers the warnings of the states.

@@ -67,6 +67,9 @@
 //
 // [Coupled.Step] follows a change of speed, with filling pressure drawing nearer
 // to its line with a lag; [Coupled.Modulate] a speed that changes all the time.
+// [SetUp] finds the ventricle that natively ejects as asked, [Coupled.ValveLimit]
+// the speed from which on the aortic valve stays shut, [Coupled.Waves] the signals
+// over the beat.
 // Nothing of this is a forecast for a patient unless ventricle, load and pump
 // are: what is not known of them has to be varied, by whoever asks.
 //
