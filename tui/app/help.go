@@ -47,7 +47,7 @@ func keyRows(bindings []key.Binding, t tui.Theme) []string {
 	var rows []string
 	for _, b := range bindings {
 		if h := b.Help(); b.Enabled() && h.Key != "" {
-			rows = append(rows, "  "+layout.Pad(data.Clean(h.Key), 14)+layout.Clean(h.Desc, t).String())
+			rows = append(rows, "  "+layout.Pad(data.Clean(h.Key), 18)+layout.Clean(h.Desc, t).String())
 		}
 	}
 	return rows
