@@ -121,10 +121,10 @@ func TestAGapCannotBeKept(t *testing.T) {
 
 // Q = k v (pi d²/4)/cos(angle); on a linear load R and Zc go with 1/Q, C with Q.
 func TestVelocityBecomesFlow(t *testing.T) {
-	plain := demoWith(t, func(*casefile.Case) {})
+	plain := demoFitted(t, func(*casefile.Case) {})
 	d := *plain.Inputs.Case.DiameterCM
 	flow := plain.Beats.Flow.Period.Mean()
-	perArea := demoWith(t, func(c *casefile.Case) { c.DiameterCM = nil })
+	perArea := demoFitted(t, func(c *casefile.Case) { c.DiameterCM = nil })
 	if velocity := perArea.Beats.Flow.Period.Mean(); !near(flow, velocity*math.Pi*d*d/4, 1e-12) {
 		t.Errorf("%v cm/s through %v cm gave %v mL/s", velocity, d, flow)
 	}
@@ -138,13 +138,13 @@ func TestVelocityBecomesFlow(t *testing.T) {
 		{0.5, func(c *casefile.Case) { c.Profile = "0.5" }},
 		{1 / (math.Pi * d * d / 4), func(c *casefile.Case) { c.DiameterCM = nil }},
 	} {
-		r, c, zc := chosen(t, demoWith(t, one.change))
+		r, c, zc := chosen(t, demoFitted(t, one.change))
 		if !near(r*one.gain, r0, 1e-7) || !near(c/one.gain, c0, 1e-7) || !near(zc*one.gain, zc0, 1e-6) {
 			t.Errorf("flow times %v: R %v, C %v, Zc %v; before %v, %v, %v", one.gain, r, c, zc, r0, c0, zc0)
 		}
 	}
 	// 2 x 5 % of the diameter, and tan 60 x 5 degrees, in quadrature.
-	s := demoWith(t, func(c *casefile.Case) { c.AngleDeg = ptr(60.0) })
+	s := demoFitted(t, func(c *casefile.Case) { c.AngleDeg = ptr(60.0) })
 	if want := math.Hypot(0.1, math.Sqrt(3)*5*math.Pi/180); !near(s.Beats.FlowInfo.Error, want, 1e-9) {
 		t.Errorf("error of flow %v, want %v", s.Beats.FlowInfo.Error, want)
 	}

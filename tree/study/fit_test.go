@@ -89,7 +89,7 @@ func TestWhatTheDataAllow(t *testing.T) {
 			if c.change != nil {
 				c.change(&choices)
 			}
-			s := whole(t, choices, invented(c.columns...))
+			s := fitted(t, choices, invented(c.columns...))
 			if len(s.Fit.Results) != c.fits || len(s.Fit.Estimators) != c.estimates {
 				t.Errorf("%d fits, %d estimators", len(s.Fit.Results), len(s.Fit.Estimators))
 			}
@@ -171,7 +171,7 @@ func TestModelByName(t *testing.T) {
 		used string
 		fits int
 	}{"": {"wk3", 2}, "all": {"wk3", 2}, "wk2": {"wk2", 1}, "wk3": {"wk3", 1}} {
-		s := demoWith(t, func(c *casefile.Case) { c.Model = model })
+		s := demoFitted(t, func(c *casefile.Case) { c.Model = model })
 		report := s.FitReport()
 		if got := s.Fit.Results[s.Fit.Chosen].Model.Name; got != want.used || len(report.Fits) != want.fits || report.Fits[len(report.Fits)-1].Model != want.used {
 			t.Errorf("model %q: %s used, %d reported", model, got, len(report.Fits))
@@ -186,7 +186,7 @@ func TestModelByName(t *testing.T) {
 // the same seed nothing.
 func TestReplicatesAndSeed(t *testing.T) {
 	fit := func(seed int) (values [3]float64, low, high float64) {
-		s := demoWith(t, func(c *casefile.Case) { c.Seed, c.Replicates = &seed, ptr(100) })
+		s := demoFitted(t, func(c *casefile.Case) { c.Seed, c.Replicates = &seed, ptr(100) })
 		r := s.Fit.Results[s.Fit.Chosen]
 		if len(r.Replicates.Random) != 100 || len(r.Replicates.Total) != 100 {
 			t.Fatalf("%d, %d replicates", len(r.Replicates.Random), len(r.Replicates.Total))
@@ -206,7 +206,7 @@ func TestReplicatesAndSeed(t *testing.T) {
 // the flow widens that of R, and the more the larger it is.
 func TestErrorsWidenIntervals(t *testing.T) {
 	width := func(errors map[string]string) (random, total float64) {
-		s := demoWith(t, func(c *casefile.Case) { c.Error, c.Replicates = errors, ptr(100) })
+		s := demoFitted(t, func(c *casefile.Case) { c.Error, c.Replicates = errors, ptr(150) })
 		p, _ := s.Fit.Results[s.Fit.Chosen].Parameter("R")
 		return p.Random.Width(), p.Total.Width()
 	}

@@ -87,6 +87,10 @@ func (f Forecast) predict(ctx context.Context) (Forecast, error) {
 	if f.Sensitivity, err = f.sensitivities(d, coupling); err != nil {
 		return f, err
 	}
+	coupling.Tolerance = forecastTolerance
+	if k, err = support.NewCoupled(coupling); err != nil {
+		return f, err
+	}
 	if f.Published, err = f.published(k); err != nil {
 		return f, err
 	}

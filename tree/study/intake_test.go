@@ -14,7 +14,7 @@ import (
 func TestCalibration(t *testing.T) {
 	const kPa = 0.133322387415 // of one mmHg (ISO 80000-4)
 	pressure, flow := noisy(halfPressure, 0.3), noisy(halfFlow, 1)
-	plain := whole(t, inventedCase(), invented(column{"ao_mmHg", pressure}, column{"ao_flow_mL_s", flow}))
+	plain := fitted(t, inventedCase(), invented(column{"ao_mmHg", pressure}, column{"ao_flow_mL_s", flow}))
 	wantR, wantC, wantZc := chosen(t, plain)
 	for name, c := range map[string]struct {
 		pressure, flow column
@@ -60,7 +60,7 @@ func TestCalibration(t *testing.T) {
 	} {
 		choices := inventedCase()
 		c.change(&choices)
-		r, cc, zc := chosen(t, whole(t, choices, invented(c.pressure, c.flow)))
+		r, cc, zc := chosen(t, fitted(t, choices, invented(c.pressure, c.flow)))
 		if !near(r, wantR, 1e-9) || !near(cc, wantC, 1e-9) || !near(zc, wantZc, 1e-8) {
 			t.Errorf("%s: R %v, C %v, Zc %v; want %v, %v, %v", name, r, cc, zc, wantR, wantC, wantZc)
 		}

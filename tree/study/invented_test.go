@@ -86,6 +86,24 @@ func whole(t testing.TB, c casefile.Case, f folder) Study {
 	return s
 }
 
+// fitted computes a case without its forecast, which takes the longest.
+func fitted(t testing.TB, c casefile.Case, f folder) Study {
+	t.Helper()
+	s, err := try(c, f, StageSupport)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return s
+}
+
+// demoFitted is [demoWith] without the forecast.
+func demoFitted(t testing.TB, change func(*casefile.Case)) Study {
+	t.Helper()
+	c := demoCase(t)
+	change(&c)
+	return fitted(t, c, demoFolder(t))
+}
+
 // demoWith computes the demo as change makes its case.
 func demoWith(t testing.TB, change func(*casefile.Case)) Study {
 	t.Helper()

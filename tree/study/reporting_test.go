@@ -193,11 +193,11 @@ func TestReasonIsInTheReport(t *testing.T) {
 
 // A delay that was stated has its interval, one that was not is not identified.
 func TestDelayInTheReport(t *testing.T) {
-	stated := demoWith(t, func(c *casefile.Case) { c.Error = map[string]string{"delay": "0.004"} }).FitReport().Beat.Delay
+	stated := demoFitted(t, func(c *casefile.Case) { c.Error = map[string]string{"delay": "0.004"} }).FitReport().Beat.Delay
 	if !stated.Identified || !near(float64(stated.Low), 0.021, 1e-9) || !near(float64(stated.High), 0.029, 1e-9) {
 		t.Errorf("stated: %+v", stated)
 	}
-	unknown := demoWith(t, func(c *casefile.Case) { c.Delay = "" })
+	unknown := demoFitted(t, func(c *casefile.Case) { c.Delay = "" })
 	if d := unknown.FitReport().Beat.Delay; d.Identified || !math.IsNaN(float64(d.Low)) || d.Value != 0 {
 		t.Errorf("unknown: %+v", d)
 	}

@@ -22,7 +22,7 @@ func moved(t *testing.T, s Study, assumption, change string) Sensitivity {
 // An output 20 % low gives R and Zc +25 % and C -20 %, exactly, since the load
 // is linear (the design's page of models; Z goes with 1/Q).
 func TestSensitivityToOutput(t *testing.T) {
-	s := demoWith(t, func(*casefile.Case) {})
+	s := demoFitted(t, func(*casefile.Case) {})
 	for change, want := range map[string][2]float64{"-20 %": {25, -20}, "+20 %": {-100. / 6, 20}} {
 		p := moved(t, s, "output", change).Percent
 		if !near(p.R, want[0], 1e-6) || !near(p.Zc, want[0], 1e-5) || !near(p.C, want[1], 1e-6) {
@@ -34,7 +34,7 @@ func TestSensitivityToOutput(t *testing.T) {
 // Z(0) mean Q = mean P - Pv: 10 mmHg of outflow pressure move R by the same part
 // of what is above it, and Zc, which no mean determines, next to nothing.
 func TestSensitivityToOutflowPressure(t *testing.T) {
-	s := demoWith(t, func(*casefile.Case) {})
+	s := demoFitted(t, func(*casefile.Case) {})
 	above := s.Beats.Pressure.Period.Mean() - demo.Truth().OutflowPressure
 	total := s.Fit.Results[s.Fit.Chosen].TotalResistance.Value
 	for change, mmHg := range map[string]float64{"-10 mmHg": -10, "+10 mmHg": 10} {
@@ -48,10 +48,10 @@ func TestSensitivityToOutflowPressure(t *testing.T) {
 // Moving the delay by 10 ms in a table is what stating it 10 ms otherwise does,
 // but for the beats at the ends and the closing of the period.
 func TestSensitivityToDelay(t *testing.T) {
-	s := demoWith(t, func(*casefile.Case) {})
+	s := demoFitted(t, func(*casefile.Case) {})
 	for change, delay := range map[string]string{"-10 ms": "0.015", "+10 ms": "0.035"} {
 		m := moved(t, s, "delay", change)
-		r, c, zc := chosen(t, demoWith(t, func(c *casefile.Case) { c.Delay, c.Model = delay, "wk3" }))
+		r, c, zc := chosen(t, demoFitted(t, func(c *casefile.Case) { c.Delay, c.Model = delay, "wk3" }))
 		if !near(m.Values.R, r, 0.005) || !near(m.Values.C, c, 0.02) || !near(m.Values.Zc, zc, 0.05) {
 			t.Errorf("delay %s: %+v; stated: R %v, C %v, Zc %v", change, m.Values, r, c, zc)
 		}

@@ -13,7 +13,7 @@ import (
 // What the demo was made from comes back: within the intervals of random error,
 // and within 2 %.
 func TestDemoRecoversWhatItWasMadeFrom(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Replicates = ptr(400) })
+	s := demoFitted(t, func(c *casefile.Case) { c.Replicates = nil })
 	truth := demo.Truth()
 	r := s.Fit.Results[s.Fit.Chosen]
 	if r.Model.Name != "wk3" {
@@ -42,7 +42,7 @@ func TestDemoRecoversWhatItWasMadeFrom(t *testing.T) {
 // much both fit worse, and move Zc and C as pressure too late or too early does.
 func TestDelayHasItsSign(t *testing.T) {
 	rmse := func(delay string) (float64, float64) {
-		s := demoWith(t, func(c *casefile.Case) { c.Delay, c.Model = delay, "wk3" })
+		s := demoFitted(t, func(c *casefile.Case) { c.Delay, c.Model = delay, "wk3" })
 		r := s.Fit.Results[s.Fit.Chosen]
 		return r.RMSE, r.Values.Zc
 	}

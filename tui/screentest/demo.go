@@ -46,7 +46,7 @@ func Study(t testing.TB, c casefile.Case, read func(string) ([]byte, error)) stu
 	if err != nil {
 		t.Fatal(err)
 	}
-	s, err := study.Run(context.Background(), in, study.StageDone)
+	s, err := study.Run(context.Background(), in, study.StageSupport)
 	if err != nil {
 		t.Fatal(err)
 	}
