@@ -410,6 +410,9 @@ func TestWhatCannotBeFollowedIsFlagged(t *testing.T) {
 	if err != nil || s.Settled || len(s.Warnings) == 0 || s.Warnings[0].Code != data.CodeNotSettled {
 		t.Errorf("error %v, settled %v, warnings %v", err, s.Settled, s.Warnings)
 	}
+	if !math.IsNaN(s.Arterial.Mean) || !math.IsNaN(s.Energy.Balance()) || !math.IsNaN(s.EEP) {
+		t.Errorf("numbers of what could not be followed: %v", s)
+	}
 }
 
 func TestWhatCannotBeCoupled(t *testing.T) {
