@@ -159,3 +159,45 @@ func TestActivityStaysBetweenNothingAndOne(t *testing.T) {
 		}
 	})
 }
+
+// The table is the function, up to the end of the beat and a little past it.
+func TestHillTable(t *testing.T) {
+	table := hillTable()
+	checked := 0
+	for i := range 1_000_000 {
+		x := float64(i) / 999_000
+		if x > 1 {
+			break
+		}
+		checked++
+		if got, want := fastHill(table, x), hill(x); math.Abs(got-want) > 1e-13 {
+			t.Fatalf("e(%v T) = %v, from the table %v", x, want, got)
+		}
+	}
+	if checked < 900_000 {
+		t.Errorf("checked only %d", checked)
+	}
+}
+
+// The derivatives against differences.
+func TestHillSlopes(t *testing.T) {
+	const h = 1e-4
+	for _, x := range []float64{0.05, 0.2, 0.4, 0.5, 0.7} {
+		e, first, second := hillSlopes(x)
+		if want := (hill(x+h) - hill(x-h)) / (2 * h); math.Abs(first-want) > 1e-4 {
+			t.Errorf("e'(%v) = %v, by differences %v", x, first, want)
+		}
+		if want := (hill(x+h) - 2*e + hill(x-h)) / (h * h); math.Abs(second-want) > 1e-2 {
+			t.Errorf("e\"(%v) = %v, by differences %v", x, second, want)
+		}
+	}
+}
+
+func BenchmarkElastance(b *testing.B) {
+	v := failing()
+	sum := 0.0
+	for i := range b.N {
+		sum += v.Elastance(v.Period * float64(i&1023) / 1024)
+	}
+	_ = sum
+}

@@ -42,7 +42,7 @@ func (v Ventricle) Check() error {
 // Activity is e at a time in 0..T after contraction began, between 0 and 1.
 func (v *Ventricle) Activity(t float64) float64 {
 	if v.Activation == Hill {
-		return hill(t / v.Period)
+		return fastHill(hillTable(), t/v.Period)
 	}
 	return cosine(t, v.Tes, v.Tr)
 }

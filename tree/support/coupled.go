@@ -87,8 +87,8 @@ func firstOf(err error) error {
 }
 
 // instantly is a time constant of an L that is taken as none, s: what it would
-// change is below 1e-3 mmHg.
-const instantly = 3e-6
+// change is below 0.005 mmHg.
+const instantly = 1e-5
 
 // circuitOf brings a coupling into the form that is integrated.
 func circuitOf(c Coupling) *circuit {
@@ -164,7 +164,7 @@ func (k *Coupled) orbitAt(speed float64) (orbit, error) {
 	}
 	s := &k.shooter
 	was := s.running
-	s.window, s.books = 1, nil
+	s.window, s.books, s.lost = 1, nil, false
 	s.drive = drive{running: speed > 0, speed: speed, fill: k.Filling.Pressure}
 	start := k.last.start
 	if !k.haveLast || was != s.running {
@@ -174,7 +174,7 @@ func (k *Coupled) orbitAt(speed float64) (orbit, error) {
 		start[qp] = 0
 	}
 	o := s.find(start, k.Filling.Slope > 0)
-	if !o.settled { // once more, from nothing
+	if !o.settled && !s.lost { // once more, from nothing
 		s.known = false
 		o = s.find(k.guess(), k.Filling.Slope > 0)
 	}
@@ -192,10 +192,14 @@ func (k *Coupled) At(speed float64) (CoupledState, error) {
 		return CoupledState{}, err
 	}
 	var b books
-	y := o.start
-	k.shooter.fill = o.start[out]
-	held := k.shooter.booked(&y, &b)
-	o.settled = o.settled && held && k.shooter.cameBack(&y, &o.start)
+	if k.shooter.lost {
+		b.void()
+	} else {
+		y := o.start
+		k.shooter.fill = o.start[out]
+		held := k.shooter.booked(&y, &b)
+		o.settled = o.settled && held && k.shooter.cameBack(&y, &o.start)
+	}
 	return k.stateOf(o, speed, &b), nil
 }
 

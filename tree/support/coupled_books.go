@@ -67,6 +67,14 @@ func (b *books) begin() {
 	}
 }
 
+// void are the books of a beat that could not be followed.
+func (b *books) void() {
+	for k := range b.power {
+		b.power[k] = math.NaN()
+	}
+	b.time = math.NaN()
+}
+
 // add books the step just taken.
 func (b *books) add(r *run) {
 	h := r.step.h
@@ -167,6 +175,9 @@ func (b *books) join(o *books) {
 
 // of is the range of a signal.
 func (b *books) of(k int) Range {
+	if math.IsNaN(b.time) {
+		return Range{b.time, b.time, b.time}
+	}
 	return Range{Mean: b.integral[k] / b.time, Min: b.low[k], Max: b.high[k]}
 }
 

@@ -95,6 +95,9 @@ func (s *shooter) find(z vector, onLine bool) orbit {
 	if s.newton(&z) {
 		return orbit{start: z, beats: s.beats, settled: s.stable(&z)}
 	}
+	if s.lost {
+		return orbit{start: z, beats: s.beats}
+	}
 	return s.bracket(start)
 }
 
@@ -105,6 +108,9 @@ func (s *shooter) settle(z vector) orbit {
 	for limit := s.beats + mostBeats; s.beats < limit; {
 		if s.newton(&z) {
 			return orbit{start: z, beats: s.beats, settled: s.stable(&z)}
+		}
+		if s.lost {
+			break
 		}
 		s.known = false
 		for range 20 {

@@ -16,6 +16,7 @@ type run struct {
 	most      [3]float64
 	size      float64 // of the next step, s
 	slack     float64 // see turn
+	lost      bool    // a beat could not be followed to its end
 	books     *books  // nil: nobody asks
 	tape      *tape   // nil: nobody asks
 }
@@ -57,6 +58,7 @@ func (r *run) beat(y *vector) bool {
 		corner := r.corner(s.t)
 		s.h = min(r.size, corner-s.t)
 		if steps++; steps > mostSteps || turns > mostTurns || !(s.h > 0) {
+			r.lost = true
 			return false
 		}
 		r.least, r.most = [3]float64{infinite, infinite, infinite}, [3]float64{-infinite, -infinite, -infinite}

@@ -56,7 +56,7 @@ const littleEnergy = 10
 // Balance is (sources - sinks)/sinks; NaN where next to nothing flows.
 func (e CoupledEnergy) Balance() float64 {
 	sinks := e.Sinks()
-	if sinks < littleEnergy {
+	if !(sinks >= littleEnergy) {
 		return math.NaN()
 	}
 	return (e.Filling + e.Ventricle + e.Pump - sinks) / sinks

@@ -34,6 +34,9 @@ func (k *Coupled) warnings(s *CoupledState) []data.Warning {
 	if !s.Settled {
 		warn(data.CodeNotSettled, "do not use this state; check the parameters for extreme values", "no periodic state was found in %d beats", s.Beats)
 	}
+	if math.IsNaN(s.Arterial.Mean) {
+		return all
+	}
 	if s.BackFlow() {
 		warn(data.CodeBackFlow, "see that the given head-flow law holds for reversed flow", "blood flows back through the pump, at up to %.3g mL/s", -s.PumpFlow.Min)
 	} else if s.Speed > 0 && s.PumpFlow.Min < littleFlow {

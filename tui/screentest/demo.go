@@ -39,7 +39,8 @@ func Demo(t testing.TB, change func(*casefile.Case)) study.Study {
 	return Study(t, c, func(name string) ([]byte, error) { return fs.ReadFile(demo.Files(), name) })
 }
 
-// Study computes a case; read gives its files.
+// Study computes a case as far as the yardsticks; read gives its files. The
+// forecast, which takes the longest, comes with one more Next.
 func Study(t testing.TB, c casefile.Case, read func(string) ([]byte, error)) study.Study {
 	t.Helper()
 	in, err := study.Read(c, read)

@@ -291,7 +291,10 @@ func TestForecastOfTheDemo(t *testing.T) {
 	if testing.Short() {
 		t.Skip("computes a forecast")
 	}
-	s := screentest.Demo(t, nil)
+	s, err := screentest.Demo(t, nil).Next(t.Context())
+	if err != nil {
+		t.Fatal(err)
+	}
 	f := s.Forecast
 	if f == nil || f.Reason != "" {
 		t.Fatalf("no forecast of the demo: %+v", f)
