@@ -56,14 +56,14 @@ func demoFolder(t testing.TB) folder {
 	return f
 }
 
-// demoCase is the demo's case with few replicates.
+// demoCase is the demo's case with few replicates and one speed.
 func demoCase(t testing.TB) casefile.Case {
 	t.Helper()
 	c, err := casefile.Read(demo.CaseName, []byte(demoFolder(t)[demo.CaseName]))
 	if err != nil {
 		t.Fatal(err)
 	}
-	c.Replicates = ptr(few)
+	c.Replicates, c.Speed = ptr(few), []float64{9}
 	return c
 }
 
