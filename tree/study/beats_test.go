@@ -27,7 +27,7 @@ func oneBeat(n int, late float64) folder {
 // interpolation of the half-sine is what is left; the reference values put it at
 // 1.5e-4 for 200 samples, falling as 1/N²). A single beat has no interval.
 func TestOneBeat(t *testing.T) {
-	s := whole(t, casefile.Case{Recording: "one.csv", OneBeat: true}, oneBeat(1000, 0))
+	s := fitted(t, casefile.Case{Recording: "one.csv", OneBeat: true}, oneBeat(1000, 0))
 	r, c, zc := chosen(t, s)
 	if !near(r, halfR, 2e-5) || !near(c, halfC, 2e-5) || !near(zc, halfZc, 2e-5) {
 		t.Errorf("R %.7f, C %.7f, Zc %.7f", r, c, zc)
@@ -52,7 +52,7 @@ func TestOneBeat(t *testing.T) {
 // At 200 samples the error is 1.5e-4 at most, and at 1600 64 times less.
 func TestOneBeatConverges(t *testing.T) {
 	for n, within := range map[int]float64{200: 1.6e-4, 1600: 3e-6} {
-		s := whole(t, casefile.Case{Recording: "one.csv", OneBeat: true, Model: "wk3"}, oneBeat(n, 0))
+		s := fitted(t, casefile.Case{Recording: "one.csv", OneBeat: true, Model: "wk3"}, oneBeat(n, 0))
 		if r, _, _ := chosen(t, s); !near(r, halfR, within) {
 			t.Errorf("%d samples: R off by %.3g", n, r-halfR)
 		}
@@ -61,8 +61,8 @@ func TestOneBeatConverges(t *testing.T) {
 
 // A delay turns the period of the flow: 20 ms are 25 samples of 1000.
 func TestOneBeatWithADelay(t *testing.T) {
-	prompt := whole(t, casefile.Case{Recording: "one.csv", OneBeat: true}, oneBeat(1000, 0))
-	late := whole(t, casefile.Case{Recording: "one.csv", OneBeat: true, Delay: "0.02"}, oneBeat(1000, 0.02))
+	prompt := fitted(t, casefile.Case{Recording: "one.csv", OneBeat: true}, oneBeat(1000, 0))
+	late := fitted(t, casefile.Case{Recording: "one.csv", OneBeat: true, Delay: "0.02"}, oneBeat(1000, 0.02))
 	r0, c0, zc0 := chosen(t, prompt)
 	r, c, zc := chosen(t, late)
 	if !near(r, r0, 1e-8) || !near(c, c0, 1e-8) || !near(zc, zc0, 1e-7) {
@@ -74,7 +74,7 @@ func TestOneBeatWithADelay(t *testing.T) {
 func TestOneBeatWithAHole(t *testing.T) {
 	f := oneBeat(1000, 0)
 	f["one.csv"] = emptied(f["one.csv"], 500, 530) // 24 ms
-	s := whole(t, casefile.Case{Recording: "one.csv", OneBeat: true}, f)
+	s := fitted(t, casefile.Case{Recording: "one.csv", OneBeat: true}, f)
 	if reason := s.Reason(); reason == nil || !strings.Contains(*reason, "every sample") {
 		t.Errorf("%v", reason)
 	}
@@ -82,10 +82,10 @@ func TestOneBeatWithAHole(t *testing.T) {
 
 // A person drops a beat that the rules use, and keeps one that they do not.
 func TestDropAndKeepByHand(t *testing.T) {
-	plain := demoWith(t, func(*casefile.Case) {})
+	plain := demoFitted(t, func(*casefile.Case) {})
 	early := plain.Beats.Beats[demo.Truth().Ectopic]
 	within := func(b beat.Beat) float64 { return plain.Intake.Grid.At((b.From + b.To) / 2) }
-	s := demoWith(t, func(c *casefile.Case) {
+	s := demoFitted(t, func(c *casefile.Case) {
 		c.Drop = []float64{within(plain.Beats.Beats[3])}
 		c.Keep = []float64{within(early), within(plain.Beats.Beats[4])}
 	})
@@ -112,7 +112,7 @@ func TestAGapCannotBeKept(t *testing.T) {
 	f["a.csv"] = emptied(f["a.csv"], 2000, 2010) // 10 s to 10.05 s
 	c := inventedCase()
 	c.Keep = []float64{10}
-	for _, b := range whole(t, c, f).Beats.Ensemble.Used {
+	for _, b := range fitted(t, c, f).Beats.Ensemble.Used {
 		if b.From <= 2010 && b.To >= 2000 {
 			t.Errorf("the beat from sample %d to %d was used", b.From, b.To)
 		}
@@ -154,11 +154,11 @@ func TestVelocityBecomesFlow(t *testing.T) {
 func TestNoUsableBeat(t *testing.T) {
 	c := inventedCase()
 	f := invented(aortic("ao_mmHg"), outflowTo("ao_flow_mL_s"))
-	s := whole(t, c, f)
+	s := fitted(t, c, f)
 	for _, b := range s.Beats.Beats {
 		c.Drop = append(c.Drop, s.Intake.Grid.At((b.From+b.To)/2))
 	}
-	s = whole(t, c, f)
+	s = fitted(t, c, f)
 	if reason := s.Reason(); reason == nil || !strings.HasPrefix(*reason, fmt.Sprintf("no usable beat: %d by hand", len(c.Drop))) {
 		t.Errorf("%v", *reason)
 	}

@@ -10,7 +10,7 @@ import (
 // 113.636082 mmHg about a mean of 91.875, flow of mean 87.5 mL/s (the worked
 // example of the reference values; 60/0.8 = 75 beats a minute).
 func TestCheckMeasuresTheHalfSine(t *testing.T) {
-	s := whole(t, inventedCase(), invented(column{"ao_kPa", scaled(halfPressure, 0.133322387415, 0)}, column{"ao_flow_L_min", scaled(halfFlow, 0.06, 0)}))
+	s := fitted(t, inventedCase(), invented(column{"ao_kPa", scaled(halfPressure, 0.133322387415, 0)}, column{"ao_flow_L_min", scaled(halfFlow, 0.06, 0)}))
 	report := s.Beats.Check(nil)
 	p, q := report.Channels[0], report.Channels[1]
 	if p.Unit != "kPa" || !p.Calibrated || p.Site != "root" || q.Unit != "L/min" {
@@ -50,7 +50,7 @@ func TestCheckMeasuresTheHalfSine(t *testing.T) {
 func TestIndicesOfAReversedFlow(t *testing.T) {
 	c := inventedCase()
 	c.Invert = []string{"ao_flow_mL_s"}
-	q := whole(t, c, invented(aortic("ao_mmHg"), outflowTo("ao_flow_mL_s"))).Beats.Check(nil).Channels[1]
+	q := fitted(t, c, invented(aortic("ao_mmHg"), outflowTo("ao_flow_mL_s"))).Beats.Check(nil).Channels[1]
 	if !q.Pulse.Found || !math.IsNaN(float64(q.GoslingPI)) || q.Mean > 0 {
 		t.Errorf("%+v", q)
 	}

@@ -12,7 +12,7 @@ import (
 // Scaled flow leaves 1-s of the pulse and (1-s)² of surplus energy and pulsatile
 // power, on any linear load, by construction.
 func TestScaledIsAnIdentity(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Share = []float64{0, 0.25, 0.5, 0.9, 1} })
+	s := demoFitted(t, func(c *casefile.Case) { c.Share = []float64{0, 0.25, 0.5, 0.9, 1} })
 	for _, a := range s.Comparison.Answers {
 		if a.Posing != support.ScaledPosing {
 			continue
@@ -43,7 +43,7 @@ func TestScaledIsAnIdentity(t *testing.T) {
 // Mean flow and mean pressure are the same in every state; root flow swings the
 // less the more the pump carries; nothing swings at share 1.
 func TestLateValveKeepsTheMeans(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Share = nil })
+	s := demoFitted(t, func(c *casefile.Case) { c.Share = nil })
 	if len(s.Comparison.Answers) != len(support.Posings()) {
 		t.Fatalf("%d answers", len(s.Comparison.Answers))
 	}
@@ -68,7 +68,7 @@ func TestLateValveKeepsTheMeans(t *testing.T) {
 // The native state is the fitted load under the measured flow: its mean
 // pressure is near the measured one, which the fit meets as well as it can.
 func TestNativeStateIsTheFit(t *testing.T) {
-	s := demoWith(t, func(*casefile.Case) {})
+	s := demoFitted(t, func(*casefile.Case) {})
 	r := s.Fit.Results[s.Fit.Chosen]
 	for j, p := range s.Comparison.Native.Pressure.Samples {
 		if math.Abs(p-r.Modelled.Samples[j]) > 1e-9 {
@@ -83,7 +83,7 @@ func TestNativeStateIsTheFit(t *testing.T) {
 // What is held says where the outflow pressure comes from.
 func TestOutflowPressureHasItsOrigin(t *testing.T) {
 	for want, pv := range map[data.Origin]*float64{data.Measured: ptr(7.0), data.Assumed: nil} {
-		s := demoWith(t, func(c *casefile.Case) { c.OutflowPressure = pv })
+		s := demoFitted(t, func(c *casefile.Case) { c.OutflowPressure = pv })
 		found := false
 		for _, h := range s.Comparison.Answers[0].Held() {
 			if h.Quantity == "outflow pressure" {

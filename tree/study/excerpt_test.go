@@ -18,7 +18,7 @@ var excerpts = filepath.Join("..", "..", "data", "beat", "testdata")
 // total resistance within 2 % of mean pressure over mean flow of twelve periods.
 func TestExcerptOfTheBench(t *testing.T) {
 	const name = "bench_10s.csv"
-	s := whole(t, casefile.Case{Recording: name, Replicates: ptr(100)}, folder{name: recordingIn(t, "testdata", name)})
+	s := fitted(t, casefile.Case{Recording: name, Replicates: ptr(100)}, folder{name: recordingIn(t, "testdata", name)})
 	want := map[string][2]float64{"wk2": {1.0437, 1.3302}, "wk3": {1.0303, 1.3648}}
 	for _, r := range s.Fit.Results {
 		e := want[r.Model.Name]
@@ -65,7 +65,7 @@ func TestExcerptsGoThroughTheStudy(t *testing.T) {
 	} {
 		t.Run(name, func(t *testing.T) {
 			choices := casefile.Case{Recording: name, Replicates: ptr(20), Share: []float64{0.5}}
-			s := whole(t, choices, folder{name: recordingIn(t, excerpts, name)})
+			s := fitted(t, choices, folder{name: recordingIn(t, excerpts, name)})
 			reason := ""
 			if r := s.Reason(); r != nil {
 				reason = *r

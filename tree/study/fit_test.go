@@ -138,7 +138,7 @@ func onlyFlagsThatThereAre(t *testing.T, s Study) (seen int) {
 
 // A pressure alone gives the time constant of its diastole, RC, and no R or C.
 func TestPressureAloneGivesTheTimeConstant(t *testing.T) {
-	s := whole(t, inventedCase(), invented(aortic("ao_mmHg")))
+	s := fitted(t, inventedCase(), invented(aortic("ao_mmHg")))
 	e := s.Fit.Estimators[0]
 	if !near(e.Tau, halfR*halfC, 0.02) || !math.IsNaN(e.R) || !math.IsNaN(e.C) {
 		t.Errorf("%+v, made from %v s", e, halfR*halfC)
@@ -149,7 +149,7 @@ func TestPressureAloneGivesTheTimeConstant(t *testing.T) {
 	// Above an outflow pressure the same fall is steeper by a known factor.
 	c := inventedCase()
 	c.OutflowPressure = ptr(50.0)
-	if with := whole(t, c, invented(aortic("ao_mmHg"))).Fit.Estimators[0]; with.Tau > 0.6*e.Tau {
+	if with := fitted(t, c, invented(aortic("ao_mmHg"))).Fit.Estimators[0]; with.Tau > 0.6*e.Tau {
 		t.Errorf("tau %v s above 50 mmHg, %v above 0", with.Tau, e.Tau)
 	}
 }
@@ -157,7 +157,7 @@ func TestPressureAloneGivesTheTimeConstant(t *testing.T) {
 // With a flow, the decay has tau = R C by the fit's total resistance: the
 // three-element load answers 1.428571, as the worked example says.
 func TestDecayStandsBesideTheFit(t *testing.T) {
-	s := whole(t, inventedCase(), invented(aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")))
+	s := fitted(t, inventedCase(), invented(aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")))
 	e := s.Fit.Estimators[0]
 	if e.Name != "decay" || !near(e.C, 1.428571, 0.02) || !near(e.R, halfR+halfZc, 0.01) {
 		t.Errorf("%+v", e)

@@ -220,7 +220,7 @@ func (d *drawing) row(one draw) row {
 // narrowed down from states that are known; +Inf where it opens up to the speed
 // most, 0 where it never opens, NaN where it was not found.
 func valveLimit(k *support.Coupled, known []support.CoupledState, most float64) float64 {
-	opens, shut := math.NaN(), most
+	opens, shut := math.NaN(), math.NaN()
 	for _, s := range known {
 		if s.ValveOpened {
 			opens = s.Speed
@@ -232,9 +232,17 @@ func valveLimit(k *support.Coupled, known []support.CoupledState, most float64) 
 	if math.IsNaN(opens) {
 		return 0
 	}
-	if shut == most {
-		if s, err := k.At(most); err != nil || s.ValveOpened {
+	for next := max(1.2*opens, most/8); math.IsNaN(shut); next *= 1.2 {
+		s, err := k.At(min(next, most))
+		switch {
+		case err != nil || !s.Settled:
+			return math.NaN()
+		case !s.ValveOpened:
+			shut = s.Speed
+		case next >= most:
 			return math.Inf(1)
+		default:
+			opens = s.Speed
 		}
 	}
 	limit, err := k.ValveLimit(opens, shut)

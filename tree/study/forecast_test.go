@@ -184,7 +184,7 @@ func TestForecastLiesWithinPublishedRanges(t *testing.T) {
 
 // A forecast that leaves the published ranges says so.
 func TestForecastOutsidePublishedRangesIsWarnedOf(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Pump = "generic B" })
+	s := demoWith(t, func(c *casefile.Case) { c.Pump, c.Speed = "generic B", nil })
 	outside := 0
 	for _, p := range s.Forecast.Published {
 		if p.Reason == "" && !p.Inside() {

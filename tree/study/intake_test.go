@@ -94,7 +94,7 @@ func TestSpanAndExclusions(t *testing.T) {
 	f["ex.csv"] = "start_s,end_s,why\n10,12,cough\n15.5,15.6,flush\n"
 	c := inventedCase()
 	c.From, c.To, c.Exclude = ptr(4.0), ptr(18.0), "ex.csv"
-	s := whole(t, c, f)
+	s := fitted(t, c, f)
 	used := 0
 	for _, b := range s.Beats.Ensemble.Used {
 		used++
@@ -129,7 +129,7 @@ func TestShortHolesAreFilled(t *testing.T) {
 	f["ex.csv"] = "start_s,end_s\n15,15.01\n"
 	c := inventedCase()
 	c.Exclude = "ex.csv"
-	s := whole(t, c, f)
+	s := fitted(t, c, f)
 	v := s.Intake.Channels[0].Values
 	for j := range 3 {
 		if want := v[999] + float64(j+1)/4*(v[1003]-v[999]); !near(v[1000+j], want, 1e-9) {
@@ -198,7 +198,7 @@ func TestTwoEqualChannels(t *testing.T) {
 		t.Errorf("fit of two equal channels: %v", err)
 	}
 	c.Pressure = "right_radial_mmHg"
-	if s = whole(t, c, f); s.Fit.Chosen < 0 || s.Intake.Selection.Pressure != 1 {
+	if s = fitted(t, c, f); s.Fit.Chosen < 0 || s.Intake.Selection.Pressure != 1 {
 		t.Errorf("the pressure named: %+v", s.Intake.Selection)
 	}
 }

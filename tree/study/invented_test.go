@@ -56,14 +56,14 @@ func demoFolder(t testing.TB) folder {
 	return f
 }
 
-// demoCase is the demo's case with few replicates and one share.
+// demoCase is the demo's case with few replicates, one share and one speed.
 func demoCase(t testing.TB) casefile.Case {
 	t.Helper()
 	c, err := casefile.Read(demo.CaseName, []byte(demoFolder(t)[demo.CaseName]))
 	if err != nil {
 		t.Fatal(err)
 	}
-	c.Replicates, c.Share = ptr(few), []float64{0.5}
+	c.Replicates, c.Share, c.Speed = ptr(few), []float64{0.5}, []float64{9}
 	return c
 }
 

@@ -115,7 +115,7 @@ func TestWarningsAreComplete(t *testing.T) {
 
 func BenchmarkStudyDemo(b *testing.B) {
 	c, f := demoCase(b), demoFolder(b)
-	c.Replicates, c.Share = nil, nil
+	c.Replicates, c.Share, c.Speed = nil, nil, nil
 	b.ReportAllocs()
 	for b.Loop() {
 		s := whole(b, c, f)

@@ -11,35 +11,40 @@ const limitWithin = 1e-3
 // more speed the ventricle is emptied and the arteries filled, so that there is
 // one such speed. It is found to a thousandth of it.
 func (k *Coupled) ValveLimit(opens, shut float64) (float64, error) {
-	for _, end := range []struct {
-		speed float64
-		opens bool
-	}{{opens, true}, {shut, false}} {
-		s, err := k.At(end.speed)
-		if err != nil || !s.Settled || s.ValveOpened != end.opens {
-			return math.NaN(), err
-		}
-	}
-	return k.between(opens, shut)
-}
-
-// between halves the distance of two speeds on either side of the limit.
-func (k *Coupled) between(opens, shut float64) (float64, error) {
+	first, last := opens, shut
 	for shut-opens > limitWithin*shut {
 		middle := (opens + shut) / 2
-		s, err := k.At(middle)
-		if err == nil && !s.Settled { // where the valve barely opens, once beside it
+		opened, settled, err := k.opens(middle)
+		if err == nil && !settled { // where the valve barely opens, once beside it
 			middle = opens + 0.4*(shut-opens)
-			s, err = k.At(middle)
+			opened, settled, err = k.opens(middle)
 		}
-		if err != nil || !s.Settled {
+		if err != nil || !settled {
 			return math.NaN(), err
 		}
-		if s.ValveOpened {
+		if opened {
 			opens = middle
 		} else {
 			shut = middle
 		}
 	}
+	// An end that was never moved from has not been looked at.
+	if opens == first {
+		if opened, settled, err := k.opens(first); err != nil || !settled || !opened {
+			return math.NaN(), err
+		}
+	}
+	if shut == last {
+		if opened, settled, err := k.opens(last); err != nil || !settled || opened {
+			return math.NaN(), err
+		}
+	}
 	return (opens + shut) / 2, nil
+}
+
+// opens tells whether the valve opens at a speed, and whether a periodic state
+// was found there.
+func (k *Coupled) opens(speed float64) (opened, settled bool, err error) {
+	s, err := k.At(speed)
+	return s.ValveOpened, s.Settled, err
 }
