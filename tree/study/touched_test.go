@@ -115,5 +115,6 @@ func finished(t *rapid.T, s Study) Study {
 			t.Fatal(err)
 		}
 	}
+	s.Forecast = nil // of the study that the changes began from
 	return s
 }
