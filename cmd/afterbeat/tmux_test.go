@@ -128,6 +128,13 @@ func (p *pane) file(name string) string {
 	return string(content)
 }
 
+// computed waits until the forecast, which comes last, stands.
+func (p *pane) computed() {
+	p.t.Helper()
+	p.keys("5")
+	p.wait("coupled speed")
+}
+
 func TestTmuxFromFileToSavedNote(t *testing.T) {
 	p := newPane(t, 80, 24)
 	p.open("afterbeat")
@@ -138,7 +145,8 @@ func TestTmuxFromFileToSavedNote(t *testing.T) {
 			t.Errorf("the first row is %q", first)
 		}
 	}
-	p.keys("s")
+	p.computed()
+	p.keys("6", "s")
 	p.wait("save the note as: demo.note.txt|")
 	p.keys("Enter")
 	p.wait("note saved to demo.note.txt")
@@ -290,6 +298,7 @@ func TestTmuxASCII(t *testing.T) {
 func TestTmuxToTheShellAndBack(t *testing.T) {
 	p := newPane(t, 80, 24)
 	p.open("afterbeat")
+	p.computed()
 	p.keys("2")
 	p.wait("[2 Beats]")
 	p.keys("C-z")
