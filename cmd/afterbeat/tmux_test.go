@@ -303,7 +303,7 @@ func TestTmuxToTheShellAndBack(t *testing.T) {
 	p.wait("[2 Beats]")
 	p.keys("C-z")
 	p.until("no shell", func(shown string) bool {
-		return !strings.Contains(shown, "[2 Beats]") && strings.Contains(shown, "ready>")
+		return !strings.Contains(shown, "[2 Beats]") && strings.HasSuffix(strings.TrimSpace(shown), "\nready>")
 	})
 	p.run("fg")
 	p.wait("[2 Beats]")
