@@ -56,7 +56,7 @@ func (l *line) sent() int {
 func TestBytes(t *testing.T) {
 	for name, theme := range map[string]tui.Theme{"plain": {}, "colours": {Colours: 256}} {
 		t.Run(name, func(t *testing.T) {
-			if testing.Short() {
+			if testing.Short() || raced {
 				t.Skip("waits for frames")
 			}
 			t.Parallel()
