@@ -27,6 +27,8 @@ func (s Study) Note() casenote.Note {
 	}
 	if s.Forecast != nil {
 		n.Sections = append(n.Sections, s.Forecast.sections()...)
+	} else if s.Comparison != nil {
+		n.Sections = append(n.Sections, casenote.Section{Title: "Forecast", Words: []data.Text{data.Clean("Not computed when this note was made.")}})
 	}
 	if s.Comparison != nil {
 		n.Sections = append(n.Sections, s.Comparison.sections()...)
