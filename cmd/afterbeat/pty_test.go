@@ -45,6 +45,10 @@ func built(t *testing.T) string {
 	return path
 }
 
+// patience is how long a test waits for what has to come: a forecast takes two
+// seconds of a core, which a busy machine gives to many tests at once.
+const patience = 4 * time.Minute
+
 // session is the program on a pseudo-terminal that never answers a question.
 type session struct {
 	t      *testing.T
@@ -134,7 +138,7 @@ func (s *session) output() string {
 // wait waits until the terminal was sent text.
 func (s *session) wait(text string) {
 	s.t.Helper()
-	for limit := time.Now().Add(20 * time.Second); !strings.Contains(s.output(), text); time.Sleep(10 * time.Millisecond) {
+	for limit := time.Now().Add(patience); !strings.Contains(s.output(), text); time.Sleep(10 * time.Millisecond) {
 		if time.Now().After(limit) {
 			s.t.Fatalf("no %q in %q", text, s.output())
 		}
@@ -158,7 +162,7 @@ func (s *session) exit() int {
 			s.t.Fatal(err)
 		}
 		return s.cmd.ProcessState.ExitCode()
-	case <-time.After(20 * time.Second):
+	case <-time.After(patience):
 		s.t.Fatalf("the program goes on: %q", s.output())
 		return 0
 	}
@@ -196,11 +200,23 @@ func TestVersionAsksTheTerminalNothing(t *testing.T) {
 
 func TestTheFirstScreenStandsWithoutAnAnswer(t *testing.T) {
 	built(t)
-	begin := time.Now()
-	s := on(t, nil)
-	s.wait("[3 Fit]")
-	if took := time.Since(begin); took > 4*time.Second {
-		t.Errorf("the first screen took %v", took)
+	// A question would wait for five seconds at every start; a busy machine is not
+	// slow at each of five.
+	const starts, asked = 5, 4 * time.Second
+	var s *session
+	for n := 1; ; n++ {
+		begin := time.Now()
+		s = on(t, nil)
+		s.wait("[3 Fit]")
+		took := time.Since(begin)
+		if took < asked {
+			break
+		}
+		if n == starts {
+			t.Fatalf("the first screen took %v, and no less before", took)
+		}
+		s.press("q")
+		s.exit()
 	}
 	s.wait(casenote.Caution)
 	s.press("q")

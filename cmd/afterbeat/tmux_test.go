@@ -73,7 +73,7 @@ func (p *pane) wait(text string) {
 
 func (p *pane) until(complaint string, ok func(shown string) bool) {
 	p.t.Helper()
-	for limit := time.Now().Add(20 * time.Second); ; time.Sleep(20 * time.Millisecond) {
+	for limit := time.Now().Add(patience); ; time.Sleep(20 * time.Millisecond) {
 		shown := p.shown()
 		if ok(shown) {
 			return

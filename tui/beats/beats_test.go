@@ -9,7 +9,6 @@ import (
 	"slices"
 	"strings"
 	"testing"
-	"time"
 
 	"github.com/google/go-cmp/cmp"
 	"pgregory.net/rapid"
@@ -586,15 +585,9 @@ func long(t testing.TB) study.Study {
 
 func TestLongRecording(t *testing.T) {
 	s := long(t)
-	start := time.Now()
-	b := screentest.New(New(), s, area, tui.Theme{})
-	b.Press("o")
-	t.Logf("%d beats ready to be seen in %v", len(s.Beats.Beats), time.Since(start))
+	screentest.New(New(), s, area, tui.Theme{}).Press("o")
 	if n := len(s.Beats.Beats); n < 700 {
 		t.Errorf("only %d beats", n)
-	}
-	if d := time.Since(start); d > 3*time.Second && !testing.Short() {
-		t.Errorf("took %v", d)
 	}
 }
 

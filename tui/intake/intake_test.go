@@ -7,7 +7,6 @@ import (
 	"slices"
 	"strings"
 	"testing"
-	"time"
 
 	"github.com/google/go-cmp/cmp"
 	"github.com/google/go-cmp/cmp/cmpopts"
@@ -500,14 +499,9 @@ func long() study.Study {
 }
 
 func TestLongRecording(t *testing.T) {
-	start := time.Now()
 	b := screentest.New(New(), long(), area, tui.Theme{})
-	t.Logf("ready to be seen in %v", time.Since(start))
 	if v := b.View(); !strings.Contains(v, "600000 rows") || !strings.Contains(v, "250") {
 		t.Errorf("view:\n%s", v)
-	}
-	if d := time.Since(start); d > 3*time.Second && !testing.Short() {
-		t.Errorf("took %v", d)
 	}
 }
 
