@@ -153,26 +153,30 @@ func TestWorkedExample(t *testing.T) {
 	}
 }
 
-// The README shows a piece of the demo's note, and the commands it gives exist.
+// The README shows the beginning and the end of the demo's note, and the commands
+// it gives exist.
 func TestReadme(t *testing.T) {
-	content, err := os.ReadFile(filepath.Join("..", "..", "README.md"))
+	file := filepath.Join("..", "..", "README.md")
+	content, err := os.ReadFile(file)
 	if err != nil {
 		t.Fatal(err)
 	}
-	_, after, found := strings.Cut(string(content), "<!-- note: cut from cmd/afterbeat/testdata/demo.note.txt by a test -->\n```\n")
-	piece, _, closed := strings.Cut(after, "```\n<!-- end of note -->")
-	if !found || !closed || len(piece) < 200 {
+	const begin, end = "<!-- note: cut from cmd/afterbeat/testdata/demo.note.txt by a test -->\n```\n", "```\n<!-- end of note -->"
+	before, after, found := strings.Cut(string(content), begin)
+	_, after, closed := strings.Cut(after, end)
+	if !found || !closed {
 		t.Fatal("README shows no piece of the note")
 	}
 	note, err := os.ReadFile(filepath.Join("testdata", "demo.note.txt"))
 	if err != nil {
 		t.Fatal(err)
 	}
-	for _, part := range strings.Split(piece, "[...]\n") {
-		if !strings.Contains(string(note), part) {
-			t.Errorf("README shows what the demo's note does not hold:\n%s", part)
-		}
+	head, _, short := strings.Cut(string(note), "\nRecording\n---")
+	_, tail, reproduced := strings.Cut(string(note), "\nTo reproduce,")
+	if !short || !reproduced {
+		t.Fatal("the note lacks its sections")
 	}
+	golden(t, file, before+begin+head+"[...]\nTo reproduce,"+tail+end+after)
 	for _, command := range []string{"    go run ./cmd/afterbeat\n", "    go test ./...\n"} {
 		if !strings.Contains(string(content), command) {
 			t.Errorf("README lacks %q", command)

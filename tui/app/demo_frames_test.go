@@ -35,20 +35,20 @@ func TestDemoFrames(t *testing.T) {
 
 // TestReadmeOpensWithAScreen holds the screen of the README against its file.
 func TestReadmeOpensWithAScreen(t *testing.T) {
-	content, err := os.ReadFile(filepath.Join("..", "..", "README.md"))
+	file := filepath.Join("..", "..", "README.md")
+	content, err := os.ReadFile(file)
 	if err != nil {
 		t.Fatal(err)
 	}
-	_, after, found := strings.Cut(string(content), "<!-- screen: tui/app/testdata/demo-support-80x24.golden, held by a test -->\n```\n")
-	screen, _, closed := strings.Cut(after, "```\n<!-- end of screen -->")
+	const begin, end = "<!-- screen: tui/app/testdata/demo-support-80x24.golden, held by a test -->\n```\n", "```\n<!-- end of screen -->"
+	before, after, found := strings.Cut(string(content), begin)
+	_, after, closed := strings.Cut(after, end)
 	if !found || !closed {
 		t.Fatal("the README shows no screen")
 	}
-	want, err := os.ReadFile(filepath.Join("testdata", "demo-support-80x24.golden"))
+	screen, err := os.ReadFile(filepath.Join("testdata", "demo-support-80x24.golden"))
 	if err != nil {
 		t.Fatal(err)
 	}
-	if strings.TrimRight(screen, "\n") != strings.TrimRight(string(want), "\n") {
-		t.Errorf("the README shows\n%s\nand the program\n%s", screen, want)
-	}
+	screentest.Text(t, file, before+begin+strings.TrimRight(string(screen), "\n")+"\n"+end+after)
 }

@@ -33,14 +33,14 @@ func Golden(t *testing.T, name string, at func(tui.Area, tui.Theme) string, area
 			if theme.ASCII {
 				suffix = "-ascii"
 			}
-			compare(t, fmt.Sprintf("%s-%dx%d%s.golden", name, a.Width, a.Height, suffix), view+"\n")
+			Text(t, filepath.Join("testdata", fmt.Sprintf("%s-%dx%d%s.golden", name, a.Width, a.Height, suffix)), view+"\n")
 		}
 	}
 }
 
-func compare(t *testing.T, file, got string) {
+// Text compares a text with a file, or rewrites the file with -update.
+func Text(t *testing.T, path, got string) {
 	t.Helper()
-	path := filepath.Join("testdata", file)
 	if *update {
 		if err := os.WriteFile(path, []byte(got), 0o644); err != nil {
 			t.Fatal(err)
@@ -51,6 +51,6 @@ func compare(t *testing.T, file, got string) {
 		t.Fatal(err)
 	}
 	if got != string(want) {
-		t.Errorf("%s is\n%s\nand was\n%s", file, got, want)
+		t.Errorf("%s is\n%s\nand was\n%s", path, got, want)
 	}
 }
