@@ -153,19 +153,17 @@ func TestWorkedExample(t *testing.T) {
 	}
 }
 
-// The README shows the beginning and the end of the demo's note, and the commands
-// it gives exist.
+// The README shows a screen, and the beginning and the end of the demo's note; the
+// commands it gives exist.
 func TestReadme(t *testing.T) {
 	file := filepath.Join("..", "..", "README.md")
 	content, err := os.ReadFile(file)
 	if err != nil {
 		t.Fatal(err)
 	}
-	const begin, end = "<!-- note: cut from cmd/afterbeat/testdata/demo.note.txt by a test -->\n```\n", "```\n<!-- end of note -->"
-	before, after, found := strings.Cut(string(content), begin)
-	_, after, closed := strings.Cut(after, end)
-	if !found || !closed {
-		t.Fatal("README shows no piece of the note")
+	screen, err := os.ReadFile(filepath.Join("..", "..", "tui", "app", "testdata", "demo-support-80x24.golden"))
+	if err != nil {
+		t.Fatal(err)
 	}
 	note, err := os.ReadFile(filepath.Join("testdata", "demo.note.txt"))
 	if err != nil {
@@ -176,10 +174,25 @@ func TestReadme(t *testing.T) {
 	if !short || !reproduced {
 		t.Fatal("the note lacks its sections")
 	}
-	golden(t, file, before+begin+head+"[...]\nTo reproduce,"+tail+end+after)
+	readme := shown(t, string(content), "screen: tui/app/testdata/demo-support-80x24.golden", strings.TrimRight(string(screen), "\n")+"\n")
+	readme = shown(t, readme, "note: cut from cmd/afterbeat/testdata/demo.note.txt", head+"[...]\nTo reproduce,"+tail)
+	golden(t, file, readme)
 	for _, command := range []string{"    go run ./cmd/afterbeat\n", "    go test ./...\n"} {
 		if !strings.Contains(string(content), command) {
 			t.Errorf("README lacks %q", command)
 		}
 	}
+}
+
+// shown is a page with text in the place of the block after the comment that
+// begins with mark.
+func shown(t *testing.T, page, mark, text string) string {
+	t.Helper()
+	before, after, found := strings.Cut(page, "<!-- "+mark)
+	comment, after, opened := strings.Cut(after, "```\n")
+	_, after, closed := strings.Cut(after, "```\n")
+	if !found || !opened || !closed {
+		t.Fatalf("README has no block for %s", mark)
+	}
+	return before + "<!-- " + mark + comment + "```\n" + text + "```\n" + after
 }

@@ -1,9 +1,6 @@
 package app
 
 import (
-	"os"
-	"path/filepath"
-	"strings"
 	"testing"
 
 	tea "github.com/charmbracelet/bubbletea"
@@ -31,24 +28,4 @@ func TestDemoFrames(t *testing.T) {
 			}, sizes...)
 		})
 	}
-}
-
-// TestReadmeOpensWithAScreen holds the screen of the README against its file.
-func TestReadmeOpensWithAScreen(t *testing.T) {
-	file := filepath.Join("..", "..", "README.md")
-	content, err := os.ReadFile(file)
-	if err != nil {
-		t.Fatal(err)
-	}
-	const begin, end = "<!-- screen: tui/app/testdata/demo-support-80x24.golden, held by a test -->\n```\n", "```\n<!-- end of screen -->"
-	before, after, found := strings.Cut(string(content), begin)
-	_, after, closed := strings.Cut(after, end)
-	if !found || !closed {
-		t.Fatal("the README shows no screen")
-	}
-	screen, err := os.ReadFile(filepath.Join("testdata", "demo-support-80x24.golden"))
-	if err != nil {
-		t.Fatal(err)
-	}
-	screentest.Text(t, file, before+begin+strings.TrimRight(string(screen), "\n")+"\n"+end+after)
 }

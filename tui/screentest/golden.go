@@ -33,13 +33,12 @@ func Golden(t *testing.T, name string, at func(tui.Area, tui.Theme) string, area
 			if theme.ASCII {
 				suffix = "-ascii"
 			}
-			Text(t, filepath.Join("testdata", fmt.Sprintf("%s-%dx%d%s.golden", name, a.Width, a.Height, suffix)), view+"\n")
+			compare(t, filepath.Join("testdata", fmt.Sprintf("%s-%dx%d%s.golden", name, a.Width, a.Height, suffix)), view+"\n")
 		}
 	}
 }
 
-// Text compares a text with a file, or rewrites the file with -update.
-func Text(t *testing.T, path, got string) {
+func compare(t *testing.T, path, got string) {
 	t.Helper()
 	if *update {
 		if err := os.WriteFile(path, []byte(got), 0o644); err != nil {
