@@ -65,7 +65,7 @@ outflow pressure: 0 mmHg, 95 % -10 to 10, assumed
 	} {
 		choices := inventedCase()
 		c.change(&choices)
-		b := whole(t, choices, invented(c.columns...)).Beats
+		b := fitted(t, choices, invented(c.columns...)).Beats
 		settings, err := fitSettings(choices)
 		if err != nil {
 			t.Fatal(err)

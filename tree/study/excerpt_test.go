@@ -38,7 +38,7 @@ func TestExcerptOfTheBench(t *testing.T) {
 // after it, and of no use for a pump's share, with a diameter too.
 func TestExcerptOfACerebralLoadIsRegional(t *testing.T) {
 	const name = "tcd_6s.csv"
-	s := whole(t, casefile.Case{Recording: name, Replicates: ptr(20), DiameterCM: ptr(0.3)}, folder{name: recordingIn(t, excerpts, name)})
+	s := fitted(t, casefile.Case{Recording: name, Replicates: ptr(20), DiameterCM: ptr(0.3)}, folder{name: recordingIn(t, excerpts, name)})
 	report := s.Report(defaults)
 	if len(report.Fits) != 2 || report.Fits[0].Site != data.SiteMCA || !strings.Contains(s.Comparison.Reason, "that of one bed (mca)") || report.Native != nil {
 		t.Errorf("%d fits, comparison: %q", len(report.Fits), s.Comparison.Reason)

@@ -172,11 +172,11 @@ func TestForecastLiesWithinPublishedRanges(t *testing.T) {
 			t.Errorf("warned: %v", w)
 		}
 	}
-	t.Run("demo", func(t *testing.T) { check(t, whole(t, demoCase(t), demoFolder(t))) })
+	t.Run("demo", func(t *testing.T) { check(t, sharedDemo(t)) })
 	for name, p := range patients() {
 		t.Run(name, func(t *testing.T) {
 			c, f := p.recorded(t)
-			c.Speed = nil
+			c.Speed, c.Replicates = nil, ptr(fewest)
 			check(t, whole(t, c, f))
 		})
 	}
@@ -184,7 +184,7 @@ func TestForecastLiesWithinPublishedRanges(t *testing.T) {
 
 // A forecast that leaves the published ranges says so.
 func TestForecastOutsidePublishedRangesIsWarnedOf(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Pump, c.Speed = "generic B", nil })
+	s := demoWith(t, func(c *casefile.Case) { c.Pump, c.Speed, c.Replicates = "generic B", nil, ptr(fewest) })
 	outside := 0
 	for _, p := range s.Forecast.Published {
 		if p.Reason == "" && !p.Inside() {
@@ -200,7 +200,7 @@ func TestForecastOutsidePublishedRangesIsWarnedOf(t *testing.T) {
 // before.
 func TestForecastIsTheSameEachTime(t *testing.T) {
 	c := demoCase(t)
-	c.Speed = []float64{8, 9.5}
+	c.Speed, c.Replicates = []float64{8, 9.5}, ptr(16)
 	said := func() string {
 		text, err := json.Marshal(whole(t, c, demoFolder(t)).Report(defaults))
 		if err != nil {
@@ -257,7 +257,7 @@ func TestWhatIsKnownOfTheVentricleNarrowsTheForecast(t *testing.T) {
 // A volume and a fraction that say another stroke volume are warned of.
 func TestVolumesThatDisagree(t *testing.T) {
 	for fraction, want := range map[float64]bool{0.24: false, 0.45: true} {
-		s := demoWith(t, func(c *casefile.Case) { c.Speed, c.EDVML, c.EF = []float64{7}, ptr(200.0), ptr(fraction) })
+		s := demoWith(t, func(c *casefile.Case) { c.Replicates, c.EDVML, c.EF = ptr(fewest), ptr(200.0), ptr(fraction) })
 		if _, got := warned(s, data.CodeDisagree); got != want {
 			t.Errorf("EF %v: warned %v", fraction, got)
 		}
@@ -267,7 +267,9 @@ func TestVolumesThatDisagree(t *testing.T) {
 // Where there is no comparison there is no forecast, for the same reason, and
 // wrong choices are found all the same.
 func TestNoForecastSaysWhy(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Site = map[string]string{"lvot_velocity_cm_s": "carotid"} })
+	s := demoWith(t, func(c *casefile.Case) {
+		c.Site, c.Replicates = map[string]string{"lvot_velocity_cm_s": "carotid"}, ptr(fewest)
+	})
 	if s.Forecast.Reason == "" || s.Forecast.Reason != s.Comparison.Reason || len(s.Forecast.Speeds) != 0 {
 		t.Errorf("reason %q, comparison %q", s.Forecast.Reason, s.Comparison.Reason)
 	}
@@ -275,7 +277,7 @@ func TestNoForecastSaysWhy(t *testing.T) {
 		t.Error("the reason is not reported")
 	}
 	// A load that is none carries no ventricle.
-	c := *demoWith(t, func(*casefile.Case) {}).Comparison
+	c := *sharedDemo(t).Comparison
 	c.Fit.Results = slices.Clone(c.Fit.Results)
 	c.Fit.Results[c.Fit.Chosen].Values.C = 0
 	f, err := Predict(t.Context(), c)
@@ -287,7 +289,7 @@ func TestNoForecastSaysWhy(t *testing.T) {
 // Speeds far apart: below the range of the pump blood flows back, above it the
 // ventricle empties; each is warned of once, with its speeds.
 func TestForecastWarnsOnceACode(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Speed = []float64{5, 6, 12, 14} })
+	s := demoWith(t, func(c *casefile.Case) { c.Speed, c.Replicates = []float64{5, 6, 12, 14}, ptr(fewest) })
 	seen := map[data.Code]int{}
 	for _, w := range s.Forecast.Warnings {
 		seen[w.Code]++
@@ -305,7 +307,7 @@ func TestForecastWarnsOnceACode(t *testing.T) {
 // The largest effect comes first, and an assumption that is moved beyond its
 // error does not count among those that matter most.
 func TestSensitivitiesAreRanked(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Speed = []float64{9} })
+	s := sharedDemo(t)
 	all := s.Forecast.Sensitivity
 	named := map[string]bool{}
 	for i, one := range all {

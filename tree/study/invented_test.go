@@ -9,6 +9,7 @@ import (
 	"math/rand/v2"
 	"os"
 	"strings"
+	"sync"
 	"testing"
 
 	"afterbeat/data"
@@ -31,6 +32,9 @@ func ptr[T any](v T) *T { return &v }
 // few replicates, where a test does not look at intervals, and one share.
 const few = 40
 
+// fewest replicates, where a forecast is wanted without its intervals.
+const fewest = 4
+
 // folder holds the files that a case may name.
 type folder map[string]string
 
@@ -45,26 +49,39 @@ func (f folder) read(name string) ([]byte, error) {
 // demoFolder holds the demo, and further files beside it.
 func demoFolder(t testing.TB) folder {
 	t.Helper()
+	f, err := demoFiles()
+	if err != nil {
+		t.Fatal(err)
+	}
+	return f
+}
+
+func demoFiles() (folder, error) {
 	f := folder{}
 	for _, name := range []string{demo.CaseName, demo.RecordingName} {
 		content, err := fs.ReadFile(demo.Files(), name)
 		if err != nil {
-			t.Fatal(err)
+			return nil, err
 		}
 		f[name] = string(content)
 	}
-	return f
+	return f, nil
 }
 
 // demoCase is the demo's case with few replicates, one share and one speed.
 func demoCase(t testing.TB) casefile.Case {
 	t.Helper()
-	c, err := casefile.Read(demo.CaseName, []byte(demoFolder(t)[demo.CaseName]))
+	c, err := demoChoices(demoFolder(t))
 	if err != nil {
 		t.Fatal(err)
 	}
-	c.Replicates, c.Share, c.Speed = ptr(few), []float64{0.5}, []float64{9}
 	return c
+}
+
+func demoChoices(f folder) (casefile.Case, error) {
+	c, err := casefile.Read(demo.CaseName, []byte(f[demo.CaseName]))
+	c.Replicates, c.Share, c.Speed = ptr(few), []float64{0.5}, []float64{9}
+	return c, err
 }
 
 // try computes a case up to and with the stage last.
@@ -111,6 +128,29 @@ func demoWith(t testing.TB, change func(*casefile.Case)) Study {
 	change(&c)
 	return whole(t, c, demoFolder(t))
 }
+
+// sharedDemo is the demo's whole study, computed once, for tests that do not
+// change what they look at.
+func sharedDemo(t testing.TB) Study {
+	t.Helper()
+	s, err := computedDemo()
+	if err != nil {
+		t.Fatal(err)
+	}
+	return s
+}
+
+var computedDemo = sync.OnceValues(func() (Study, error) {
+	f, err := demoFiles()
+	if err != nil {
+		return Study{}, err
+	}
+	c, err := demoChoices(f)
+	if err != nil {
+		return Study{}, err
+	}
+	return try(c, f, StageDone)
+})
 
 // chosen is the fit that goes downstream.
 func chosen(t testing.TB, s Study) (r, c, zc float64) {
@@ -217,7 +257,7 @@ func outflowTo(header string) column { return column{header, noisy(halfFlow, 1)}
 
 // inventedCase is a case of the invented recording.
 func inventedCase() casefile.Case {
-	return casefile.Case{Recording: "a.csv", Replicates: ptr(few), Share: []float64{0.5}}
+	return casefile.Case{Recording: "a.csv", Replicates: ptr(few), Share: []float64{0.5}, Speed: []float64{9}}
 }
 
 // code tells whether a warning of this code is among those of the study.

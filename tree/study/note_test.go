@@ -99,10 +99,11 @@ func TestNoteOfAnOddlyNamedFile(t *testing.T) {
 // The caution comes first and last, no line is wider than 80 cells, and in ASCII
 // every byte is.
 func TestNoteIsFitToPrint(t *testing.T) {
+	c := inventedCase()
+	c.Recording, c.Remark = "n\u00e4he.csv", "g\u00fcnstig, 5 \u00b5V"
+	n := whole(t, c, folder{c.Recording: invented(aortic("ao\u00e4 mmHg"), outflowTo("ao_flow_mL_s"))["a.csv"]}).Note()
 	for _, ascii := range []bool{false, true} {
-		c := inventedCase()
-		c.Recording, c.Remark = "n\u00e4he.csv", "g\u00fcnstig, 5 \u00b5V"
-		note := whole(t, c, folder{c.Recording: invented(aortic("ao\u00e4 mmHg"), outflowTo("ao_flow_mL_s"))["a.csv"]}).Note().Render(casenote.Options{ASCII: ascii})
+		note := n.Render(casenote.Options{ASCII: ascii})
 		if !strings.HasPrefix(note, casenote.Caution+"\n") || !strings.HasSuffix(note, "\n"+casenote.Caution+"\n") {
 			t.Error("the caution is not first and last")
 		}
@@ -119,7 +120,7 @@ func TestNoteIsFitToPrint(t *testing.T) {
 
 // What a person remarks and how a study is called stand in the note.
 func TestRemarkAndLabel(t *testing.T) {
-	note := demoWith(t, func(c *casefile.Case) { c.Remark, c.Label = "breathing is deep after 12 s", "pilot-07" }).Note().Render(defaults)
+	note := demoFitted(t, func(c *casefile.Case) { c.Remark, c.Label = "breathing is deep after 12 s", "pilot-07" }).Note().Render(defaults)
 	for _, want := range []string{"\nRemark\n------\nbreathing is deep after 12 s\n", "demo.csv, pilot-07"} {
 		if !strings.Contains(note, want) {
 			t.Errorf("the note lacks %q", want)
@@ -130,7 +131,7 @@ func TestRemarkAndLabel(t *testing.T) {
 // Every number of the note has a unit, in its row or in the header of its column,
 // or counts something, or is a ratio.
 func TestNumbersHaveUnits(t *testing.T) {
-	n := demoWith(t, func(*casefile.Case) {}).Note()
+	n := sharedDemo(t).Note()
 	bare := regexp.MustCompile(`^(rows|beats averaged|samples|factor k|cut by an end or a gap)$`)
 	ratio := regexp.MustCompile(`, |^(missing|AICc|BIC|share of pump|retained .*)$`)
 	rows, cells := 0, 0
@@ -162,12 +163,13 @@ func TestNumbersHaveUnits(t *testing.T) {
 	}
 }
 
-// The note is the same on one core and on four.
+// The note is the same on one core and on four; so is its forecast
+// ([TestForecastIsTheSameEachTime]).
 func TestNoteDoesNotDependOnCores(t *testing.T) {
 	var notes []string
 	for _, cores := range []int{1, 4} {
 		before := runtime.GOMAXPROCS(cores)
-		notes = append(notes, demoWith(t, func(c *casefile.Case) { c.Replicates = ptr(200) }).Note().Render(defaults))
+		notes = append(notes, demoFitted(t, func(c *casefile.Case) { c.Replicates = ptr(200) }).Note().Render(defaults))
 		runtime.GOMAXPROCS(before)
 	}
 	if notes[0] != notes[1] {

@@ -5,7 +5,6 @@ import (
 	"testing"
 
 	"afterbeat/data"
-	"afterbeat/data/casefile"
 )
 
 // unlikely are the warnings of a channel whose values make no sense.
@@ -32,7 +31,7 @@ func TestUnitsThatAreUnlikely(t *testing.T) {
 		"no unit fits":      {column{"ao_mmHg", scaled(halfPressure, 4000, 0)}, outflowTo("ao_flow_mL_s"), []string{"ao_mmHg: mean pressure", "check unit, scale and zero"}},
 		"the flow of a bed": {aortic("ao_mmHg"), column{"renal_flow_mL_s", scaled(halfFlow, 0.05, 0)}, nil},
 	} {
-		got := unlikely(whole(t, inventedCase(), invented(c.pressure, c.flow)))
+		got := unlikely(fitted(t, inventedCase(), invented(c.pressure, c.flow)))
 		if (got == "") != (c.want == nil) {
 			t.Errorf("%s: %q", name, got)
 		}
@@ -47,12 +46,12 @@ func TestUnitsThatAreUnlikely(t *testing.T) {
 // Where the decay of diastole and the fit are far apart, as with channels that do
 // not belong together in time, it is said.
 func TestWaysToComplianceThatDisagree(t *testing.T) {
-	if w, ok := warned(demoWith(t, func(*casefile.Case) {}), data.CodeDisagree); ok {
+	if w, ok := warned(sharedDemo(t), data.CodeDisagree); ok {
 		t.Errorf("the demo: %v", w)
 	}
 	c := inventedCase()
 	c.Delay = "0.05"
-	s := whole(t, c, invented(aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")))
+	s := fitted(t, c, invented(aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")))
 	w, ok := warned(s, data.CodeDisagree)
 	if !ok || !strings.Contains(w.Text, "decay gives C 1.4") || !strings.Contains(w.Cure, "delay") {
 		_, cc, _ := chosen(t, s)

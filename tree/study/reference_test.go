@@ -99,7 +99,7 @@ func TestReferenceRecordings(t *testing.T) {
 	for name, want := range expectations(t) {
 		t.Run(name, func(t *testing.T) {
 			f := folder{name: recordingIn(t, references, name), "ex.csv": leftOut(t, name)}
-			c := casefile.Case{Recording: name, Exclude: "ex.csv", Replicates: ptr(20), Share: []float64{0.5}}
+			c := casefile.Case{Recording: name, Exclude: "ex.csv", Replicates: ptr(20), Share: []float64{0.5}, Speed: []float64{8, 10}}
 			if strings.Contains(name, "10hz") {
 				c.Velocity = "mcav_left_cm_s"
 			}

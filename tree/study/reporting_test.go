@@ -72,7 +72,7 @@ func parsed(t *testing.T, report any) map[string]any {
 }
 
 func TestReportsHaveTheKeysOfTheContract(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Delay = "" }) // for a warning
+	s := demoWith(t, func(c *casefile.Case) { c.Delay, c.Replicates = "", ptr(fewest) }) // for a warning
 	for name, c := range map[string]struct {
 		report any
 		keys   string
@@ -93,7 +93,7 @@ func TestReportsHaveTheKeysOfTheContract(t *testing.T) {
 
 // Numbers are in full precision: what is read back is what was computed.
 func TestNumbersAreInFullPrecision(t *testing.T) {
-	s := demoWith(t, func(*casefile.Case) {})
+	s := sharedDemo(t)
 	fits := parsed(t, s.FitReport())["fits"].([]any)
 	for i, r := range s.Fit.Results {
 		for _, p := range r.Parameters {
@@ -130,7 +130,7 @@ func estimates(v any, at string, each func(at string, e map[string]any)) {
 // What is identified lies in its intervals, the random one inside the total one
 // but for the chance of few replicates; what has no value says why.
 func TestEstimatesLieInTheirIntervals(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Replicates, c.Share = ptr(400), []float64{0.3, 0.7, 1} })
+	s := demoWith(t, func(c *casefile.Case) { c.Replicates, c.Share = ptr(200), []float64{0.3, 0.7, 1} })
 	seen, bounded := 0, 0
 	estimates(parsed(t, s.Report(defaults)), "", func(at string, e map[string]any) {
 		seen++
@@ -159,7 +159,7 @@ func TestEstimatesLieInTheirIntervals(t *testing.T) {
 // computed, and nothing else is missing from it.
 func TestReasonIsInTheReport(t *testing.T) {
 	flat := invented(column{"ao_mmHg", steady(80)}, column{"pleth", halfFlow})
-	s := whole(t, inventedCase(), flat)
+	s := fitted(t, inventedCase(), flat)
 	for name, report := range map[string]any{"check": s.Beats.Check(nil), "fit": s.FitReport(), "study": s.Report(defaults)} {
 		v := parsed(t, report)
 		if reason, _ := v["reason"].(string); !strings.Contains(reason, "no pulse in ao_mmHg") {
@@ -185,7 +185,7 @@ func TestReasonIsInTheReport(t *testing.T) {
 		t.Errorf("beat %v, native %v, recommended %v, comparison_reason %v", v["beat"], v["native"], v["recommended"], v["comparison_reason"])
 	}
 	// A flow alone has a pulse: check has an answer, a fit has none.
-	s = whole(t, inventedCase(), invented(outflowTo("ao_flow_mL_s")))
+	s = fitted(t, inventedCase(), invented(outflowTo("ao_flow_mL_s")))
 	if c, f := s.Beats.Check(nil).Reason, s.FitReport().Reason; c != nil || f == nil {
 		t.Errorf("flow alone: check %v, fit %v", c, f)
 	}
@@ -214,7 +214,7 @@ func TestFlowUnit(t *testing.T) {
 		"cm/s": invented(aortic("ao_mmHg"), column{"lvot_velocity_m_s", noisy(scaled(halfFlow, 0.0025, 0), 0.002)}),
 		"":     invented(aortic("ao_mmHg")),
 	} {
-		s := whole(t, inventedCase(), f)
+		s := fitted(t, inventedCase(), f)
 		got := ""
 		if u := s.FitReport().FlowUnit; u != nil {
 			got = *u

@@ -12,7 +12,7 @@ import (
 // The study in short says of the demo what its places below say, in the units
 // of the wards: 48 mL in 0.72 s are 4.0 L/min.
 func TestInShort(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Share = []float64{0.2, 0.45, 0.9} })
+	s := demoFitted(t, func(c *casefile.Case) { c.Share = []float64{0.2, 0.45, 0.9} })
 	rows := labelled(s.shortSection())
 	r := s.Fit.Results[s.Fit.Chosen]
 	c, _ := r.Parameter("C")
@@ -48,12 +48,12 @@ func TestInShortCarriesCalibration(t *testing.T) {
 	if math.Abs(e.Total.Low-95) > 1e-12 || math.Abs(e.Total.High-(100+math.Hypot(3, 3))) > 1e-12 {
 		t.Errorf("%+v", e)
 	}
-	volts := whole(t, inventedCase(), invented(column{"ao_pressure_V", noisy(scaled(halfPressure, 0.01, 0), 0.003)}))
+	volts := fitted(t, inventedCase(), invented(column{"ao_pressure_V", noisy(scaled(halfPressure, 0.01, 0), 0.003)}))
 	row := labelled(volts.shortSection())["mean pressure"]
 	if !strings.HasPrefix(row, "0.91") || !strings.Contains(row, " V, ") || strings.Contains(row, "random") {
 		t.Errorf("mean pressure in volts: %q", row)
 	}
-	flow := whole(t, inventedCase(), invented(column{"ao_flow_V", noisy(scaled(halfFlow, 0.01, 0), 0.01)}))
+	flow := fitted(t, inventedCase(), invented(column{"ao_flow_V", noisy(scaled(halfFlow, 0.01, 0), 0.01)}))
 	if row, ok := labelled(flow.shortSection())["mean flow"]; ok {
 		t.Errorf("mean flow of a channel in volts: %q", row)
 	}

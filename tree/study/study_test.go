@@ -77,6 +77,7 @@ func TestAStageWithAnErrorIsNotComputed(t *testing.T) {
 
 func TestRunStopsAtAStage(t *testing.T) {
 	c, f := demoCase(t), demoFolder(t)
+	c.Replicates = ptr(fewest)
 	next := map[Stage]Stage{StageIntake: StageBeats, StageBeats: StageFit, StageFit: StageSupport, StageSupport: StageForecast, StageForecast: StageDone}
 	for last, want := range next {
 		s, err := try(c, f, last)
@@ -95,7 +96,7 @@ func TestWarningsAreComplete(t *testing.T) {
 	for _, w := range data.WarningCodes() {
 		known[w.Code] = true
 	}
-	s := demoWith(t, func(c *casefile.Case) {
+	s := demoFitted(t, func(c *casefile.Case) {
 		c.DiameterCM, c.AngleDeg, c.Delay, c.OutflowPressure, c.Invert = ptr(9.0), ptr(70.0), "", nil, []string{"lvot_velocity_cm_s"}
 		c.From, c.To = ptr(13.0), ptr(18.0)
 	})

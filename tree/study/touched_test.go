@@ -71,7 +71,7 @@ func said(t interface{ Fatal(...any) }, s Study) string {
 func TestStudyAfterAChangeIsThatOfAFreshRun(t *testing.T) {
 	f := folder{"a.csv": table(100, 1000, aortic("ao_mmHg"), column{"lvot_velocity_cm_s", noisy(scaled(halfFlow, 0.25, 0), 0.2)})}
 	start := casefile.Case{Recording: "a.csv", Replicates: ptr(6), Share: []float64{0.5}, Speed: []float64{4}, DiameterCM: ptr(2.2)}
-	base := whole(t, start, f)
+	base := fitted(t, start, f)
 	before := said(t, base)
 	files := map[string]bool{"recording": true, "exclude": true, "time": true, "rate": true, "unit": true, "flow": true}
 	var keys []casefile.Key
