@@ -32,7 +32,7 @@ func newRoot(s stream) *cobra.Command {
 	screen := addScreen(root)
 	root.RunE = func(c *cobra.Command, args []string) error { return runRoot(c.Context(), s, opts, screen, args) }
 	root.AddCommand(
-		checkCommand(s), fitCommand(s), studyCommand(s), solveCommand(s), demoCommand(s),
+		checkCommand(s), fitCommand(s), studyCommand(s), solveCommand(s), batchCommand(s), demoCommand(s),
 		warningsTopic(), exitCodesTopic(),
 	)
 	return root
