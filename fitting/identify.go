@@ -11,6 +11,7 @@ import (
 // judge decides which parameters the data determine, and adds the warnings and
 // the criteria of choice.
 func (f *beatFit) judge(r *Result) {
+	f.degenerate(r)
 	for i, s := range f.model.Parameters() {
 		p := &r.Parameters[i].Estimate
 		doubtIf(p, f.undetermined(s))
@@ -24,6 +25,20 @@ func (f *beatFit) judge(r *Result) {
 	f.criteria(r)
 	f.outflow(r)
 	f.warn(r)
+}
+
+// degenerate marks the parameter of a fit that is another model in disguise.
+func (f *beatFit) degenerate(r *Result) {
+	d, ok := f.model.Circuit.(interface{ degenerate(v Values) (parameter, why string) })
+	if !ok {
+		return
+	}
+	name, why := d.degenerate(r.Values)
+	for i := range r.Parameters {
+		if r.Parameters[i].Name == name {
+			doubtIf(&r.Parameters[i].Estimate, why)
+		}
+	}
 }
 
 // onBound is the reason of a parameter that a fit drives to 0.

@@ -99,7 +99,7 @@ func TestAnyFiniteInput(t *testing.T) {
 			b.Flow = append(b.Flow, rapid.SliceOfN(value, n, n).Draw(t, "flow"))
 			b.Pressure = append(b.Pressure, rapid.SliceOfN(value, n, n).Draw(t, "pressure"))
 		}
-		for _, m := range everyModel()[:3] {
+		for _, m := range Models() {
 			r, err := FitBeat(t.Context(), m, b, Settings{Replicates: 20})
 			if err != nil {
 				t.Fatal(err)

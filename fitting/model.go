@@ -66,15 +66,24 @@ type Circuit interface {
 	Unpack(linear, shape []float64) Values
 	// Pack is the inverse of Unpack; it needs R > 0.
 	Pack(v Values) (linear, shape []float64)
-	// Impedance is Z(w) in the form of the literature.
-	Impedance(v Values, w float64) complex128
+	// Equation is the circuit in words: over time, then as an impedance.
+	Equation() []string
+	// Series is the part of Z(w) that lies before R and C.
+	Series(v Values, w float64) complex128
 	// Resistance is Z(0).
 	Resistance(v Values) float64
 }
 
+// Impedance is Z(w), the series elements and then R parallel to C:
+//
+//	Z(w) = Zseries(w) + R/(1 + i w R C)
+func (m Model) Impedance(v Values, w float64) complex128 {
+	return m.Series(v, w) + complex(v.R, 0)/complex(1, w*v.R*v.C)
+}
+
 // Models lists the models, the simplest first.
 func Models() []Model {
-	return []Model{{"wk2", wk2{}}, {"wk3", wk3{}}}
+	return []Model{{"wk2", wk2{}}, {"wk3", wk3{}}, {"wk4s", wk4s{}}, {"wk4p", wk4p{}}}
 }
 
 // ByName finds a model.

@@ -24,7 +24,7 @@ var impedanceTable = [][9]float64{
 
 func TestImpedanceTable(t *testing.T) {
 	columns := map[string]int{"wk2": 1, "wk3": 3, "wk4p": 5, "wk4s": 7}
-	for _, m := range everyModel() {
+	for _, m := range Models() {
 		for _, row := range impedanceTable {
 			z := m.Impedance(example, 2*math.Pi*row[0])
 			modulus, phase := row[columns[m.Name]], row[columns[m.Name]+1]
@@ -56,7 +56,7 @@ func TestLumpedIsTheModel(t *testing.T) {
 // Z is the sum of the columns, in the form of the literature and in that of the
 // fit; the slopes are those of the columns; Unpack undoes Pack.
 func TestColumnsMakeTheImpedance(t *testing.T) {
-	for _, m := range everyModel() {
+	for _, m := range Models() {
 		x, shape := m.Pack(example)
 		if len(x) != m.Linear() || len(shape) != m.Shapes() || len(m.Parameters()) == 0 || m.Source() == "" {
 			t.Fatalf("%s: %d factors, %d shapes", m.Name, len(x), len(shape))
@@ -115,7 +115,7 @@ func TestByName(t *testing.T) {
 
 // The units of a fit to flow and of one per unit area differ by mL and cm.
 func TestUnitsPerArea(t *testing.T) {
-	for _, m := range everyModel() {
+	for _, m := range Models() {
 		for _, s := range m.Parameters() {
 			want := map[string]string{"R": "mmHg s/cm", "C": "cm/mmHg", "Zc": "mmHg s/cm", "L": "mmHg s²/cm"}[s.Name]
 			if s.PerArea != want {

@@ -15,6 +15,8 @@ type moments struct {
 	total     float64 // sum of weight |D|²
 	flowSum   float64 // sum of q
 	crossSum  float64 // sum of re
+	bendSum   float64 // sum of w² q below the Nyquist bin
+	riseSum   float64 // sum of w im below it
 	nyquist   bool    // the last bin is the Nyquist bin
 	columns   [2 * maxLinear]complex128
 }
@@ -38,7 +40,7 @@ func omega(k, n int, rate float64) float64 {
 
 // set takes in the spectra of flow and pressure under a calibration.
 func (m *moments) set(flow, pressure []complex128, c Calibration) {
-	m.total, m.flowSum, m.crossSum = 0, 0, 0
+	m.total, m.flowSum, m.crossSum, m.bendSum, m.riseSum = 0, 0, 0, 0, 0
 	last := len(flow) - 1
 	shift := complex(c.PressureScale, 0) // times exp(i w Delay)
 	sin, cos := math.Sincos(m.omega[1] * c.Delay)
@@ -57,6 +59,10 @@ func (m *moments) set(flow, pressure []complex128, c Calibration) {
 		m.total += weight * (pr*pr + pi*pi)
 		m.flowSum += m.q[k]
 		m.crossSum += m.re[k]
+		if w := m.omega[k]; !m.nyquist || k < last {
+			m.bendSum += w * w * m.q[k]
+			m.riseSum += w * m.im[k]
+		}
 	}
 }
 

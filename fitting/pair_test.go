@@ -12,7 +12,7 @@ func TestPairIsTwoResponses(t *testing.T) {
 		for j := range b.Samples {
 			b.Samples[j] = 40 - b.Samples[j]/3
 		}
-		for _, m := range everyModel() {
+		for _, m := range Models() {
 			l := Lumped{Model: m, Values: example}
 			r := NewResponder(n, a.Rate)
 			z, toA, toB := make([]complex128, n/2+1), make([]float64, n), make([]float64, n)

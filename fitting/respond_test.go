@@ -10,7 +10,7 @@ import (
 // Against data.Period's own transforms.
 func TestRespondIsTheSpectrumTimesZ(t *testing.T) {
 	for _, n := range []int{1, 2, 7, 16, 200, 211, 857} {
-		for _, m := range everyModel() {
+		for _, m := range Models() {
 			flow := sample(exampleFlow, n, 0.3)
 			l := Lumped{Model: m, Values: example}
 			got := Respond(l, flow, 4)

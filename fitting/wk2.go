@@ -16,6 +16,10 @@ func (wk2) Parameters() []Symbol { return []Symbol{resistance, compliance} }
 func (wk2) Linear() int          { return 1 }
 func (wk2) Shapes() int          { return 1 }
 
+func (wk2) Equation() []string {
+	return []string{"P = Pv + Pd,  C dPd/dt = Q - Pd/R", "Z(w) = R/(1 + i w R C),  Z(0) = R"}
+}
+
 func (wk2) Columns(w float64, shape []float64, out []complex128) {
 	out[0] = relaxation(w, shape[0])
 }
@@ -32,9 +36,7 @@ func (wk2) Pack(v Values) (x, shape []float64) {
 	return []float64{v.R}, []float64{v.R * v.C}
 }
 
-func (wk2) Impedance(v Values, w float64) complex128 {
-	return complex(v.R, 0) / complex(1, w*v.R*v.C)
-}
+func (wk2) Series(Values, float64) complex128 { return 0 }
 
 func (wk2) Resistance(v Values) float64 { return v.R }
 

@@ -18,6 +18,10 @@ func (wk3) Parameters() []Symbol { return []Symbol{resistance, compliance, chara
 func (wk3) Linear() int          { return 2 }
 func (wk3) Shapes() int          { return 1 }
 
+func (wk3) Equation() []string {
+	return []string{"P = Pv + Pd + Zc Q,  C dPd/dt = Q - Pd/R", "Z(w) = Zc + R/(1 + i w R C),  Z(0) = R + Zc"}
+}
+
 func (wk3) Columns(w float64, shape []float64, out []complex128) {
 	out[0], out[1] = relaxation(w, shape[0]), 1
 }
@@ -34,9 +38,7 @@ func (wk3) Pack(v Values) (x, shape []float64) {
 	return []float64{v.R, v.Zc}, []float64{v.R * v.C}
 }
 
-func (wk3) Impedance(v Values, w float64) complex128 {
-	return complex(v.Zc, 0) + complex(v.R, 0)/complex(1, w*v.R*v.C)
-}
+func (wk3) Series(v Values, _ float64) complex128 { return complex(v.Zc, 0) }
 
 func (wk3) Resistance(v Values) float64 { return v.R + v.Zc }
 

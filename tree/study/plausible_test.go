@@ -50,7 +50,7 @@ func TestWaysToComplianceThatDisagree(t *testing.T) {
 		t.Errorf("the demo: %v", w)
 	}
 	c := inventedCase()
-	c.Delay = "0.05"
+	c.Delay, c.Model = "0.05", "wk3"
 	s := fitted(t, c, invented(aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")))
 	w, ok := warned(s, data.CodeDisagree)
 	if !ok || !strings.Contains(w.Text, "decay gives C 1.4") || !strings.Contains(w.Cure, "delay") {

@@ -166,17 +166,22 @@ func compareLoad(t *testing.T, s Study, want expectation) {
 	if err != nil {
 		t.Fatal(err)
 	}
+	compared := 0
 	for _, r := range s.Fit.Results {
 		e := want.Fit.Three
-		if r.Model.Name == "wk2" {
+		switch r.Model.Name {
+		case "wk2":
 			e = want.Fit.Two
+		case "wk4s", "wk4p":
+			continue
 		}
+		compared++
 		if !near(r.Values.R, e.R, 0.05) || !near(r.Values.C, e.C, 0.05) || !near(r.TotalResistance.Value, want.Fit.Total, 0.02) {
 			t.Errorf("%s: R %.4f, C %.4f, total %.4f; want %+v and %v", r.Model.Name, r.Values.R, r.Values.C, r.TotalResistance.Value, e, want.Fit.Total)
 		}
 	}
-	if len(s.Fit.Results) != 2 {
-		t.Errorf("%d fits", len(s.Fit.Results))
+	if compared < 2 {
+		t.Errorf("%d fits", compared)
 	}
 }
 

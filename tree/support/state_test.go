@@ -80,7 +80,7 @@ func TestBalanceClosesForEveryModel(t *testing.T) {
 		q := flows().Draw(r, "q")
 		pv := rapid.Float64Range(0, 30).Draw(r, "pv")
 		draw := func(what string, low, high float64) float64 { return rapid.Float64Range(low, high).Draw(r, what) }
-		values := fitting.Values{R: draw("R", 0.1, 5), C: draw("C", 0, 5), Zc: draw("Zc", 0, 0.5)}
+		values := fitting.Values{R: draw("R", 0.1, 5), C: draw("C", 0, 5), Zc: draw("Zc", 0, 0.5), L: draw("L", 0, 0.05)}
 		for _, m := range fitting.Models() {
 			v := values
 			if m.Name == "wk2" {

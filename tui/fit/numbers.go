@@ -106,23 +106,26 @@ func assumption(s study.Sensitivity) string {
 	return strings.ReplaceAll(s.Assumption, "-", " ") + " " + s.Change
 }
 
-// comparison sets the models beside one another.
+// comparison sets the models beside one another, on the basis shown.
 func (m Model) comparison(p plan) []string {
 	if m.count() == 0 {
 		return nil
 	}
 	var lines []string
 	if p.head > 0 {
-		lines = append(lines, fmt.Sprintf("%13s %6s", "rms mmHg", "AICc"))
+		lines = append(lines, fmt.Sprintf("  %-4s %7s %5s", m.result().Basis, "rms", "AICc"))
 	}
 	for i, r := range m.fit.Results {
-		aicc := bare(r.AICc)
+		if r.Basis != m.result().Basis {
+			continue
+		}
+		aicc := fmt.Sprintf("%.1f", r.AICc)
 		if math.IsNaN(r.AICc) {
 			aicc = "none"
 		}
 		lines = append(lines, comparisonLine(cursor(i == m.shown), r.Model.Name, bare(r.RMSE), aicc))
 	}
-	return append(lines, "  recommended "+m.recommended(), "  in use "+m.used())
+	return append(lines, "  in use "+m.used())
 }
 
 // recommended is the name of the recommended model.
@@ -141,7 +144,7 @@ func (m Model) used() string {
 }
 
 func comparisonLine(cursor, model, rms, aicc string) string {
-	return fmt.Sprintf("%s %-4s%7s %6s", cursor, model, rms, aicc)
+	return fmt.Sprintf("%s %-4s %7s %5s", cursor, model, rms, aicc)
 }
 
 // assumptions is the table of what each assumption moved does to the model in

@@ -1,5 +1,7 @@
 package fit
 
+import "afterbeat/fitting"
+
 // plan is where things stand, in lines.
 type plan struct {
 	width, plot int
@@ -22,6 +24,15 @@ const (
 	leastPlot   = 6
 )
 
+// bases is on how many bases models were fitted.
+func bases(results []fitting.Result) int {
+	seen := map[string]bool{}
+	for _, r := range results {
+		seen[r.Basis] = true
+	}
+	return len(seen)
+}
+
 // plan divides the area. It does not depend on the model shown, on the cursor,
 // nor on what is moved.
 func (m Model) plan() plan {
@@ -36,7 +47,7 @@ func (m Model) plan() plan {
 	p.numbers = p.head + rows
 	compare := 0
 	if models > 0 {
-		compare = 3 + models
+		compare = 2 + models/bases(m.fit.Results)
 	}
 	rest := m.area.Height - p.status - p.advice
 	switch {

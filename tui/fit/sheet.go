@@ -71,7 +71,7 @@ func resultRows(r fitting.Result, moved []study.Sensitivity) []row {
 
 // from adds what depends on the fit.
 func (w row) from(r fitting.Result, of func(fitting.Values) float64, moved []study.Sensitivity) row {
-	w.equation = equations[r.Model.Name]
+	w.equation = r.Model.Equation()
 	w.source = r.Model.Source()
 	w.method = intervalWords(r)
 	for _, s := range moved {
