@@ -29,7 +29,9 @@ func (f *beatFit) judge(r *Result) {
 
 // degenerate marks the parameter of a fit that is another model in disguise.
 func (f *beatFit) degenerate(r *Result) {
-	d, ok := f.model.Circuit.(interface{ degenerate(v Values) (parameter, why string) })
+	d, ok := f.model.Circuit.(interface {
+		degenerate(v Values) (parameter, why string)
+	})
 	if !ok {
 		return
 	}

@@ -16,10 +16,12 @@ package fitting
 // never free together.
 type wk4s struct{}
 
-func (wk4s) Source() string       { return "Westerhof 1969 with L in series; Segers 2008" }
-func (wk4s) Parameters() []Symbol { return []Symbol{resistance, compliance, character, seriesInertance} }
-func (wk4s) Linear() int          { return 3 }
-func (wk4s) Shapes() int          { return 1 }
+func (wk4s) Source() string { return "Westerhof 1969 with L in series; Segers 2008" }
+func (wk4s) Parameters() []Symbol {
+	return []Symbol{resistance, compliance, character, seriesInertance}
+}
+func (wk4s) Linear() int { return 3 }
+func (wk4s) Shapes() int { return 1 }
 
 func (wk4s) Equation() []string {
 	return []string{"P = Pv + Pd + Zc Q + L dQ/dt,  C dPd/dt = Q - Pd/R", "Z(w) = Zc + i w L + R/(1 + i w R C),  Z(0) = R + Zc"}
