@@ -25,5 +25,5 @@
 //
 // [F10] and [OneMinusF10] are good to 1e-12 relative for alpha from 0.01 to 1e6, and
 // run on beyond both ends. [Fit] is a fast form of sqrt(1 - F10) for inner loops,
-// good to 1e-11. [CentreRatio] and [Profile] are the relations of velocities.
+// good to 1e-12. [CentreRatio] and [Profile] are the relations of velocities.
 package womersley

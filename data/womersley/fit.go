@@ -20,17 +20,17 @@ type Fit struct {
 }
 
 const (
-	cellWidth = 0.25
-	cellCount = 96
+	cellWidth = 0.125
+	cellCount = 192
 	cellTerms = 8
 	fitEnd    = cellWidth * cellCount
-	tailTerms = 9
+	tailTerms = 13
 )
 
 // Fitted is the fit. It is made when first asked for, in about a millisecond.
 var Fitted = sync.OnceValue(newFit)
 
-// Root is sqrt(1 - F10) to 1e-11 relative, for any alpha of 0 or more.
+// Root is sqrt(1 - F10) to 1e-12 relative, for any alpha of 0 or more.
 func (f *Fit) Root(alpha float64) complex128 {
 	if alpha < fitEnd {
 		cell := int(alpha * (1 / cellWidth))
