@@ -9,13 +9,14 @@ import (
 	"afterbeat/data/casefile"
 	"afterbeat/data/unit"
 	"afterbeat/fitting"
+	"afterbeat/fitting/estimate"
 )
 
 // Fit is what the average beat says about the load.
 type Fit struct {
 	Beats       Beats
 	Results     []fitting.Result
-	Estimators  []fitting.Estimator
+	Estimators  []estimate.Estimate
 	Recommended fitting.Recommendation
 	// Chosen is the index of the result that goes downstream: the model that
 	// the case names, else the recommended one; -1 where nothing was fitted.
@@ -81,9 +82,8 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 // fromPressureAlone estimates the time constant of diastole, all that a
 // pressure without a flow allows.
 func (f Fit) fromPressureAlone() Fit {
-	decay := fitting.Decay(f.Beats.Pressure.Period, outflow(f.Beats))
-	f.Estimators = append(f.Estimators, decay)
-	if decay.Reason != "" {
+	f.Estimators = estimators(f.Beats)
+	if decay := f.Estimators[0]; decay.Reason != "" {
 		f.Reason = "no flow to fit with, and no time constant either: " + decay.Reason
 		return f
 	}
@@ -103,16 +103,14 @@ func (f Fit) conclude(ctx context.Context, d fitting.Beats) (Fit, error) {
 		wanted = f.Beats.Intake.Case.Model
 	}
 	f.Chosen = slices.IndexFunc(f.Results, func(r fitting.Result) bool { return r.Model.Name == wanted })
-	decay := fitting.Decay(f.Beats.Pressure.Period, d.OutflowPressure)
+	f.Estimators = estimators(f.Beats)
 	if f.Chosen < 0 {
-		f.Estimators = append(f.Estimators, decay)
 		for _, r := range f.Results {
 			f.Warnings = append(f.Warnings, r.Warnings...)
 		}
 		return f, nil
 	}
 	chosen := f.Results[f.Chosen]
-	f.Estimators = append(f.Estimators, decay.WithResistance(chosen.TotalResistance.Value))
 	f.Warnings = chosen.Warnings
 	var err error
 	f.Sensitivity, err = sensitivities(ctx, chosen, d)

@@ -35,14 +35,14 @@ type allowance struct {
 func allowances() map[string]allowance {
 	velocity := column{"lvot_velocity_cm_s", noisy(scaled(halfFlow, 0.25, 0), 0.2)}
 	return map[string]allowance{
-		"pressure and flow": {[]column{aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")}, nil, true, 1, "", "", data.CodeDelay},
+		"pressure and flow": {[]column{aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")}, nil, true, 7, "", "", data.CodeDelay},
 		"pressure and velocity without a diameter": {
-			[]column{aortic("ao_mmHg"), velocity}, nil, true, 1, "", "state the diameter", data.CodePerArea,
+			[]column{aortic("ao_mmHg"), velocity}, nil, true, 7, "", "state the diameter", data.CodePerArea,
 		},
 		"pressure and velocity with a diameter": {
-			[]column{aortic("ao_mmHg"), velocity}, func(c *casefile.Case) { c.DiameterCM = ptr(2.2) }, true, 1, "", "", data.CodeDelay,
+			[]column{aortic("ao_mmHg"), velocity}, func(c *casefile.Case) { c.DiameterCM = ptr(2.2) }, true, 7, "", "", data.CodeDelay,
 		},
-		"pressure alone": {[]column{aortic("ao_mmHg")}, nil, false, 1, "", "nothing was fitted", data.CodeNoFlow},
+		"pressure alone": {[]column{aortic("ao_mmHg")}, nil, false, 7, "", "nothing was fitted", data.CodeNoFlow},
 		"flow alone":     {[]column{outflowTo("ao_flow_mL_s")}, nil, false, 0, "no arterial pressure: a fit needs one; name it with --pressure", "nothing was fitted", ""},
 		"velocity alone": {[]column{velocity}, nil, false, 0, "no arterial pressure", "nothing was fitted", data.CodePerArea},
 		"pressure in volts": {
@@ -56,11 +56,11 @@ func allowances() map[string]allowance {
 			false, 0, "ao_flow_V is in V, without a scale", "nothing was fitted", data.CodeUncalibrated,
 		},
 		"flow of a bed": {
-			[]column{aortic("carotid_mmHg"), outflowTo("carotid_flow_mL_s")}, nil, true, 1, "", "that of one bed (carotid)", data.CodeRegional,
+			[]column{aortic("carotid_mmHg"), outflowTo("carotid_flow_mL_s")}, nil, true, 7, "", "that of one bed (carotid)", data.CodeRegional,
 		},
-		"flow of nowhere": {[]column{aortic("ao_mmHg"), outflowTo("flow_mL_s")}, nil, true, 1, "", "", data.CodeSiteUnknown},
+		"flow of nowhere": {[]column{aortic("ao_mmHg"), outflowTo("flow_mL_s")}, nil, true, 7, "", "", data.CodeSiteUnknown},
 		"limb for the root": {
-			[]column{aortic("radial_mmHg"), outflowTo("ao_flow_mL_s")}, nil, true, 1, "", "", data.CodeStandIn,
+			[]column{aortic("radial_mmHg"), outflowTo("ao_flow_mL_s")}, nil, true, 7, "", "", data.CodeStandIn,
 		},
 		"flow upside down": {
 			[]column{aortic("ao_mmHg"), outflowTo("ao_flow_mL_s")},
@@ -70,7 +70,7 @@ func allowances() map[string]allowance {
 		"a pump at work already": {
 			[]column{aortic("ao_mmHg"), {"ao_flow_mL_s", noisy(scaled(halfFlow, 0.3, 60), 0.5)}},
 			nil,
-			true, 1, "", "the flow at the root never stops (it falls to 6", "",
+			true, 7, "", "the flow at the root never stops (it falls to 6", "",
 		},
 		"a flat pressure": {[]column{{"ao_mmHg", steady(80)}, outflowTo("ao_flow_mL_s")}, nil, false, 0, "no pulse in ao_mmHg", "nothing was fitted", ""},
 		"a pressure that wanders": {

@@ -3,9 +3,11 @@ package study
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"afterbeat/data"
 	"afterbeat/data/unit"
+	"afterbeat/fitting/estimate"
 )
 
 // window is what a mean value has in people, in the internal unit.
@@ -72,12 +74,14 @@ func (w window) holds(mean float64) bool { return w.low <= math.Abs(mean) && mat
 // most is how far two estimates of C may differ before it is said.
 const most = 1.5
 
-// disagreements warns where the decay of diastole and the fit in use give
-// compliances that are far apart.
+// disagreements warns where another way and the fit in use give compliances that
+// are far apart.
 func disagreements(f Fit) []data.Warning {
+	// The others scatter too much to accuse the fit, or are no compliance.
+	steady := []string{estimate.Decay, estimate.Area, estimate.PulsePressure}
 	c := f.Results[f.Chosen].Values.C
 	for _, e := range f.Estimators {
-		if e.Reason != "" || !(e.C > 0) || !(c > 0) || (e.C/c < most && c/e.C < most) {
+		if !slices.Contains(steady, e.Name) || !(e.C > 0) || !(c > 0) || (e.C/c < most && c/e.C < most) {
 			continue
 		}
 		return []data.Warning{{

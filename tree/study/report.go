@@ -47,11 +47,16 @@ type ModelReport struct {
 
 // EstimatorReport is one way to R, C or tau beside the fits.
 type EstimatorReport struct {
-	Name   string  `json:"name"`
-	R      Number  `json:"R"`
-	C      Number  `json:"C"`
-	Tau    Number  `json:"tau_s"`
-	Reason *string `json:"reason"`
+	Name string `json:"name"`
+	R    Number `json:"R"`
+	C    Number `json:"C"`
+	Tau  Number `json:"tau_s"`
+	Zc   Number `json:"Zc"`
+	// Index is stroke volume over pulse pressure, which is no compliance.
+	Index     Number  `json:"index"`
+	Asymptote Number  `json:"asymptote_mmHg"`
+	Reason    *string `json:"reason"` // why the method does not apply
+	Remark    *string `json:"remark"`
 }
 
 // RecommendedReport names the recommended fit and why.

@@ -39,7 +39,7 @@ func (s Study) FitReport() FitReport {
 		r.Fits = append(r.Fits, modelReport(one))
 	}
 	for _, e := range f.Estimators {
-		r.Estimators = append(r.Estimators, EstimatorReport{e.Name, Number(e.R), Number(e.C), Number(e.Tau), reason(remark(e))})
+		r.Estimators = append(r.Estimators, estimatorReport(e))
 	}
 	if f.Recommended.Model != "" {
 		r.Recommended = &RecommendedReport{f.Recommended.Model, f.Recommended.Basis, f.Recommended.Why}

@@ -6,7 +6,6 @@ import (
 
 	"afterbeat/data"
 	"afterbeat/data/casenote"
-	"afterbeat/fitting"
 )
 
 // checkSections describe the pulse of every channel that can have one.
@@ -108,32 +107,15 @@ func (f Fit) sensitivitySection() casenote.Section {
 	}
 }
 
-func (f Fit) estimatorSection() casenote.Section {
-	t := casenote.Table{Header: []string{"method", "tau, s", "R, " + f.unitOf("R"), "C, " + f.unitOf("C"), "remark"}}
-	for _, e := range f.Estimators {
-		t.Rows = append(t.Rows, []casenote.Cell{
-			{Words: data.Clean(e.Name)}, plain(e.Tau), plain(e.R), plain(e.C), {Words: data.Clean(remark(e))},
-		})
-	}
-	return casenote.Section{Title: "Other ways to the same numbers", Tables: []casenote.Table{t}}
-}
-
-func remark(e fitting.Estimator) string {
-	switch {
-	case e.Reason != "":
-		return e.Reason
-	case math.IsNaN(e.R):
-		return "R and C need a flow"
-	}
-	return "-"
-}
-
 // unitOf is the unit of a parameter of the fits.
 func (f Fit) unitOf(parameter string) string {
 	for _, r := range f.Results {
 		if p, ok := r.Parameter(parameter); ok {
 			return p.Unit
 		}
+	}
+	if f.Beats.FlowInfo.PerArea {
+		return map[string]string{"R": "mmHg s/cm", "C": "cm/mmHg"}[parameter]
 	}
 	return map[string]string{"R": "mmHg s/mL", "C": "mL/mmHg"}[parameter]
 }

@@ -7,7 +7,7 @@ import (
 	"strings"
 
 	"afterbeat/data"
-	"afterbeat/fitting"
+	"afterbeat/fitting/estimate"
 	"afterbeat/tree/study"
 	"afterbeat/tui/layout"
 )
@@ -166,14 +166,17 @@ func (m Model) assumptions(p plan) []string {
 		}
 		lines = append(lines, line)
 	}
-	for _, e := range m.fit.Estimators {
+	for _, e := range m.decays() {
 		lines = append(lines, m.estimatorLine(e))
 	}
 	return layout.Lines(strings.Join(lines, "\n"), p.assumptions)
 }
 
+// decays are the estimators that have a line here: the first.
+func (m Model) decays() []estimate.Estimate { return m.fit.Estimators[:min(1, len(m.fit.Estimators))] }
+
 // estimatorLine is another way to the same numbers.
-func (m Model) estimatorLine(e fitting.Estimator) string {
+func (m Model) estimatorLine(e estimate.Estimate) string {
 	if e.Reason != "" {
 		return fmt.Sprintf("  By %s: none, %s", e.Name, e.Reason)
 	}

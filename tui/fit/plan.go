@@ -57,7 +57,7 @@ func (m Model) plan() plan {
 		p.compare = compare
 	}
 	if models > 0 && m.fit.Chosen >= 0 && m.area.Height >= tallHeight {
-		p.assumptions = 2 + len(m.fit.Sensitivity) + len(m.fit.Estimators)
+		p.assumptions = 2 + len(m.fit.Sensitivity) + len(m.decays())
 	}
 	p.plot = max(rest-p.numbers-p.compare-p.assumptions, 0)
 	p.stacked = p.plot >= stackHeight && models > 0

@@ -8,6 +8,7 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/casenote"
 	"afterbeat/fitting"
+	"afterbeat/fitting/estimate"
 	"afterbeat/tree/study"
 )
 
@@ -149,7 +150,7 @@ func intervalWords(r fitting.Result) string {
 }
 
 // decayRow is the time constant, all that a pressure alone gives.
-func decayRow(e fitting.Estimator) row {
+func decayRow(e estimate.Estimate) row {
 	w := newRow("tau", "s", data.Estimate{
 		Value: e.Tau, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true,
 		Why: "this method gives none",

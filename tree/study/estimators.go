@@ -1,0 +1,68 @@
+package study
+
+import (
+	"fmt"
+	"math"
+
+	"afterbeat/data"
+	"afterbeat/data/casenote"
+	"afterbeat/fitting/estimate"
+	"afterbeat/fitting/harmonic"
+)
+
+// estimators are the ways of the literature to the load of the average beat,
+// each with the reason where it does not apply.
+func estimators(b Beats) []estimate.Estimate {
+	beat := estimate.Beat{
+		Pressure: b.Pressure.Period, Flow: b.Flow.Period,
+		OutflowPressure: outflow(b), Rise: b.Pressure.EndMinusStart,
+	}
+	if b.Flow.Count > 0 {
+		beat.Harmonics = harmonic.Impedance(b.Ensemble.Beats[0], b.Ensemble.Beats[1], b.Ensemble.Rate)
+	}
+	return estimate.All(beat)
+}
+
+// estimatorSection sets the estimators side by side.
+func (f Fit) estimatorSection() casenote.Section {
+	t := casenote.Table{Header: []string{"method", "tau, s", "R, " + f.unitOf("R"), "C, " + f.unitOf("C"), "remark"}}
+	for _, e := range f.Estimators {
+		t.Rows = append(t.Rows, []casenote.Cell{
+			{Words: data.Clean(e.Name)}, plain(e.Tau), plain(e.R), plain(e.C), {Words: data.Clean(f.remark(e))},
+		})
+	}
+	return casenote.Section{
+		Title:  "Other ways to the same numbers",
+		Words:  words(fmt.Sprintf("All take the outflow pressure for %g mmHg. R is the total resistance, Zc included.", outflow(f.Beats))),
+		Tables: []casenote.Table{t},
+	}
+}
+
+// remark is what there is to say of an estimate in print: what it gives beside
+// tau, R and C, what to mind, or why there is none.
+func (f Fit) remark(e estimate.Estimate) string {
+	number := func(v float64, unit string) string { return casenote.Format(v, data.NoInterval()) + " " + unit }
+	said := ""
+	switch {
+	case e.Reason != "":
+		return "does not apply: " + e.Reason
+	case !math.IsNaN(e.Zc):
+		said = "Zc " + number(e.Zc, f.unitOf("R"))
+	case !math.IsNaN(e.Index):
+		said = "index " + number(e.Index, f.unitOf("C"))
+	case e.Remark == "":
+		return "-"
+	}
+	if said != "" && e.Remark != "" {
+		said += ": "
+	}
+	return said + e.Remark
+}
+
+func estimatorReport(e estimate.Estimate) EstimatorReport {
+	return EstimatorReport{
+		Name: e.Name, R: Number(e.R), C: Number(e.C), Tau: Number(e.Tau),
+		Zc: Number(e.Zc), Index: Number(e.Index), Asymptote: Number(e.Asymptote),
+		Reason: reason(e.Reason), Remark: reason(e.Remark),
+	}
+}
