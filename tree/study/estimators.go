@@ -23,19 +23,30 @@ func estimators(b Beats) []estimate.Estimate {
 	return estimate.All(beat)
 }
 
-// estimatorSection sets the estimators side by side.
+// estimatorSection sets the estimators side by side, with what there is to say of
+// each above the table.
 func (f Fit) estimatorSection() casenote.Section {
-	t := casenote.Table{Header: []string{"method", "tau, s", "R, " + f.unitOf("R"), "C, " + f.unitOf("C"), "remark"}}
+	s := casenote.Section{
+		Title: "Other ways to the same numbers",
+		Words: words(fmt.Sprintf("All take the outflow pressure for %g mmHg. R is the total resistance, Zc included.", outflow(f.Beats))),
+	}
+	t := casenote.Table{Header: []string{"method", "tau, s", "R, " + f.unitOf("R"), "C, " + f.unitOf("C")}}
 	for _, e := range f.Estimators {
-		t.Rows = append(t.Rows, []casenote.Cell{
-			{Words: data.Clean(e.Name)}, plain(e.Tau), plain(e.R), plain(e.C), {Words: data.Clean(f.remark(e))},
-		})
+		if r := f.remark(e); r != "" {
+			s.Rows = append(s.Rows, casenote.Words(e.Name, r))
+		}
+		t.Rows = append(t.Rows, []casenote.Cell{{Words: data.Clean(e.Name)}, orDash(e.Tau), orDash(e.R), orDash(e.C)})
 	}
-	return casenote.Section{
-		Title:  "Other ways to the same numbers",
-		Words:  words(fmt.Sprintf("All take the outflow pressure for %g mmHg. R is the total resistance, Zc included.", outflow(f.Beats))),
-		Tables: []casenote.Table{t},
+	s.Tables = []casenote.Table{t}
+	return s
+}
+
+// orDash is a cell of a number without an interval; a dash where there is none.
+func orDash(v float64) casenote.Cell {
+	if math.IsNaN(v) {
+		return casenote.Cell{Words: data.Clean("-")}
 	}
+	return plain(v)
 }
 
 // remark is what there is to say of an estimate in print: what it gives beside
@@ -50,8 +61,6 @@ func (f Fit) remark(e estimate.Estimate) string {
 		said = "Zc " + number(e.Zc, f.unitOf("R"))
 	case !math.IsNaN(e.Index):
 		said = "index " + number(e.Index, f.unitOf("C"))
-	case e.Remark == "":
-		return "-"
 	}
 	if said != "" && e.Remark != "" {
 		said += ": "
