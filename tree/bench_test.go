@@ -117,3 +117,13 @@ func plain(n Network, order, parent []int, c *compiled, w float64, flow complex1
 	}
 	return out
 }
+
+func BenchmarkResponse55(b *testing.B) {
+	n := tree55(b, false)
+	b.ReportAllocs()
+	for range b.N {
+		if _, err := Respond(n); err != nil {
+			b.Fatal(err)
+		}
+	}
+}

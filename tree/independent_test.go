@@ -46,7 +46,7 @@ func abcd(n Network, i int, w float64, at map[string]ends) (yin complex128) {
 		if t.Matched {
 			r1 = complex(n.Blood.Density*s.Speed(s.Outlet(), n.Blood.Density)/(math.Pi*s.Outlet()*s.Outlet()*unit.DynPerMmHg), 0)
 		}
-		yl = 1 / (r1 + 1/(complex(1/t.R2, w*t.C)))
+		yl = 1 / (r1 + 1/complex(1/t.R2, w*t.C))
 		if math.IsInf(t.R1, 1) {
 			yl = 0
 		}
@@ -206,4 +206,3 @@ func TestTaperAgainstTheLine(t *testing.T) {
 		}
 	}
 }
-

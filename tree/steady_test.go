@@ -18,7 +18,9 @@ func fork(first, second Terminal, b Blood) Network {
 // Mean flow divides as currents do: by hand for a fork, 8 mu l/(pi r⁴) each.
 func TestMeanFlowDivides(t *testing.T) {
 	n := fork(Terminal{R1: 1, R2: 3}, Terminal{R1: 0, R2: 6, C: 1}, thick)
-	poiseuille := func(s Segment) float64 { return 8 * 0.04 * s.Length / (math.Pi * math.Pow(s.Radius, 4)) / 1333.22387415 }
+	poiseuille := func(s Segment) float64 {
+		return 8 * 0.04 * s.Length / (math.Pi * math.Pow(s.Radius, 4)) / 1333.22387415
+	}
 	trunk, one, two := poiseuille(n.Segments[0]), poiseuille(n.Segments[1])+4, poiseuille(n.Segments[2])+6
 	near(t, "resistance", mustLoad(t, n).Resistance(), trunk+one*two/(one+two), 1e-14)
 	flow := beat(32)

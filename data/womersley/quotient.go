@@ -47,19 +47,32 @@ func beyond(q complex128) bool {
 
 // fraction is X of the package documentation, from its tail.
 func fraction(q complex128) complex128 {
-	u := q / 4
-	x := complex(0, 0)
-	for n := tail(cmplx.Abs(q)); n >= 1; n-- {
-		x = u * complex(1/float64(n*(n+1)), 0) / (1 + x)
+	re, im := real(q)/4, imag(q)/4
+	x, y := 0.0, 0.0
+	for n := tail(cmplx.Abs(q)); n >= 1; n-- { // x + iy = u/(n (n + 1))/(1 + x + iy)
+		x++
+		scale := steps[n] / (x*x + y*y)
+		x, y = scale*(re*x+im*y), scale*(im*x-re*y)
 	}
-	return x
+	return complex(x, y)
 }
+
+// steps are 1/(n (n + 1)).
+var steps = func() (s [longest + 4]float64) {
+	for n := 1; n < len(s); n++ {
+		s[n] = 1 / float64(n*(n+1))
+	}
+	return s
+}()
+
+// longest is the number of terms from which on tail takes no more.
+const longest = 60
 
 // tail is the number of terms of the fraction that suffice for |q|: its n-th
 // term must be small beside 1, and each further one gains a factor.
 func tail(q float64) int {
 	n := 10
-	for limit := q; limit > 1 && n < 60; limit /= 1.6 {
+	for limit := q; limit > 1 && n < longest; limit /= 1.6 {
 		n += 3
 	}
 	return n
