@@ -53,6 +53,14 @@ const (
 	CodeNativeMiss    Code = "native-state-missed"
 	CodeFewDraws      Code = "few-draws"
 	CodeBeyondPump    Code = "beyond-pump"
+	CodeHeld          Code = "held-samples"
+	CodeQuantised     Code = "quantised"
+	CodeFlat          Code = "flat-line"
+	CodeRecalibrated  Code = "cuff-recalibration"
+	CodeClipped       Code = "clipped"
+	CodeSpikes        Code = "spikes"
+	CodeDrift         Code = "drift"
+	CodeHum           Code = "hum"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -72,6 +80,14 @@ func WarningCodes() []WarningCode {
 		{CodeNoUnit, "the header names no unit that fits the quantity"},
 		{CodeUncalibrated, "the channel is in a unit that is none of its quantity, such as volts"},
 		{CodeUnlikely, "values lie outside what the quantity has in people"},
+		{CodeHeld, "values are repeated; the true rate of the channel is lower than the file's"},
+		{CodeQuantised, "values come in steps that are coarse beside the pulse"},
+		{CodeFlat, "the trace does not move for seconds"},
+		{CodeRecalibrated, "a finger cuff calibrates itself and measures no pressure meanwhile"},
+		{CodeClipped, "the trace reaches the end of its scale"},
+		{CodeSpikes, "single samples stand far out of their neighbours"},
+		{CodeDrift, "the level of the trace rises or falls all through the recording"},
+		{CodeHum, "the mains is in the trace"},
 		{CodeGuessedRole, "a channel was chosen from its name"},
 		{CodeStandIn, "pressure of a limb, or of an unnamed artery, stands in for the root's"},
 		{CodeRegional, "the fit is the load of one vascular bed, not of the body"},

@@ -49,6 +49,7 @@ type ChannelReport struct {
 	Calibrated  bool          `json:"calibrated"`
 	Site        data.Site     `json:"site"`
 	Missing     int           `json:"missing"`
+	Unusable    int           `json:"unusable"` // samples that a fault makes unusable
 	Role        *string       `json:"role"` // what it is used as; null where it is not
 	Pulse       PulseReport   `json:"pulse"`
 	Systolic    Number        `json:"systolic"`
@@ -114,7 +115,7 @@ func channelReports(b Beats) []ChannelReport {
 		p := b.Pulses[i]
 		r := ChannelReport{
 			Name: ch.Name, Quantity: ch.Quantity, Unit: ch.Unit.Name, Calibrated: ch.Unit.Calibrated,
-			Site: ch.Site, Missing: b.Intake.Recording.Channels[i].Missing(), Role: reason(b.Intake.Role(i)), Pulse: pulseReport(p),
+			Site: ch.Site, Missing: b.Intake.Recording.Channels[i].Missing(), Unusable: b.Intake.Unusable(i), Role: reason(b.Intake.Role(i)), Pulse: pulseReport(p),
 			Systolic: nan, Diastolic: nan, Amplitude: nan, GoslingPI: nan, PourcelotRI: nan,
 			Mean: Number(meanOfValid(ch.Values)),
 		}

@@ -11,6 +11,7 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/beat"
 	"afterbeat/data/casefile"
+	"afterbeat/data/fault"
 	"afterbeat/data/unit"
 )
 
@@ -26,7 +27,10 @@ type Intake struct {
 	Channels []data.Channel
 	// Filled counts, for each channel, the missing samples that were filled by a
 	// straight line, because their hole is no longer than 20 ms.
-	Filled    []int
+	Filled []int
+	// Faults are those of each channel, their runs on Grid; samples that are
+	// unusable are NaN in Channels, save those of spikes, which are filled.
+	Faults    [][]fault.Finding
 	Selection data.Selection
 	// Ambiguous is set, and nothing selected, where only a person can choose
 	// between columns. The beats of every channel can be looked at all the same.
@@ -67,13 +71,15 @@ func TakeIn(in Inputs) (Intake, error) {
 	}
 	out.Grid = grid
 	for i, cal := range calibrations {
-		whole, filled := beat.Bridge(values[i], grid.Rate)
-		channels[i].Values = calibrated(whole, cal.scale, cal.shift)
+		channels[i].Values = calibrated(values[i], cal.scale, cal.shift)
+		found := out.faults(channels[i])
+		whole, filled := beat.Bridge(withoutFaults(channels[i].Values, found), grid.Rate)
+		channels[i].Values = slices.Clone(whole)
 		out.mask(channels[i].Values)
-		out.Filled = append(out.Filled, filled)
+		out.Faults, out.Filled = append(out.Faults, found), append(out.Filled, filled)
 	}
 	out.Channels = channels
-	out.Warnings = slices.Concat(in.Recording.Warnings, guesses(out), siteWarnings(out))
+	out.Warnings = slices.Concat(in.Recording.Warnings, guesses(out), out.faultWarnings(), siteWarnings(out))
 	return out, nil
 }
 

@@ -113,6 +113,9 @@ func recordingSection(t Intake) casenote.Section {
 	for _, f := range excludedWords(t) {
 		rows = append(rows, casenote.Words("left out", f))
 	}
+	for _, f := range t.faultWords() {
+		rows = append(rows, casenote.Words("unusable", f))
+	}
 	for i, n := range t.Filled {
 		if n > 0 {
 			rows = append(rows, casenote.Words("filled", fmt.Sprintf("%d samples of %s, in holes of up to 20 ms, by straight lines", n, t.Channels[i].Name)))
