@@ -37,7 +37,7 @@
 //
 // # Quantisation
 //
-// The step q is the median distance of neighbouring levels. Rounding adds a noise
+// The step q is the distance of the levels, where 95 % of them lie on a lattice. Rounding adds a noise
 // of q/sqrt(12) (uniform error; Widrow 1956, from memory). Less than 100 steps in
 // the pulse are warned of.
 //

@@ -52,9 +52,15 @@ func sample(values []float64, n int) []float64 {
 	return out
 }
 
-// stepOf is the median distance of the neighbouring levels of sorted values
-// between their 10th and 90th percentile; 0 where fewer than four samples fall on a
-// level, so that levels cannot be told from chance.
+const (
+	nearLevel = 0.1  // of a step, that a level may be off: printing rounds too
+	onLattice = 0.95 // of the levels
+)
+
+// stepOf is the distance of the levels on which sorted values lie, between their 10th
+// and 90th percentile; 0 where they lie on no lattice, or where fewer than four fall
+// on a level, so that it cannot be told from chance. The levels of a trace that
+// repeats itself exactly are no lattice.
 func stepOf(sorted []float64) float64 {
 	if len(sorted) < 40 {
 		return 0
@@ -67,10 +73,21 @@ func stepOf(sorted []float64) float64 {
 			gaps = append(gaps, g)
 		}
 	}
-	if len(gaps) == 0 || 4*len(gaps) > len(middle) {
+	if len(gaps) < 2 || 4*len(gaps) > len(middle) {
 		return 0
 	}
-	return median(gaps)
+	slices.Sort(gaps)
+	step := median(gaps[:1+len(gaps)/10])
+	on := 0
+	for _, g := range gaps {
+		if n := math.Round(g / step); n >= 1 && math.Abs(g-n*step) <= nearLevel*step {
+			on++
+		}
+	}
+	if float64(on) < onLattice*float64(len(gaps)) {
+		return 0
+	}
+	return step
 }
 
 // quantile of sorted values, NaN of none.
