@@ -51,7 +51,7 @@ func (t Trace) recalibrated(s scale) []Finding {
 	if n := len(f.Runs); n > 1 {
 		f.Text += fmt.Sprintf("; every %.3g s", float64(f.Runs[n-1].From-f.Runs[0].From)/float64(n-1)/t.Rate)
 	}
-	f.Cure = "the samples are left out; after each the level may jump: compare with a cuff at the arm (--calibrate), or use the span between two of them"
+	f.Cure = "the samples are left out; after each the level may jump: compare with a cuff at the arm, or use the span between two of them"
 	return []Finding{f}
 }
 

@@ -50,7 +50,7 @@ type ChannelReport struct {
 	Site        data.Site     `json:"site"`
 	Missing     int           `json:"missing"`
 	Unusable    int           `json:"unusable"` // samples that a fault makes unusable
-	Role        *string       `json:"role"` // what it is used as; null where it is not
+	Role        *string       `json:"role"`     // what it is used as; null where it is not
 	Pulse       PulseReport   `json:"pulse"`
 	Systolic    Number        `json:"systolic"`
 	Diastolic   Number        `json:"diastolic"`
