@@ -154,6 +154,7 @@ func TestGolden(t *testing.T) {
 		{"list", "demo", []string{"N", "t"}},
 		{"indices", "demo", []string{"i"}},
 		{"whole", "demo", []string{"0"}},
+		{"opened", "demo", []string{"c", "enter", "j", "j"}},
 		{"hand", "hand", []string{"N"}},
 		{"flat", "flat", nil},
 		{"none", "none", nil},
@@ -500,7 +501,7 @@ func TestIntervalsAreThoseOfTheNote(t *testing.T) {
 			t.Errorf("time to peak is not %s:\n%s", want, v)
 		}
 	}
-	if !strings.Contains(v, "flow from velocity (diameter ") {
+	if !strings.Contains(v, " cm2 = flow") {
 		t.Errorf("the flow does not say where it comes from:\n%s", v)
 	}
 }

@@ -6,6 +6,7 @@ import (
 	"github.com/charmbracelet/bubbles/key"
 
 	"afterbeat/tui"
+	"afterbeat/tui/explain"
 	"afterbeat/tui/trace"
 	"afterbeat/tui/warnlist"
 )
@@ -14,7 +15,7 @@ import (
 // warnings are their own.
 type keyMap struct {
 	Next, Previous, NextUnused, PreviousUnused, First, Last key.Binding
-	Drop, Channel, Overlay, Over, All                       key.Binding
+	Drop, Channel, Overlay, Over, All, Number               key.Binding
 	Trace                                                   trace.Keys
 	List                                                    warnlist.Keys
 }
@@ -31,10 +32,11 @@ func newKeys() keyMap {
 		First:          bind("g/home", "first beat", "g", "home"),
 		Last:           bind("G/end", "last beat", "G", "end"),
 		Drop:           bind("d", "drop", "d"),
-		Channel:        bind("c/enter", "channel", "c", "enter"),
+		Channel:        bind("c", "channel", "c"),
 		Overlay:        bind("o", "overlay", "o"),
 		Over:           bind("b", "beat over average", "b"),
 		All:            bind("i", "all indices", "i"),
+		Number:         explain.NewKeys().Open,
 		Trace:          trace.NewKeys(),
 		List:           warnlist.NewKeys(),
 	}
@@ -68,9 +70,17 @@ func (m Model) bindings() keyMap {
 	overlay := averaged && (m.divide().both || m.aside) && !m.all
 	k.Channel.SetEnabled(len(m.ready.signals) > 1)
 	k.All.SetEnabled(len(m.signal().rows) > 0)
+	k.Number = m.openNumber()
 	k.Overlay.SetEnabled(averaged && !m.divide().both && !m.all)
 	k.Over.SetEnabled(overlay && !m.trace.Table())
 	return k
+}
+
+// openNumber opens the numbers of the signal shown, where there are some.
+func (m Model) openNumber() key.Binding {
+	b := m.keys.Number
+	b.SetEnabled(m.opened.Len() > 0)
+	return b
 }
 
 // Keys are the bindings that work now.
@@ -79,11 +89,13 @@ func (m Model) Keys() []key.Binding {
 	switch {
 	case m.list.Open():
 		return k.List.Bindings()
+	case m.opened.Open():
+		return m.opened.Bindings()
 	case len(m.ready.signals) == 0:
 		return []key.Binding{k.List.Open}
 	}
 	all := []key.Binding{
-		tui.Pair("n/p/hjkl/arrows", "beat", k.Next, k.Previous), k.Drop, k.Overlay, k.Over, k.Channel, k.All,
+		tui.Pair("n/p/hjkl/arrows", "beat", k.Next, k.Previous), k.Drop, k.Overlay, k.Over, k.Channel, k.Number, k.All,
 		tui.Pair("N/P", "beat not used", k.NextUnused, k.PreviousUnused),
 	}
 	all = append(all, k.Trace.In, k.Trace.Out, k.Trace.Whole, k.Trace.Table, k.List.Open, k.First, k.Last)

@@ -8,6 +8,7 @@ import (
 	"afterbeat/data/casefile"
 	"afterbeat/tree/study"
 	"afterbeat/tui"
+	"afterbeat/tui/explain"
 	"afterbeat/tui/trace"
 	"afterbeat/tui/warnlist"
 )
@@ -33,13 +34,14 @@ type Model struct {
 	trace   trace.Model
 	overlay overlay
 	list    warnlist.Model
+	opened  explain.Model // the numbers, each with what stands behind it
 }
 
 var _ tui.Screen = Model{}
 
 // New is the screen before beats were found.
 func New() Model {
-	return Model{keys: newKeys(), trace: trace.New(), list: warnlist.New("Warnings of the beats", cures())}
+	return Model{keys: newKeys(), trace: trace.New(), opened: explain.New(), list: warnlist.New("Warnings of the beats", cures())}
 }
 
 // cures says what can be done about a warning from here.
@@ -92,6 +94,7 @@ func (m Model) signal() signal { return m.ready.signals[m.shown] }
 
 // look turns trace and overlay to the signal shown.
 func (m Model) look() (Model, tea.Cmd) {
+	m.opened = m.opened.Hold(m.explained())
 	m, arranged := m.arrange()
 	if len(m.ready.signals) == 0 {
 		return m, arranged
@@ -99,6 +102,18 @@ func (m Model) look() (Model, tea.Cmd) {
 	var look tea.Cmd
 	m.trace, look = m.trace.Look(m.signal().source)
 	return m, tea.Batch(arranged, look)
+}
+
+// explained are the numbers of the signal shown.
+func (m Model) explained() []explain.Number {
+	if len(m.ready.signals) == 0 {
+		return nil
+	}
+	var out []explain.Number
+	for _, r := range m.signal().rows {
+		out = append(out, r.number)
+	}
+	return out
 }
 
 // columnsOfBeat is how wide a beat is shown to begin with, at least.
@@ -185,7 +200,7 @@ func (m Model) Resize(a tui.Area, t tui.Theme) (tui.Screen, tea.Cmd) {
 
 // arrange gives the parts their areas, and orders what is missing.
 func (m Model) arrange() (Model, tea.Cmd) {
-	m.list = m.list.Resize(m.area, m.theme)
+	m.list, m.opened = m.list.Resize(m.area, m.theme), m.opened.Resize(m.area, m.theme)
 	var cmd tea.Cmd
 	m.trace, cmd = m.trace.Resize(m.divide().trace, m.theme)
 	m, overlay := m.wantOverlay()

@@ -1,6 +1,7 @@
 package beats
 
 import (
+	"fmt"
 	"math"
 	"strings"
 
@@ -8,10 +9,14 @@ import (
 	"afterbeat/data/beat"
 	"afterbeat/data/casenote"
 	"afterbeat/tree/study"
+	"afterbeat/tui/explain"
 )
 
-// row is a number of a signal in words.
-type row struct{ label, value, unit, interval string }
+// row is a number of a signal in words, and what enter opens it into.
+type row struct {
+	label, value, unit, interval string
+	number                       explain.Number
+}
 
 // rows are the heart rate of channel i, and the measures of the average beat of
 // its signal. The intervals are of random error, from the scatter of the beats.
@@ -19,7 +24,9 @@ func rows(b study.Beats, i int, s signal) []row {
 	var out []row
 	for _, r := range b.Pulses[i].Section(b.Intake.Channels[i].Name, s.source.Unit).Rows {
 		if n := r.Number; n != nil && n.Unit == "1/min" {
-			out = append(out, row{r.Label, casenote.Format(n.Value, n.Total), n.Unit, casenote.FormatRange(n.Value, n.Total)})
+			one := row{r.Label, casenote.Format(n.Value, n.Total), n.Unit, casenote.FormatRange(n.Value, n.Total), s.explained(beat.HeartRateOf, n.Estimate, n.Unit)}
+			one.number.Method = "order statistics of the intervals between the onsets used"
+			out = append(out, one)
 		}
 	}
 	if s.average.Count == 0 {
@@ -27,7 +34,7 @@ func rows(b study.Beats, i int, s signal) []row {
 	}
 	for _, e := range b.Indices(s.ensemble) {
 		if e.Index != beat.Augmentation || s.role == "pressure" && s.site == data.SiteRoot {
-			out = append(out, measured(e, s.unit))
+			out = append(out, s.measured(e))
 		}
 	}
 	return out
@@ -35,15 +42,16 @@ func rows(b study.Beats, i int, s signal) []row {
 
 // measured writes an index; a remark on it stands behind its interval, or in its
 // place where it is undefined.
-func measured(e study.IndexEstimate, unit string) row {
-	r := row{e.Label, casenote.Format(e.Value, e.Total), "", casenote.FormatRange(e.Value, e.Total)}
+func (s signal) measured(e study.IndexEstimate) row {
+	r := row{label: e.Label, value: casenote.Format(e.Value, e.Total), interval: casenote.FormatRange(e.Value, e.Total)}
+	index := e.Index
 	switch e.Index {
 	case "":
-		r.unit = unit
+		r.unit, index = s.unit, beat.Index(e.Label)
 	case beat.TimeToPeak:
 		r.label, r.unit = string(e.Index), "s"
 	case beat.MaxSlope:
-		r.label, r.unit = string(e.Index), perSecond(unit)
+		r.label, r.unit = string(e.Index), perSecond(s.unit)
 	default:
 		r.label = string(e.Index)
 	}
@@ -53,7 +61,23 @@ func measured(e study.IndexEstimate, unit string) row {
 	case e.Why != "":
 		r.interval += "; " + e.Why
 	}
+	r.number = s.explained(index, e.Estimate, r.unit)
 	return r
+}
+
+// explained is a measure with what stands behind it.
+func (s signal) explained(i beat.Index, e data.Estimate, unit string) explain.Number {
+	n := explain.Number{
+		Name: string(i), Of: fmt.Sprintf("the average %s, site %s", s.role, s.site),
+		Value:      casenote.Number{Estimate: e, Unit: unit, Origin: data.Measured},
+		Method:     "from the scatter of the beats, a block left out in turn (jackknife); calibration is not in it",
+		RandomOnly: true,
+		Account:    beat.Account(i, s.quantity, s.site),
+	}
+	if s.gain != 1 {
+		n.Notes = append(n.Notes, "a flow made of a velocity: "+s.made())
+	}
+	return n
 }
 
 // perSecond is the unit of a slope.

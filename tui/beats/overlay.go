@@ -34,7 +34,7 @@ func overlaid(o order, s signal) tea.Cmd {
 
 func makeOverlay(o order, s signal) overlay {
 	p := chart.Plot{
-		Title:      "average " + s.role,
+		Title:      s.averageTitle(),
 		X:          chart.Axis{Low: 0, High: float64(len(s.average.Period.Samples)-1) / s.average.Period.Rate, Name: "time", Unit: "s"},
 		Y:          chart.Covering(s.unit, append([][]float64{s.average.Period.Samples}, s.cloud...)...),
 		LabelWidth: 5,
@@ -48,6 +48,14 @@ func makeOverlay(o order, s signal) overlay {
 	average.Values = chart.Columns(average.Values, 0, len(average.Values), columns, 0)
 	p.Series = append(cloud(s.cloud, p.Y, columns, lines), average)
 	return overlay{order: o, plot: p, columns: columns}
+}
+
+// averageTitle names what is averaged; of a velocity, that it is a flow.
+func (s signal) averageTitle() string {
+	if s.diameter != "" {
+		return "average " + s.role + ", from velocity"
+	}
+	return "average " + s.role
 }
 
 // cloud is the beats as dots, each cell of the plot that any of them comes

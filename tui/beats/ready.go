@@ -45,8 +45,9 @@ type signal struct {
 	ensemble         int         // its index there; -1 where it has no average
 	cloud            [][]float64 // the beats averaged
 	average          beat.Average
-	gain             float64 // the average's unit for each of the channel's
-	diameter         string  // cm, of a velocity made into a flow
+	gain             float64       // the average's unit for each of the channel's
+	diameter         string        // cm, of a velocity made into a flow
+	quantity         unit.Quantity // of the average beat
 	rows             []row
 }
 
@@ -123,8 +124,9 @@ func averaged(b study.Beats, i, ensemble int, average beat.Average) signal {
 	}
 	s := channel(b, i, b.Beats, shift)
 	s.role = role
+	s.quantity = b.Intake.Channels[i].Quantity
 	if i == b.FlowInfo.Channel && b.FlowInfo.Conversion != nil {
-		s.unit, s.gain = unit.Internal(unit.Flow).Name, b.FlowInfo.Conversion.Gain
+		s.unit, s.gain, s.quantity = unit.Internal(unit.Flow).Name, b.FlowInfo.Conversion.Gain, unit.Flow
 		s.diameter = strconv.FormatFloat(*b.Intake.Case.DiameterCM, 'g', -1, 64)
 	}
 	if average.Count > 0 {

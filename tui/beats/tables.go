@@ -82,7 +82,11 @@ func total(counts []count) int {
 func (m Model) numbers(width, height int) []string {
 	rows := m.signal().rows
 	const block = 64
-	head := m.numberLine(row{"of the beats used", "value", "unit", "95 %, random"}, width)
+	of := "of the beats used"
+	if m.signal().diameter != "" {
+		of = "as flow, beats used"
+	}
+	head := m.numberLine(row{label: of, value: "value", unit: "unit", interval: "95 %, random"}, width)
 	lines := []string{head}
 	for _, r := range rows[:min(len(rows), height-1)] {
 		lines = append(lines, m.numberLine(r, width))

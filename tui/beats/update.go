@@ -27,6 +27,8 @@ func (m Model) Update(msg tea.Msg) (tui.Screen, tea.Cmd) {
 		case msg.Paste:
 		case m.list.Open() || key.Matches(msg, m.keys.List.Open):
 			m.list = m.list.Update(msg)
+		case m.opened.Open() || m.openNumber().Enabled() && key.Matches(msg, m.keys.Number):
+			m.opened = m.opened.Update(msg)
 		case len(m.ready.signals) > 0:
 			m, cmd = m.press(msg)
 		}

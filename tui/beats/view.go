@@ -92,6 +92,8 @@ func (m Model) View() string {
 	switch {
 	case m.list.Open():
 		return m.list.View()
+	case m.opened.Open():
+		return m.opened.View()
 	case m.ready.number == 0:
 		return layout.Fit([]string{"The beats have not been looked for yet."}, m.area)
 	}
@@ -187,10 +189,24 @@ func (m Model) summary() string {
 func (m Model) called(s signal, width int) string {
 	role, site := s.role+": ", fmt.Sprintf(", site %s", s.site)
 	if s.diameter != "" {
-		role = fmt.Sprintf("flow from velocity (diameter %s cm): ", s.diameter)
+		role = "velocity: "
+		site += fmt.Sprintf("; x %s cm2 = flow", casenote.Format(s.gain, data.NoInterval()))
 		width -= len(role) + len(site)
 	}
 	return role + m.clean(s.name).Cut(max(min(width, 40), 8)).String() + site
+}
+
+// beatIs says of a velocity that the beat is shown as one, unlike the indices.
+func (s signal) beatIs() string {
+	if s.diameter != "" {
+		return "velocity "
+	}
+	return ""
+}
+
+// made is how the flow came of the velocity.
+func (s signal) made() string {
+	return fmt.Sprintf("%s cm2 x velocity (diameter %s cm)", casenote.Format(s.gain, data.NoInterval()), s.diameter)
 }
 
 // beatLine says what is under the cursor.
@@ -202,7 +218,7 @@ func (m Model) beatLine() string {
 	b := beats[m.at]
 	from := m.ready.grid.At(b.From)
 	words := fmt.Sprintf("beat %d of %d: %s; onset %s s", m.at+1, len(beats), m.fateOf(m.at), strconv.FormatFloat(from, 'f', 3, 64))
-	rest := fmt.Sprintf(", %s to %s %s", casenote.Format(b.Min, data.NoInterval()), casenote.Format(b.Max, data.NoInterval()), m.signal().source.Unit)
+	rest := fmt.Sprintf(", %s%s to %s %s", m.signal().beatIs(), casenote.Format(b.Min, data.NoInterval()), casenote.Format(b.Max, data.NoInterval()), m.signal().source.Unit)
 	length := fmt.Sprintf(", %s s long", strconv.FormatFloat(m.ready.grid.At(b.To)-from, 'f', 3, 64))
 	switch {
 	case len(words)+len(length)+len(rest) <= m.area.Width:

@@ -1,8 +1,6 @@
 package screentest
 
 import (
-	"testing"
-
 	tea "github.com/charmbracelet/bubbletea"
 
 	"afterbeat/tree/study"
@@ -89,9 +87,15 @@ func Key(name string) tea.KeyMsg {
 
 // Fits fails the test where a view leaves its area, or holds a byte that its
 // theme cannot show.
-func Fits(t testing.TB, view string, a tui.Area, theme tui.Theme) {
+func Fits(t failer, view string, a tui.Area, theme tui.Theme) {
 	t.Helper()
 	if complaint := leaves(view, a, theme); complaint != "" {
 		t.Fatal(complaint)
 	}
+}
+
+// failer is a test, of this library or of another.
+type failer interface {
+	Helper()
+	Fatal(args ...any)
 }

@@ -116,6 +116,7 @@ func TestForecastGolden(t *testing.T) {
 	screentest.Golden(t, "forecast-depends", views(s, "d"))
 	screentest.Golden(t, "forecast-ventricle", views(s, "p"))
 	screentest.Golden(t, "forecast-held", views(s, "h"), small)
+	screentest.Golden(t, "forecast-opened", views(s, "enter"))
 	screentest.Golden(t, "forecast-yardstick", views(s, "left"), small)
 	screentest.Golden(t, "forecast-refused", views(refused(computed(t), "no ventricle ejects as asked: stroke volume 12 mL in 0.05 s from 205 mL, which leaves nothing that could be coupled")), small)
 }

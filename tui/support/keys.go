@@ -87,13 +87,23 @@ func (k *keyMap) views() map[view]*key.Binding {
 	}
 }
 
+// openNumber opens the numbers of the state shown, where there are some.
+func (m Model) openNumber() key.Binding {
+	b := m.numbers.Keys.Open
+	b.SetEnabled(m.there())
+	return b
+}
+
 // Keys are the bindings that work now, the most useful first.
 func (m Model) Keys() []key.Binding {
 	if m.warnings.Open() {
 		return m.warnings.Keys.Bindings()
 	}
+	if m.numbers.Open() {
+		return m.numbers.Bindings()
+	}
 	k := m.bindings()
-	all := []key.Binding{k.more, k.next, k.sweep, k.energy, k.depends, k.flow, k.indices, k.held, k.ventricle, k.table, k.less, m.warnings.Keys.Open, k.previous}
+	all := []key.Binding{k.more, k.next, k.sweep, k.energy, k.depends, k.flow, m.openNumber(), k.indices, k.held, k.ventricle, k.table, k.less, m.warnings.Keys.Open, k.previous}
 	if v := m.viewing(); v.paged() && m.there() {
 		all = append([]key.Binding{*k.views()[v]}, m.pageKeys.Bindings()...)
 	}

@@ -11,6 +11,7 @@ import (
 	"afterbeat/tree/support"
 	"afterbeat/tui"
 	_ "afterbeat/tui/background"
+	"afterbeat/tui/explain"
 	"afterbeat/tui/layout"
 	"afterbeat/tui/page"
 	"afterbeat/tui/warnlist"
@@ -64,6 +65,7 @@ type Model struct {
 	page       page.Scroll
 	pageKeys   page.Keys
 	warnings   warnlist.Model
+	numbers    explain.Model
 }
 
 var _ tui.Screen = Model{}
@@ -72,7 +74,7 @@ var _ tui.Screen = Model{}
 func New() Model {
 	return Model{
 		posing: coupledPosing, share: firstShare, pageKeys: page.NewKeys(),
-		warnings: warnlist.New("Warnings of the study", nil),
+		warnings: warnlist.New("Warnings of the study", nil), numbers: explain.New(),
 	}
 }
 
@@ -88,7 +90,9 @@ func (m Model) Show(s study.Study) (tui.Screen, tea.Cmd) {
 	m.warnings = m.warnings.Hold(s.Warnings())
 	m.curves = curves{}
 	m.request++ // what is under way belongs to another study
-	return m.placed().worded().drawn().prepare()
+	m = m.placed()
+	m.numbers = m.numbers.Hold(m.explained())
+	return m.worded().drawn().prepare()
 }
 
 // worded wraps the words of each answer on its power.
@@ -113,7 +117,7 @@ func (m Model) Resize(a tui.Area, t tui.Theme) (tui.Screen, tea.Cmd) {
 		m.curves = curves{} // pages are of the theme that was
 	}
 	m.area, m.theme = a, t
-	m.warnings = m.warnings.Resize(a, t)
+	m.warnings, m.numbers = m.warnings.Resize(a, t), m.numbers.Resize(a, t)
 	m.page = m.page.Resize(a.Height - 1)
 	return m.worded().drawn().prepare()
 }
@@ -205,6 +209,10 @@ func (m Model) Update(msg tea.Msg) (tui.Screen, tea.Cmd) {
 func (m Model) press(msg tea.KeyMsg) Model {
 	if m.warnings.Open() || key.Matches(msg, m.warnings.Keys.Open) {
 		m.warnings = m.warnings.Update(msg)
+		return m
+	}
+	if m.numbers.Open() || key.Matches(msg, m.numbers.Keys.Open) {
+		m.numbers = m.numbers.Hold(m.explained()).Update(msg)
 		return m
 	}
 	switch k := m.bindings(); {

@@ -15,6 +15,8 @@ func (m Model) View() string {
 	switch {
 	case m.warnings.Open():
 		return m.warnings.View()
+	case m.numbers.Open():
+		return m.numbers.View()
 	case !m.there():
 		return layout.Fit(m.absent(), m.area)
 	case m.viewing().paged():
