@@ -116,8 +116,20 @@ func (m Model) body() []string {
 // of the root are always there.
 func (m Model) keyRow(width int) string {
 	always, more := m.keysNow()
-	end := listed(always, width, "")
+	end := listed(shortened(always), width, "")
 	return listed(more, width, end)
+}
+
+// shortened are bindings that stand on the last row of every stage, in fewer
+// words than the help has.
+func shortened(always []key.Binding) []key.Binding {
+	out := slices.Clone(always)
+	for i := range out {
+		if h := out[i].Help(); h == keys.save.Help() {
+			out[i].SetHelp(h.Key, "save")
+		}
+	}
+	return out
 }
 
 // keysNow are the keys that work now, in two parts of which the first is always
@@ -133,7 +145,7 @@ func (m Model) keysNow() (always, more []key.Binding) {
 	case m.typing():
 		return nil, m.screens[m.open].Keys()
 	case m.offer != nil:
-		return []key.Binding{keys.resume, keys.forget, keys.quit, keys.interrupt}, nil
+		return m.offer.keys(), nil
 	case m.small():
 		return []key.Binding{keys.quit}, nil
 	}
@@ -164,12 +176,12 @@ func listed(bindings []key.Binding, width int, end string) string {
 		if !k.Enabled() || h.Key == "" {
 			continue
 		}
-		words := h.Key + " " + h.Desc
+		words := brief(h.Key) + " " + h.Desc
 		if b.Len() > 0 {
 			words = "  " + words
 		}
 		if ansi.StringWidth(b.String()+words) > room {
-			break
+			continue // a shorter one may still fit
 		}
 		b.WriteString(words)
 	}
@@ -177,6 +189,20 @@ func listed(bindings []key.Binding, width int, end string) string {
 		b.WriteString("  ")
 	}
 	return b.String() + end
+}
+
+// brief is the shortest way to name a key of which the help names all ways:
+// "h/l/left/right" is "h/l", "space/pgdown" is "space", "left/right" stays.
+func brief(shown string) string {
+	parts := strings.Split(shown, "/")
+	if shown == "/" || len(parts) == 2 && slices.Contains([]string{"up", "left"}, parts[0]) {
+		return shown
+	}
+	letters := slices.DeleteFunc(slices.Clone(parts), func(p string) bool { return len(p) != 1 })
+	if len(letters) == 0 {
+		return parts[0]
+	}
+	return strings.Join(letters[:min(len(letters), 2)], "/")
 }
 
 // faultRows stand where a frame could not be made.

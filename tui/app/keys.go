@@ -46,7 +46,7 @@ var keys = keyMap{
 	discard:   key.NewBinding(key.WithKeys("y"), key.WithHelp("y", "discard and quit")),
 	stay:      key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "stay")),
 	resume:    key.NewBinding(key.WithKeys("r"), key.WithHelp("r", "resume")),
-	forget:    key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "discard")),
+	forget:    key.NewBinding(key.WithKeys("esc"), key.WithHelp("esc", "discard (asks again)")),
 	up:        key.NewBinding(key.WithKeys("up", "k"), key.WithHelp("up/k", "up")),
 	down:      key.NewBinding(key.WithKeys("down", "j"), key.WithHelp("down/j", "down")),
 	pageUp:    key.NewBinding(key.WithKeys("pgup"), key.WithHelp("pgup", "page up")),

@@ -1,6 +1,7 @@
 package app
 
 import (
+	"fmt"
 	"time"
 
 	"github.com/charmbracelet/bubbles/key"
@@ -44,6 +45,25 @@ type (
 type offer struct {
 	found casefile.Case
 	when  time.Time
+	sure  bool // esc was pressed once; once more discards them
+}
+
+// question is what the status line asks.
+func (o offer) question() string {
+	when := o.when.Format("2 Jan 15:04")
+	if o.sure {
+		return fmt.Sprintf("Discard the choices of %s for good? esc again discards, r resumes", when)
+	}
+	return fmt.Sprintf("Choices of an interrupted run of %s: r resume, esc discard", when)
+}
+
+// keys are those that answer it.
+func (o offer) keys() []key.Binding {
+	forget := keys.forget
+	if o.sure {
+		forget.SetHelp("esc", "discard for good")
+	}
+	return []key.Binding{keys.resume, forget, keys.quit, keys.interrupt}
 }
 
 // quit ends the program, unless choices would be lost or a note is being saved.
@@ -163,19 +183,21 @@ func (m Model) offered(msg offerMsg) Model {
 	case same(msg.found, m.present):
 		m.answered = true
 	default:
-		m.offer = &offer{msg.found, msg.when}
+		m.offer = &offer{found: msg.found, when: msg.when}
 	}
 	return m
 }
 
-// offerKey answers the question whether to resume. Whoever leaves instead is
-// asked again at the next start.
+// offerKey answers the question whether to resume; discarding is asked a second
+// time. Whoever leaves instead is asked again at the next start.
 func (m Model) offerKey(msg tea.KeyMsg) (Model, tea.Cmd) {
 	switch {
 	case key.Matches(msg, keys.resume):
 		found := m.offer.found
 		m.offer, m.answered = nil, true
 		return m.change(data.Clean("the choices of the interrupted run"), found)
+	case key.Matches(msg, keys.forget) && !m.offer.sure:
+		return m.sure(true), nil
 	case key.Matches(msg, keys.forget):
 		m.offer, m.answered = nil, true
 		m.said = data.Clean("the choices of the interrupted run are discarded")
@@ -183,5 +205,14 @@ func (m Model) offerKey(msg tea.KeyMsg) (Model, tea.Cmd) {
 	case key.Matches(msg, keys.quit):
 		return m.quit()
 	}
-	return m, nil
+	return m.sure(false), nil
+}
+
+// sure takes down whether the next esc discards the choices on offer; any other
+// key than esc calls that off.
+func (m Model) sure(yes bool) Model {
+	o := *m.offer
+	o.sure = yes
+	m.offer = &o
+	return m
 }

@@ -177,7 +177,7 @@ func TestAnOfferThatIsNotAnsweredStays(t *testing.T) {
 		d.tick()
 		left := d.m.options.State.Path()
 		d = keeping(t, folder)
-		d.wantView("r resume  esc discard  q quit  ctrl+c leave at once")
+		d.wantView("r resume  esc discard (asks again)  q quit")
 		d.send(leave)
 		d.run()
 		if got := d.outcome().String(); !strings.Contains(got, "stay on offer") {
@@ -245,6 +245,15 @@ func TestAnOfferThatIsDiscarded(t *testing.T) {
 	d.keys("1 i")
 	d.tick()
 	d = keeping(t, folder)
+	d.keys("esc")
+	d.wantStatus("for good? esc again discards, r resumes")
+	d.wantView("esc discard for good")
+	d.keys("l") // calls it off
+	d.wantStatus("Choices of an interrupted run of ")
+	d.keys("esc")
+	if _, _, ok := d.m.options.State.Kept(); !ok || d.m.offer == nil {
+		t.Fatal("one esc discards")
+	}
 	d.keys("esc")
 	d.wantStatus("the choices of the interrupted run are discarded")
 	if _, _, ok := d.m.options.State.Kept(); ok || len(d.m.present.Invert) != 0 || d.m.offer != nil {

@@ -25,7 +25,7 @@ func (m Model) status(width int) string {
 	case m.leaving == asks:
 		return "Unsaved choices: s save a note first, y discard them, esc stay"
 	case m.offer != nil && !m.typing():
-		return fmt.Sprintf("Choices of an interrupted run of %s: r resume, esc discard", m.offer.when.Format("2 Jan 15:04"))
+		return m.offer.question()
 	}
 	said := layout.Clean(m.said.String(), m.theme)
 	if m.job.shown == "" && said.Width() > width {

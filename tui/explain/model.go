@@ -27,7 +27,7 @@ func NewKeys() Keys {
 	}
 	p := page.NewKeys()
 	return Keys{
-		Open:     bind("enter", "open number", "enter"),
+		Open:     bind("enter", "explain", "enter"),
 		Close:    bind("enter/esc", "close", "enter", "esc"),
 		Next:     bind("j/down", "number below", "j", "down"),
 		Previous: bind("k/up", "number above", "k", "up"),

@@ -30,7 +30,7 @@ func newKeys() keyMap {
 		SiteBack:  bind("O", "site before", "O"),
 		Unit:      bind("e", "unit", "e"),
 		Calibrate: bind("c", "calibrate", "c"),
-		Beside:    bind("m", "measured beside", "m"),
+		Beside:    bind("m", "measured", "m"),
 		Invert:    bind("i", "invert", "i"),
 		Start:     bind("[", "start span", "["),
 		End:       bind("]", "end span", "]"),
@@ -54,7 +54,7 @@ func (m Model) Keys() []key.Binding {
 		return []key.Binding{k.List.Open}
 	}
 	own := []key.Binding{
-		tui.Pair("j/k/up/down", "channel", k.Down, k.Up), k.Use, k.Beside, k.Site, k.Unit,
+		tui.Pair("j/k/up/down", "channel", k.Down, k.Up), k.Use, k.Site, k.Unit, k.Beside,
 		k.Start, k.End, k.Clear, k.Invert, k.Calibrate,
 	}
 	own = append(own, k.Trace.Bindings()...)

@@ -11,7 +11,7 @@ import (
 // published of people on support.
 func TestEveryNumberOpens(t *testing.T) {
 	b := open(forecast(t), "enter")
-	says(t, b.View(), "> retained pulse", "(max P - min P) supported / (max P - min P) native", "draws", "doubt from", "-25.3 +- 9.8 mmHg", "(seen)")
+	says(t, b.View(), "> retained pulse", "(max P - min P) supported / (max P - min P) native", "draws", "doubt from", "-25.3 +- 9.8 mmHg")
 	b.Press("down")
 	says(t, b.View(), "> pulse pressure")
 	b.Press(" ")

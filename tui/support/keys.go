@@ -1,6 +1,10 @@
 package support
 
-import "github.com/charmbracelet/bubbles/key"
+import (
+	"github.com/charmbracelet/bubbles/key"
+
+	"afterbeat/tui"
+)
 
 // keyMap are the keys of the screen.
 type keyMap struct {
@@ -103,7 +107,14 @@ func (m Model) Keys() []key.Binding {
 		return m.numbers.Bindings()
 	}
 	k := m.bindings()
-	all := []key.Binding{k.more, k.next, k.sweep, k.energy, k.depends, k.flow, m.openNumber(), k.indices, k.held, k.ventricle, k.table, k.less, m.warnings.Keys.Open, k.previous}
+	moves := "share"
+	if m.coupled() {
+		moves = "speed"
+	}
+	all := []key.Binding{
+		tui.Pair("j/k/-/+/down/up", moves, k.less, k.more), m.openNumber(), k.sweep, k.energy, k.depends, tui.Pair("left/right", "posing", k.previous, k.next),
+		k.flow, k.indices, k.held, k.ventricle, k.table, m.warnings.Keys.Open,
+	}
 	if v := m.viewing(); v.paged() && m.there() {
 		all = append([]key.Binding{*k.views()[v]}, m.pageKeys.Bindings()...)
 	}
