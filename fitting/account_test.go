@@ -47,8 +47,14 @@ func TestPublishedIsOfTheSameLoad(t *testing.T) {
 func TestPublishedNumbersAreConverted(t *testing.T) {
 	const dyn = 1333.22387415 // dyn/cm² of 1 mmHg
 	for _, c := range []struct{ printed, computed float64 }{
-		{0.853, 1137 / dyn}, {0.0353, 47 / dyn}, {2.12, 1.59e-3 * dyn}, {0.67, 0.50e-3 * dyn},
-		{0.040, 53 / dyn}, {0.152, 202 / dyn}, {1.84, 1.38e-3 * dyn}, {1.53, 1.15e-3 * dyn},
+		{0.853, 1137 / dyn},
+		{0.0353, 47 / dyn},
+		{2.12, 1.59e-3 * dyn},
+		{0.67, 0.50e-3 * dyn},
+		{0.040, 53 / dyn},
+		{0.152, 202 / dyn},
+		{1.84, 1.38e-3 * dyn},
+		{1.53, 1.15e-3 * dyn},
 	} {
 		if math.Abs(c.printed/c.computed-1) > 0.01 {
 			t.Errorf("%g is printed for %g", c.printed, c.computed)
