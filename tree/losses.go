@@ -60,29 +60,49 @@ func (s *State) Ledger() energy.Ledger {
 	r1, r2 := energy.Term{Name: "terminal R1"}, energy.Term{Name: "terminal R2"}
 	outflow := energy.Term{Name: "outflow"}
 	for at, m := range s.means {
-		if t := c.at(at); t != nil && !t.closed() {
-			outflow.Steady += c.outflow * m.qout
-			r1.Steady += t.R1 * m.qout * m.qout
-			r2.Steady += t.R2 * m.qout * m.qout
+		t := c.at(at)
+		if t == nil {
+			continue
 		}
+		if !t.closed() {
+			outflow.Steady += c.outflow * m.qout
+		}
+		in1, in2 := s.terminalLoss(at)
+		r1.Steady, r1.Pulsatile = r1.Steady+in1.Steady, r1.Pulsatile+in1.Pulsatile
+		r2.Steady, r2.Pulsatile = r2.Steady+in2.Steady, r2.Pulsatile+in2.Pulsatile
 	}
 	input := s.means[0].pin * s.means[0].qin
 	for k := 1; k <= s.solver.harmonics; k++ {
-		w, spectra := s.omega(k), s.at(k)
-		input += 2 * flux(spectra[0].pin, spectra[0].qin)
-		for at, e := range spectra {
-			t := c.at(at)
-			if t == nil || math.IsInf(t.R1, 1) {
-				continue
-			}
-			r1.Pulsatile += 2 * t.R1 * square(e.qout)
-			if !math.IsInf(t.R2, 1) {
-				turn := w * t.R2 * t.C // of flow through R2, |1 + i w R2 C|²
-				r2.Pulsatile += 2 * t.R2 * square(e.qout) / (1 + turn*turn)
-			}
-		}
+		root := s.at(k)[0]
+		input += 2 * flux(root.pin, root.qin)
 	}
 	return energy.Ledger{Input: input, Terms: []energy.Term{segments, r1, r2, outflow}}
+}
+
+// TerminalLoss is the power lost in R1 and in R2 of the terminal of a segment,
+// mean over the period, mmHg mL/s; nothing where it has none, or it is closed.
+func (s *State) TerminalLoss(segment int) (r1, r2 Loss) {
+	return s.terminalLoss(int(s.solver.tree.place[segment]))
+}
+
+func (s *State) terminalLoss(at int) (r1, r2 Loss) {
+	t := s.solver.tree.at(at)
+	if t == nil || math.IsInf(t.R1, 1) {
+		return Loss{}, Loss{}
+	}
+	if !t.closed() {
+		mean := s.means[at].qout
+		r1.Steady, r2.Steady = t.R1*mean*mean, t.R2*mean*mean
+	}
+	for k := 1; k <= s.solver.harmonics; k++ {
+		q := square(s.at(k)[at].qout)
+		r1.Pulsatile += 2 * t.R1 * q
+		if !math.IsInf(t.R2, 1) {
+			turn := s.omega(k) * t.R2 * t.C // of flow through R2, |1 + i w R2 C|²
+			r2.Pulsatile += 2 * t.R2 * q / (1 + turn*turn)
+		}
+	}
+	return r1, r2
 }
 
 // at is the terminal of the segment at a position, nil where it has daughters.
