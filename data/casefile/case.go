@@ -30,7 +30,7 @@ type Case struct {
 	Profile    string   `key:"profile" value:"FACTOR" amount:"true" help:"mean velocity over measured velocity"`
 
 	OutflowPressure *float64          `key:"outflow_pressure" value:"MMHG" help:"pressure that the outflow goes to"`
-	Delay           string            `key:"delay" value:"S" amount:"true" help:"delay of the pressure behind the flow; positive where pressure is late"`
+	Delay           string            `key:"delay" value:"auto|S" amount:"true" help:"delay of the pressure behind the flow, or auto to estimate it; positive where pressure is late"`
 	Error           map[string]string `key:"error" value:"WHAT=HALFWIDTH[%]" amount:"true" help:"95 % half-width of a systematic error"`
 
 	Drop []float64 `key:"drop" value:"S" help:"a time inside a beat to leave out, on the file's own clock"`

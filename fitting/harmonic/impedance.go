@@ -14,7 +14,7 @@ const (
 	// leastPart is the flow of a harmonic over that of the largest one from which
 	// it is shown where a single beat tells no scatter (an assumption).
 	leastPart = 0.01
-	// rounding is the part of the largest harmonic that rounding may leave.
+	// rounding is the part of the largest flow that rounding may leave in a harmonic.
 	rounding = 1e-12
 )
 
@@ -59,10 +59,22 @@ func Impedance(pressure, flow [][]float64, rate float64) []Harmonic {
 		all[k].K, all[k].Frequency = k+1, float64(k+1)*rate/float64(n)
 		largest = max(largest, cmplx.Abs(all[k].Flow))
 	}
+	floor := rounding * greatest(flow)
 	for k := range all {
-		all[k].show(p[k], q[k], largest)
+		all[k].show(p[k], q[k], largest, floor)
 	}
 	return all
+}
+
+// greatest is the largest size of a sample.
+func greatest(beats [][]float64) float64 {
+	top := 0.0
+	for _, beat := range beats {
+		for _, v := range beat {
+			top = max(top, math.Abs(v))
+		}
+	}
+	return top
 }
 
 // Shown are the harmonics that are shown.
@@ -129,10 +141,10 @@ func newHarmonic(p, q []complex128) Harmonic {
 }
 
 // show decides whether the harmonic is shown, and fills in its impedance.
-func (h *Harmonic) show(p, q []complex128, largest float64) {
+func (h *Harmonic) show(p, q []complex128, largest, floor float64) {
 	a := cmplx.Abs(h.Flow)
 	switch {
-	case !(a > rounding*largest):
+	case !(a > floor):
 		h.Reason = "it carries no flow"
 	case len(q) < 2 && a < leastPart*largest:
 		h.Reason = fmt.Sprintf("its flow is below %g %% of the largest harmonic's, and a single beat tells no scatter", 100*leastPart)

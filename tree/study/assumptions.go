@@ -16,7 +16,7 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 	parts := b.FlowInfo.Conversion != nil && b.Intake.Case.Error["flow"] == ""
 	delay := data.Estimate{Value: b.Delay.Value, Total: around(b.Delay.Value, b.Delay.Error), Random: data.NoInterval(), Identified: true}
 	if hasFlow {
-		s.Rows = append(s.Rows, casenote.Quantity("delay of pressure", delay, "s", origin(b.Delay.Stated)))
+		s.Rows = append(s.Rows, casenote.Quantity("delay of pressure", delay, "s", b.Delay.origin()))
 	}
 	pv := outflow(b)
 	widths, _ := halfWidths(b.Intake.Case) // checked when the beats were cut
@@ -24,6 +24,9 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 	s.Rows = append(s.Rows, casenote.Quantity("outflow pressure", against, "mmHg", origin(b.Intake.Case.OutflowPressure != nil)))
 	for _, k := range errorKinds() {
 		w := widths[k.name]
+		if k.name == "delay" {
+			w = b.Delay.Error
+		}
 		switch k.name {
 		case "flow":
 			w = b.FlowInfo.Error

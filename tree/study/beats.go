@@ -44,18 +44,11 @@ type FlowInfo struct {
 	ConversionErrors doppler.Errors
 }
 
-// Delay is by how much pressure is later than flow, s.
-type Delay struct {
-	Value  float64
-	Stated bool
-	Error  float64 // 95 % half-width, s
-}
-
 // FindBeats finds the pulse of every channel, and cuts the chosen ones into
 // beats by the onsets of the leading one: the pressure, or else the flow.
 func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 	b := Beats{Intake: t, Lead: -1}
-	seconds, stated, err := delay(t.Case)
+	seconds, stated, auto, err := delayOf(t.Case)
 	if err != nil {
 		return b, err
 	}
@@ -63,7 +56,7 @@ func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 	if err != nil {
 		return b, err
 	}
-	b.Delay = Delay{Value: seconds, Stated: stated, Error: widths["delay"]}
+	b.Delay = Delay{Value: seconds, Stated: stated, Auto: auto, Error: widths["delay"]}
 	pressure, flow, err := b.signals(widths)
 	if err != nil {
 		return b, err
@@ -74,8 +67,13 @@ func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 		}
 		b.Pulses = append(b.Pulses, pulse(ch, t.Grid.Rate, t.Case.OneBeat))
 	}
+	said := b.Warnings
+	b.Warnings = nil
 	b.cut(pressure, flow)
-	b.Warnings = append(b.Warnings, implausible(b)...)
+	if err := b.align(ctx, pressure, flow); err != nil {
+		return b, err
+	}
+	b.Warnings = slices.Concat(said, b.Warnings, implausible(b))
 	return b, nil
 }
 

@@ -143,20 +143,20 @@ func joinSites() string {
 	return strings.Join(names, ", ")
 }
 
-// delay reads the delay of pressure behind flow, s; stated is false where the
-// case has none.
-func delay(c casefile.Case) (seconds float64, stated bool, err error) {
+// delayOf reads the delay of pressure behind flow, s; stated is false where the
+// case has none, auto true where it is to be estimated.
+func delayOf(c casefile.Case) (seconds float64, stated, auto bool, err error) {
 	switch c.Delay {
 	case "":
-		return 0, false, nil
+		return 0, false, false, nil
 	case "auto":
-		return 0, false, &ChoiceError{Key: "delay", What: "the delay cannot be estimated yet", Hint: "state it in seconds, for instance --delay 0.025; positive where pressure is late"}
+		return 0, false, true, nil
 	}
 	d, err := strconv.ParseFloat(c.Delay, 64)
 	if err != nil || math.Abs(d) > 1 || math.IsNaN(d) {
-		return 0, false, &ChoiceError{Key: "delay", What: fmt.Sprintf("not a delay of at most 1 s: %q", data.Clean(c.Delay)), Hint: "state it in seconds; positive where pressure is late"}
+		return 0, false, false, &ChoiceError{Key: "delay", What: fmt.Sprintf("not a delay of at most 1 s: %q", data.Clean(c.Delay)), Hint: "auto, or in seconds; positive where pressure is late"}
 	}
-	return d, true, nil
+	return d, true, false, nil
 }
 
 // checkModel refuses a model that there is not.

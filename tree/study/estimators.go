@@ -12,15 +12,12 @@ import (
 
 // estimators are the ways of the literature to the load of the average beat,
 // each with the reason where it does not apply.
-func estimators(b Beats) []estimate.Estimate {
-	beat := estimate.Beat{
+func estimators(b Beats, impedance []harmonic.Harmonic) []estimate.Estimate {
+	return estimate.All(estimate.Beat{
 		Pressure: b.Pressure.Period, Flow: b.Flow.Period,
 		OutflowPressure: outflow(b), Rise: b.Pressure.EndMinusStart,
-	}
-	if b.Flow.Count > 0 {
-		beat.Harmonics = harmonic.Impedance(b.Ensemble.Beats[0], b.Ensemble.Beats[1], b.Ensemble.Rate)
-	}
-	return estimate.All(beat)
+		Harmonics: impedance,
+	})
 }
 
 // estimatorSection sets the estimators side by side, with what there is to say of

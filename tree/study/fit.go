@@ -9,14 +9,22 @@ import (
 	"afterbeat/data/casefile"
 	"afterbeat/data/unit"
 	"afterbeat/fitting"
+	"afterbeat/fitting/delay"
 	"afterbeat/fitting/estimate"
+	"afterbeat/fitting/harmonic"
 )
 
 // Fit is what the average beat says about the load.
 type Fit struct {
-	Beats       Beats
-	Results     []fitting.Result
-	Estimators  []estimate.Estimate
+	Beats      Beats
+	Results    []fitting.Result
+	Estimators []estimate.Estimate
+	// Impedance is that of the beats, harmonic by harmonic; nil without a flow.
+	Impedance []harmonic.Harmonic
+	Waves     Waves
+	// Delay is what the beats say of the delay, beside the one in use; nil without
+	// a flow.
+	Delay       *delay.Profile
 	Recommended fitting.Recommendation
 	// Chosen is the index of the result that goes downstream: the model that
 	// the case names, else the recommended one; -1 where nothing was fitted.
@@ -82,7 +90,7 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 // fromPressureAlone estimates the time constant of diastole, all that a
 // pressure without a flow allows.
 func (f Fit) fromPressureAlone() Fit {
-	f.Estimators = estimators(f.Beats)
+	f.Estimators = estimators(f.Beats, nil)
 	if decay := f.Estimators[0]; decay.Reason != "" {
 		f.Reason = "no flow to fit with, and no time constant either: " + decay.Reason
 		return f
@@ -97,45 +105,32 @@ func (f Fit) fromPressureAlone() Fit {
 
 // conclude recommends, chooses, and moves the assumptions about the choice.
 func (f Fit) conclude(ctx context.Context, d fitting.Beats) (Fit, error) {
+	var err error
+	if f.Delay, err = profiled(ctx, f.Beats); err != nil {
+		return f, err
+	}
+	f.refuseZc()
 	f.Recommended = fitting.Recommend(f.Results)
 	wanted := f.Recommended.Model
 	if f.named() {
 		wanted = f.Beats.Intake.Case.Model
 	}
 	f.Chosen = slices.IndexFunc(f.Results, func(r fitting.Result) bool { return r.Model.Name == wanted })
-	f.Estimators = estimators(f.Beats)
+	f.Impedance = impedance(f.Beats)
+	f.Estimators = estimators(f.Beats, f.Impedance)
+	f.Waves = f.waves()
 	if f.Chosen < 0 {
 		for _, r := range f.Results {
 			f.Warnings = append(f.Warnings, r.Warnings...)
 		}
+		f.Warnings = append(f.Warnings, f.delayWarnings()...)
 		return f, nil
 	}
 	chosen := f.Results[f.Chosen]
 	f.Warnings = chosen.Warnings
-	var err error
 	f.Sensitivity, err = sensitivities(ctx, chosen, d)
-	f.Warnings = slices.Concat(f.Warnings, delayWarnings(f), disagreements(f))
+	f.Warnings = slices.Concat(f.Warnings, f.delayWarnings(), disagreements(f))
 	return f, err
-}
-
-// delayWarnings warns of a delay that was not stated, with what 10 ms of it do.
-func delayWarnings(f Fit) []data.Warning {
-	if f.Beats.Delay.Stated || f.Beats.Intake.Case.OneBeat {
-		return nil
-	}
-	text := "the delay of pressure behind flow was not measured and is taken as 0"
-	for _, s := range f.Sensitivity {
-		if s.Assumption == "delay" {
-			text += fmt.Sprintf("; %s would change C by %+.0f %%", s.Change, s.Percent.C)
-			if s.Values.Zc > 0 {
-				text += fmt.Sprintf(" and Zc by %+.0f %%", s.Percent.Zc)
-			}
-		}
-	}
-	return []data.Warning{{
-		Code: data.CodeDelay, Text: text,
-		Cure: "measure it on the recording system and state it: --delay S, positive where pressure is late",
-	}}
 }
 
 // named tells whether a person named the model.
@@ -170,7 +165,7 @@ func fitData(b Beats) (fitting.Beats, error) {
 			Flow:            b.FlowInfo.Error,
 			PressureScale:   widths["pressure-scale"],
 			PressureOffset:  widths["pressure-offset"],
-			Delay:           widths["delay"],
+			Delay:           b.Delay.Error,
 			OutflowPressure: widths["outflow-pressure"],
 		},
 	}, nil

@@ -6,16 +6,6 @@ import (
 	"afterbeat/tree/support"
 )
 
-// DelayReport is by how much pressure is later than flow. It is identified
-// where it was stated; estimating it comes from elsewhere.
-type DelayReport struct {
-	Value      Number  `json:"value"`
-	Low        Number  `json:"low"`
-	High       Number  `json:"high"`
-	Identified bool    `json:"identified"`
-	Reason     *string `json:"reason"`
-}
-
 // BeatReport describes the average beat.
 type BeatReport struct {
 	Samples       int         `json:"samples"`
@@ -73,6 +63,8 @@ type FitReport struct {
 	Beat        *BeatReport        `json:"beat"`
 	Fits        []ModelReport      `json:"fits"`
 	Estimators  []EstimatorReport  `json:"estimators"`
+	Impedance   []HarmonicReport   `json:"impedance"`
+	Waves       *WavesReport       `json:"waves"`
 	Recommended *RecommendedReport `json:"recommended"`
 }
 

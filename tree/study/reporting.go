@@ -27,7 +27,7 @@ func (s Study) FitReport() FitReport {
 	r := FitReport{CheckReport: f.Beats.Check(s.Warnings()), Fits: []ModelReport{}, Estimators: []EstimatorReport{}}
 	r.Reason = s.Reason()
 	if f.Beats.Reason == "" {
-		r.Beat = beatReport(f.Beats)
+		r.Beat = f.beatReport()
 	}
 	if f.Beats.FlowInfo.Channel >= 0 {
 		r.FlowUnit = reason(f.Beats.flowUnit())
@@ -41,32 +41,25 @@ func (s Study) FitReport() FitReport {
 	for _, e := range f.Estimators {
 		r.Estimators = append(r.Estimators, estimatorReport(e))
 	}
+	r.Impedance, r.Waves = impedanceReport(f.Impedance), f.wavesReport()
 	if f.Recommended.Model != "" {
 		r.Recommended = &RecommendedReport{f.Recommended.Model, f.Recommended.Basis, f.Recommended.Why}
 	}
 	return r
 }
 
-func beatReport(b Beats) *BeatReport {
+func (f Fit) beatReport() *BeatReport {
+	b := f.Beats
 	some := b.some()
 	r := &BeatReport{
 		Samples: len(some.Period.Samples), Rate: Number(some.Period.Rate), Period: Number(some.Period.Duration()),
-		Count: some.Count, MeanPressure: nan, MeanFlow: nan, EndMinusStart: nan, Delay: delayReport(b.Delay),
+		Count: some.Count, MeanPressure: nan, MeanFlow: nan, EndMinusStart: nan, Delay: delayReport(b.Delay, f.Delay),
 	}
 	if b.Pressure.Count > 0 {
 		r.MeanPressure, r.EndMinusStart = Number(b.Pressure.Period.Mean()), Number(b.Pressure.EndMinusStart)
 	}
 	if b.Flow.Count > 0 {
 		r.MeanFlow = Number(b.Flow.Period.Mean())
-	}
-	return r
-}
-
-func delayReport(d Delay) DelayReport {
-	r := DelayReport{Value: Number(d.Value), Low: nan, High: nan, Identified: d.Stated, Reason: reason("not stated, and taken as it is")}
-	if d.Stated {
-		r.Reason = nil
-		r.Low, r.High = Number(d.Value-d.Error), Number(d.Value+d.Error)
 	}
 	return r
 }

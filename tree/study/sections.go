@@ -54,7 +54,14 @@ func (f Fit) sections() []casenote.Section {
 	if len(f.Sensitivity) > 0 {
 		out = append(out, f.sensitivitySection())
 	}
-	return append(out, f.estimatorSection())
+	out = append(out, f.estimatorSection())
+	if f.Delay != nil {
+		out = append(out, f.delaySection())
+	}
+	if f.Impedance != nil {
+		out = append(out, f.impedanceSection())
+	}
+	return out
 }
 
 // choiceSection names the fit that goes downstream, and the recommended one.
