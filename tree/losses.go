@@ -71,12 +71,28 @@ func (s *State) Ledger() energy.Ledger {
 		r1.Steady, r1.Pulsatile = r1.Steady+in1.Steady, r1.Pulsatile+in1.Pulsatile
 		r2.Steady, r2.Pulsatile = r2.Steady+in2.Steady, r2.Pulsatile+in2.Pulsatile
 	}
-	input := s.means[0].pin * s.means[0].qin
+	return energy.Ledger{Input: s.Power().Input, Terms: []energy.Term{segments, r1, r2, outflow}}
+}
+
+// nothing is the part of what goes to and fro below which power is rounding.
+const nothing = 1e-12
+
+// Power is that into the root, mmHg mL/s. What goes in and comes back whole is
+// none, to the last digit.
+func (s *State) Power() energy.Power {
+	m := s.means[0]
+	w := energy.Power{Steady: m.pin * m.qin}
+	around := 0.0
 	for k := 1; k <= s.solver.harmonics; k++ {
-		root := s.at(k)[0]
-		input += 2 * flux(root.pin, root.qin)
+		e := s.at(k)[0]
+		w.Pulsatile += 2 * flux(e.pin, e.qin)
+		around += 2 * math.Sqrt(square(e.pin)*square(e.qin))
 	}
-	return energy.Ledger{Input: input, Terms: []energy.Term{segments, r1, r2, outflow}}
+	if math.Abs(w.Pulsatile) < nothing*around {
+		w.Pulsatile = 0
+	}
+	w.Input = w.Steady + w.Pulsatile
+	return w
 }
 
 // TerminalLoss is the power lost in R1 and in R2 of the terminal of a segment,

@@ -14,10 +14,10 @@ func solveCommand(s stream) *cobra.Command {
 	c := &cobra.Command{
 		Use:   "solve",
 		Short: "Evaluate given parameters, without a measurement",
-		Args:  exactly(0, "a part: load, support"),
+		Args:  exactly(0, "a part: load, tree, support"),
 		RunE:  func(c *cobra.Command, _ []string) error { return c.Help() },
 	}
-	c.AddCommand(solveLoadCommand(s), solveSupportCommand(s))
+	c.AddCommand(solveLoadCommand(s), solveTreeCommand(s), solveSupportCommand(s))
 	return c
 }
 
