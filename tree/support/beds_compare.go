@@ -25,7 +25,9 @@ type BedRatios struct {
 // Ratios compares a bed in two states.
 func (supported BedState) Ratios(native BedState) BedRatios {
 	r := ratiosOf(native.PulseFigures, supported.PulseFigures, native.ShearAmplitude, supported.ShearAmplitude)
-	loss := func(of func(BedState) tree.Loss) float64 { return quotient(of(native).Pulsatile, of(supported).Pulsatile) }
+	loss := func(of func(BedState) tree.Loss) float64 {
+		return quotient(of(native).Pulsatile, of(supported).Pulsatile)
+	}
 	r.SegmentLoss = loss(func(b BedState) tree.Loss { return b.Segments })
 	r.R1Loss = loss(func(b BedState) tree.Loss { return b.R1 })
 	r.R2Loss = loss(func(b BedState) tree.Loss { return b.R2 })
