@@ -12,18 +12,13 @@ import (
 // pressure by 10 mmHg, the delay by 10 ms, the output by 20 %. Each is a fit to
 // the average beat of its own, without replicates.
 func sensitivities(ctx context.Context, r fitting.Result, b fitting.Beats) ([]Sensitivity, error) {
-	pressure, flow := b.Average()
-	b.Pressure, b.Flow = [][]float64{pressure.Samples}, [][]float64{flow.Samples}
 	var out []Sensitivity
 	for _, move := range moves() {
-		moved, err := fitting.FitBeat(ctx, r.Model, move.apply(b), fitting.Settings{})
+		moved, err := refit(ctx, r.Model, b, move)
 		if err != nil {
 			return out, err
 		}
-		out = append(out, Sensitivity{
-			Assumption: move.assumption, Change: move.change, By: move.by,
-			Values: moved.Values, Percent: percent(moved.Values, r.Values),
-		})
+		out = append(out, move.effect(moved, r))
 	}
 	return out, nil
 }
@@ -32,30 +27,59 @@ func sensitivities(ctx context.Context, r fitting.Result, b fitting.Beats) ([]Se
 type move struct {
 	assumption, change string
 	by                 float64
-	apply              func(fitting.Beats) fitting.Beats
+	to                 func(c *fitting.Calibration)
+}
+
+func (m move) effect(moved, was fitting.Result) Sensitivity {
+	return Sensitivity{
+		Assumption: m.assumption, Change: m.change, By: m.by,
+		Values: moved.Values, Percent: percent(moved.Values, was.Values),
+	}
 }
 
 func moves() []move {
 	var out []move
 	for _, d := range []float64{-10, 10} {
-		out = append(out, move{"outflow-pressure", fmt.Sprintf("%+g mmHg", d), d, func(b fitting.Beats) fitting.Beats {
-			b.OutflowPressure += d
-			return b
-		}})
+		out = append(out, outflowMove(d))
 	}
 	for _, d := range []float64{-0.010, 0.010} {
-		out = append(out, move{"delay", fmt.Sprintf("%+g ms", 1000*d), d, func(b fitting.Beats) fitting.Beats {
-			b.Flow = [][]float64{later(b.Flow[0], d*b.Rate)}
-			return b
-		}})
+		out = append(out, delayMove(d))
 	}
-	for _, f := range []float64{0.8, 1.2} {
-		out = append(out, move{"output", fmt.Sprintf("%+.0f %%", 100*(f-1)), f - 1, func(b fitting.Beats) fitting.Beats {
-			b.Flow = [][]float64{calibrated(b.Flow[0], f, 0)}
-			return b
-		}})
+	for _, d := range []float64{-0.2, 0.2} {
+		out = append(out, flowMove("output", d, 1+d))
 	}
 	return out
+}
+
+func outflowMove(d float64) move {
+	return move{"outflow-pressure", fmt.Sprintf("%+g mmHg", d), d, func(c *fitting.Calibration) { c.OutflowPressure += d }}
+}
+
+func delayMove(d float64) move {
+	return move{"delay", fmt.Sprintf("%+g ms", 1000*d), d, func(c *fitting.Calibration) { c.Delay += d }}
+}
+
+// flowMove is something relative moved by d, which makes the flow scale times as
+// large.
+func flowMove(assumption string, d, scale float64) move {
+	return move{assumption, fmt.Sprintf("%+.3g %%", 100*d), d, func(c *fitting.Calibration) { c.FlowScale *= scale }}
+}
+
+// pressureMove is an error of the pressure of a size in print.
+func pressureMove(assumption, unit string, size float64, to func(c *fitting.Calibration)) move {
+	return move{assumption, fmt.Sprintf("%+.3g %s", size, unit), size, to}
+}
+
+// refit fits a model to the average beat as it would be with one assumption
+// moved. The delay moves the flow, so that pressures stay where they are.
+func refit(ctx context.Context, m fitting.Model, b fitting.Beats, to move) (fitting.Result, error) {
+	pressure, flow := b.Average()
+	c := fitting.Calibration{FlowScale: 1, PressureScale: 1, OutflowPressure: b.OutflowPressure}
+	to.to(&c)
+	b.OutflowPressure = c.OutflowPressure
+	b.Pressure = [][]float64{calibrated(pressure.Samples, c.PressureScale, c.PressureOffset)}
+	b.Flow = [][]float64{calibrated(later(flow.Samples, c.Delay*b.Rate), c.FlowScale, 0)}
+	return fitting.FitBeat(ctx, m, b, fitting.Settings{})
 }
 
 // percent is the change of each parameter, in percent of what it was.

@@ -2,12 +2,14 @@ package fit_test
 
 import (
 	"fmt"
+	"math"
 	"slices"
 	"strings"
 	"sync"
 	"testing"
 
 	"github.com/charmbracelet/bubbles/key"
+	tea "github.com/charmbracelet/bubbletea"
 
 	"afterbeat/data"
 	"afterbeat/data/casefile"
@@ -45,8 +47,10 @@ func TestGolden(t *testing.T) {
 		}
 	}
 	screentest.Golden(t, "fit", views(s))
-	screentest.Golden(t, "what-if", views(s, "]"), small)
-	screentest.Golden(t, "opened", views(s, "down", "x"), small)
+	screentest.Golden(t, "what-if", views(s, "]"))
+	screentest.Golden(t, "opened", views(s, "down", "enter"))
+	screentest.Golden(t, "estimator", views(s, "right", "right", "right"))
+	screentest.Golden(t, "recommendation", views(s, "r"), small)
 	screentest.Golden(t, "table", views(s, "t"), small)
 	screentest.Golden(t, "flow", views(s, "f"), small)
 	screentest.Golden(t, "pressure-only", views(screentest.Pressure(t, "aortic_pressure", true)), small)
@@ -76,7 +80,7 @@ func TestNumbersAreThoseOfTheStudy(t *testing.T) {
 	b := open(s)
 	b.Press("left") // from the chosen, the second, to the first
 	for i, r := range s.Fit.Results {
-		says(t, b.View(), fmt.Sprintf("%s, systemic load (%d of %d)", r.Model.Name, i+1, len(s.Fit.Results)))
+		says(t, b.View(), fmt.Sprintf("%s %s (%d of %d), systemic load", r.Model.Name, r.Basis, i+1, len(s.Fit.Results)+len(s.Fit.Estimators)))
 		for _, p := range r.Parameters {
 			if !p.Identified {
 				says(t, b.View(), p.Name+" not identified")
@@ -87,6 +91,16 @@ func TestNumbersAreThoseOfTheStudy(t *testing.T) {
 		says(t, b.View(), "Rtotal "+casenote.Format(r.TotalResistance.Value, r.TotalResistance.Total))
 		b.Press("right")
 	}
+	for _, e := range s.Fit.Estimators {
+		says(t, b.View(), "by "+e.Name)
+		if e.Reason != "" {
+			says(t, b.View(), "does not apply")
+		} else if !math.IsNaN(e.C) {
+			says(t, b.View(), "C "+casenote.Format(e.C, data.NoInterval())+" mL/mmHg no interval")
+		}
+		b.Press("right")
+	}
+	says(t, b.View(), "(1 of ") // round to the first
 	if len(s.Fit.Results) < 2 {
 		t.Fatal("there is nothing to step through")
 	}
@@ -136,69 +150,94 @@ func changes(t *testing.T, b *screentest.Bench) []casefile.Case {
 	return all
 }
 
-func TestEnterChoosesAndTakesBack(t *testing.T) {
+func TestChoosingIsExplicitAndTakenBack(t *testing.T) {
 	s := computed(t)
-	b := open(s, "left", "enter") // wk2 stands before the recommended wk3
+	b := open(s, "left") // wk2 stands before the recommended wk3
+	if len(b.Told) > 0 {
+		t.Fatal("stepping chooses")
+	}
+	b.Press("c")
 	got := changes(t, b)
 	if len(got) != 1 || got[0].Model != "wk2" || s.Inputs.Case.Model != "" {
 		t.Fatalf("asked for %v", got)
 	}
 	chosen := screentest.Demo(t, func(c *casefile.Case) { c.Model = "wk2" })
 	b.Show(chosen)
-	says(t, b.View(), "wk2, systemic load (1 of", "Recommended: wk3", "in use wk2, chosen")
-	b.Press("enter")
+	says(t, b.View(), "wk2 beat (1 of", "Recommended: wk3", "in use wk2 beat, chosen")
+	b.Press("c")
 	if got = changes(t, b); len(got) != 2 || got[1].Model != "" {
 		t.Fatalf("asked for %v", got)
 	}
 	b.Show(s)
-	says(t, b.View(), "wk2, systemic load (1 of", "in use wk3")
+	says(t, b.View(), "wk2 beat (1 of", "in use wk3 beat")
 }
 
+// A what-if is marked as one, stands beside the numbers, and is left with esc;
+// nothing of it is asked for.
 func TestWhatIfStandsBesideTheNumbers(t *testing.T) {
 	s := computed(t)
+	all, err := s.Fit.WhatIfs(t.Context(), s.Fit.Chosen)
+	if err != nil {
+		t.Fatal(err)
+	}
 	b := open(s)
-	for i, move := range s.Fit.Sensitivity {
+	plain := b.View()
+	r := s.Fit.Results[s.Fit.Chosen]
+	for i, w := range all {
 		b.Press("]")
-		r := s.Fit.Results[s.Fit.Chosen]
 		p, _ := r.Parameter("R")
-		says(t, b.View(), "What if "+strings.ReplaceAll(move.Assumption, "-", " ")+" "+move.Change)
-		says(t, b.View(), casenote.Format(move.Values.R, p.Total)+" (")
+		name := strings.ReplaceAll(w.Assumption, "-", " ") + " " + w.Change
+		says(t, b.View(), "WHAT IF "+name, fmt.Sprintf("What if %s (%d of %d): not kept", name, i+1, len(all)))
+		says(t, b.View(), casenote.Format(w.Values.R, p.Total)+" (", "was "+casenote.Format(r.RMSE, data.NoInterval()))
 		if i == 0 {
 			silent(t, b.View(), "random")
 		}
 	}
 	b.Press("]")
-	says(t, b.View(), "What if: ]")
+	if b.View() != plain {
+		t.Errorf("after the last there is still one:\n%s", b.View())
+	}
 	b.Press("[")
-	last := s.Fit.Sensitivity[len(s.Fit.Sensitivity)-1]
-	says(t, b.View(), last.Change)
-	b.Press("left")
-	says(t, b.View(), "moves the model in use only")
+	says(t, b.View(), all[len(all)-1].Change)
+	b.Press("left") // the same of another model
+	says(t, b.View(), "WHAT IF diameter", "wk2 beat")
+	b.Press("right", "esc")
+	if b.View() != plain {
+		t.Errorf("esc leaves something:\n%s", b.View())
+	}
+	if len(b.Told) > 0 {
+		t.Errorf("asked for %v", b.Told)
+	}
 }
 
 func TestAnyNumberOpens(t *testing.T) {
-	b := open(computed(t), "x")
-	says(t, b.View(), "R of wk3: peripheral resistance", "Z(w) = Zc + R/(1 + i w R C)", "Westerhof 1969", "blocks-of-beats", "0.6 to 1.8 mmHg s/mL")
+	b := open(computed(t), "enter")
+	says(t, b.View(), "> R", "R of wk3, basis beat: peripheral resistance", "doubt from", "outflow pressure +10 mmHg", "blocks-of-beats")
+	b.Press(" ")
+	says(t, b.View(), "Westerhof 1969", "0.853 +- 0.029", "(seen)", "support")
 	b.Press("down")
-	says(t, b.View(), "C of wk3: compliance")
+	says(t, b.View(), "C of wk3, basis beat: compliance")
 	b.Press("left")
-	says(t, b.View(), "C of wk2", "Frank 1899")
-	b.Press("up", "up", "x")
-	silent(t, b.View(), "Frank")
+	says(t, b.View(), "C of wk2")
+	b.Press("esc")
+	silent(t, b.View(), "doubt from")
+	b.Press("right", "right", "right", "right", "enter")
+	says(t, b.View(), "of decay", "ln(P - Pv) = a - t/tau", "none: this method gives no interval")
 }
 
 // Every model of package fitting has its equation here.
 func TestEveryModelHasItsEquation(t *testing.T) {
 	s := computed(t)
 	for _, m := range fitting.Models() {
-		b := open(s, "x")
-		for range s.Fit.Results {
-			if strings.Contains(b.View(), "of "+m.Name+":") {
+		b := open(s, "enter")
+		for range len(s.Fit.Results) + len(s.Fit.Estimators) {
+			if strings.Contains(b.View(), "of "+m.Name+", basis") {
 				break
 			}
 			b.Press("right")
 		}
-		says(t, b.View(), "of "+m.Name+":", "Z(w) = ")
+		says(t, b.View(), "of "+m.Name+", basis")
+		says(t, b.View()+b.Press(" ").View(), "Z(w) = ")
 	}
 }
 
@@ -214,7 +253,7 @@ func TestNotIdentifiedIsNeverBare(t *testing.T) {
 	says(t, b.View(), `Zc not identified (it is 0, the end\x1b[2J)`)
 	silent(t, b.View(), "Zc     0.0")
 	screentest.Fits(t, b.View(), small, tui.Theme{})
-	b.Press("down", "down", "x")
+	b.Press("down", "down", "enter")
 	says(t, b.View(), "range 0.06")
 }
 
@@ -230,8 +269,8 @@ func undecided(t *testing.T) study.Study {
 
 func TestNoneRecommendedAndNoneInUse(t *testing.T) {
 	b := open(undecided(t))
-	says(t, b.View(), "in use none", "None is recommended, and none in use before enter chooses one: C of wk2")
-	b.Press("v", "v", "]", "x", "down", "right", "enter")
+	says(t, b.View(), "in use none", "None is recommended, and none in use before c chooses one: C of wk2")
+	b.Press("v", "v", "]", "enter", "down", "right", "esc", "c")
 	if got := changes(t, b); len(got) != 1 || got[0].Model != "wk3" {
 		t.Errorf("asked for %v", got)
 	}
@@ -271,7 +310,7 @@ func TestALongReasonOfANumberIsReadInFull(t *testing.T) {
 	r.Parameters = slices.Clone(r.Parameters)
 	r.Parameters[0].Identified, r.Parameters[0].Why = false, strings.Repeat("it has no effect; ", 90)+"these are the last words"
 	s.Fit = &f
-	for _, open_ := range []string{"x", "r"} {
+	for _, open_ := range []string{"enter", "r"} {
 		b := open(s)
 		silent(t, b.View(), "these are the last words")
 		b.Press(open_)
@@ -283,12 +322,12 @@ func TestALongReasonOfANumberIsReadInFull(t *testing.T) {
 		says(t, b.View(), "these are the last words", "lines ")
 		screentest.Fits(t, b.View(), small, tui.Theme{})
 		b.Press("esc")
-		says(t, b.View(), "measured less wk3")
+		says(t, b.View(), "measured less that")
 	}
 }
 
 func TestEscClosesANumber(t *testing.T) {
-	b := open(computed(t), "x")
+	b := open(computed(t), "enter")
 	says(t, b.View(), "equation")
 	if !slices.ContainsFunc(b.Screen.Keys(), func(k key.Binding) bool { return slices.Contains(k.Keys(), "esc") && k.Help().Desc == "close" }) {
 		t.Error("esc is not listed as close")
@@ -299,14 +338,9 @@ func TestEscClosesANumber(t *testing.T) {
 }
 
 func TestEveryKeyIsListedWithAllItsNames(t *testing.T) {
-	for _, keys := range [][]string{nil, {"x"}, {"r"}, {"t"}, {"f"}, {"v"}} {
+	for _, keys := range [][]string{nil, {"enter"}, {"r"}, {"t"}, {"f"}, {"v"}, {"]"}, {"left", "left"}} {
 		screentest.NamesAll(t, open(computed(t), keys...).Screen)
 	}
-}
-
-func TestCOfTheDecayHasItsUnit(t *testing.T) {
-	b := screentest.New(fit.New(), computed(t), tui.Area{Width: 160, Height: 46}, tui.Theme{})
-	says(t, b.View(), "C 1.114 mL/mmHg")
 }
 
 func TestWarningsNameTheKeysOfTheIntake(t *testing.T) {
@@ -317,9 +351,9 @@ func TestWarningsNameTheKeysOfTheIntake(t *testing.T) {
 func TestPressureAlone(t *testing.T) {
 	b := open(screentest.Pressure(t, "aortic_pressure", true))
 	says(t, b.View(), "tau", "no interval", "cardiac output even within 20 %", "R and C are not known from pressure alone")
-	b.Press("x")
+	b.Press("enter")
 	says(t, b.View(), "ln(P - Pv) = a - t/tau", "Frank 1899")
-	b.Press("enter", "]", "right")
+	b.Press("c", "]", "right")
 	if len(b.Told) > 0 {
 		t.Errorf("there is no model to choose: %v", b.Told)
 	}
@@ -350,7 +384,9 @@ func TestStillComputing(t *testing.T) {
 func TestLatePicturesAreDropped(t *testing.T) {
 	screen, late := fit.New().Show(computed(t))
 	screen, _ = screen.Resize(small, tui.Theme{})
-	screen, _ = screen.Update(late())
+	for _, one := range late().(tea.BatchMsg) {
+		screen, _ = screen.Update(one())
+	}
 	silent(t, screen.View(), "measured")
 }
 
@@ -388,7 +424,7 @@ func TestSurvives(t *testing.T) {
 		screentest.Demo(t, func(c *casefile.Case) { c.DiameterCM = nil }),
 		screentest.Demo(t, func(c *casefile.Case) { c.Model = "wk2"; c.OutflowPressure = nil }),
 	}
-	screentest.Survives(t, fresh, studies, "left", "right", "up", "down", "enter", "x", "[", "]", "f", "t", "v", "r", "pgup")
+	screentest.Survives(t, fresh, studies, "left", "right", "up", "down", "enter", "c", "[", "]", "f", "z", "w", "b", "t", "v", "r", "esc", "pgup")
 }
 
 func BenchmarkView(b *testing.B) {

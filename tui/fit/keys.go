@@ -1,18 +1,23 @@
 package fit
 
 import (
+	"slices"
+
 	"github.com/charmbracelet/bubbles/key"
 
 	"afterbeat/tui"
+	"afterbeat/tui/explain"
 	"afterbeat/tui/page"
 )
 
 // keyMap are the keys of the screen.
 type keyMap struct {
-	previous, next, choose key.Binding
+	previous, next, basis  key.Binding
+	choose                 key.Binding
 	up, down, number, why  key.Binding
-	less, more             key.Binding
-	flow, table            key.Binding
+	less, more, leave      key.Binding
+	flow, impedance, waves key.Binding
+	table                  key.Binding
 	page                   page.Keys // of a text that is longer than the area
 }
 
@@ -21,18 +26,22 @@ func newKeys() keyMap {
 		return key.NewBinding(key.WithKeys(keys...), key.WithHelp(shown, does))
 	}
 	return keyMap{
-		previous: bind("h/left", "model before", "left", "h"),
-		next:     bind("l/right", "next model", "right", "l"),
-		choose:   bind("enter", "use it", "enter"),
-		up:       bind("k/up", "number above", "up", "k"),
-		down:     bind("j/down", "number below", "down", "j"),
-		number:   bind("x", "open number", "x"),
-		why:      bind("r", "recommendation", "r"),
-		less:     bind("[", "what-if back", "["),
-		more:     bind("]", "what if", "]"),
-		flow:     bind("f", "flow", "f"),
-		table:    bind("t", "table", "t"),
-		page:     page.NewKeys(),
+		previous:  bind("h/left", "way before", "left", "h"),
+		next:      bind("l/right", "next way", "right", "l"),
+		basis:     bind("b", "basis", "b"),
+		choose:    bind("c", "use", "c"),
+		up:        bind("k/up", "number above", "up", "k"),
+		down:      bind("j/down", "number below", "down", "j"),
+		number:    explain.NewKeys().Open,
+		why:       bind("r", "recommendation", "r"),
+		less:      bind("[", "what-if back", "["),
+		more:      bind("]", "what if", "]"),
+		leave:     bind("esc", "end what-if", "esc"),
+		flow:      bind("f", "flow", "f"),
+		impedance: bind("z", "impedance", "z"),
+		waves:     bind("w", "waves", "w"),
+		table:     bind("t", "table", "t"),
+		page:      page.NewKeys(),
 	}
 }
 
@@ -40,38 +49,45 @@ func newKeys() keyMap {
 // what goes back says so.
 func (m Model) bindings() keyMap {
 	k := newKeys()
-	models := m.count()
-	k.previous.SetEnabled(models > 1)
-	k.next.SetEnabled(models > 1)
-	k.choose.SetEnabled(models > 0)
+	fitted, many := m.item().fitted(), len(m.items) > 1
+	k.previous.SetEnabled(many)
+	k.next.SetEnabled(many)
+	k.basis.SetEnabled(m.otherBasis() >= 0)
+	k.choose.SetEnabled(fitted)
 	if m.takesBack() {
-		k.choose.SetHelp("enter", "the recommended one")
+		k.choose.SetHelp("c", "take back")
 	}
-	numbers := len(m.rows())
+	numbers := len(m.item().rows)
 	k.up.SetEnabled(numbers > 1)
 	k.down.SetEnabled(numbers > 1)
-	k.number.SetEnabled(numbers > 0 && m.view != tabled)
-	k.why.SetEnabled(len(m.sheets) > 0 && m.advice() != "" && m.view != tabled)
+	k.number.SetEnabled(numbers > 0)
+	k.why.SetEnabled(len(m.items) > 0)
+	k.less.SetEnabled(fitted)
+	k.more.SetEnabled(fitted)
+	k.leave.SetEnabled(m.moved != 0)
+	k.page.PageDown.SetEnabled(m.view == advised && m.read.Longer())
+	k.page.PageUp.SetEnabled(k.page.PageDown.Enabled())
+	k.table.SetEnabled(m.beat())
+	for p, b := range k.pictures() {
+		b.SetEnabled(m.has(p))
+		if m.picture == p {
+			b.SetHelp(b.Help().Key, "pressure")
+		}
+	}
 	switch m.view {
-	case opened:
-		closing(&k.number, "close")
 	case advised:
 		closing(&k.why, "close")
-	}
-	long := m.read.Longer()
-	k.page.PageDown.SetEnabled(long)
-	k.page.PageUp.SetEnabled(long)
-	k.less.SetEnabled(models > 0 && len(m.fit.Sensitivity) > 0)
-	k.more.SetEnabled(k.less.Enabled())
-	k.flow.SetEnabled(m.fit != nil && m.fit.Beats.Flow.Count > 0 && m.fit.Beats.Pressure.Count > 0)
-	if m.flow {
-		k.flow.SetHelp("f", "pressure")
-	}
-	k.table.SetEnabled(m.beat())
-	if m.view == tabled {
+		k.leave.SetEnabled(false)
+	case tabled:
 		closing(&k.table, "picture")
+		k.leave.SetEnabled(false)
 	}
 	return k
+}
+
+// pictures are the keys that show a picture in place of the pressure.
+func (k *keyMap) pictures() map[picture]*key.Binding {
+	return map[picture]*key.Binding{ofFlow: &k.flow, ofImpedance: &k.impedance, ofWaves: &k.waves}
 }
 
 // closing lets esc do too what goes back to the picture.
@@ -82,19 +98,19 @@ func closing(b *key.Binding, does string) {
 
 // Keys are the bindings that work now, the most useful first.
 func (m Model) Keys() []key.Binding {
-	if m.warnings.Open() {
+	switch {
+	case m.warnings.Open():
 		return m.warnings.Keys.Bindings()
+	case m.numbers.Open():
+		k := m.bindings()
+		all := append(m.numbers.Bindings(), tui.Pair("h/l/left/right", "model", k.previous, k.next))
+		return slices.DeleteFunc(all, func(b key.Binding) bool { return !b.Enabled() })
 	}
 	k := m.bindings()
-	var on []key.Binding
-	for _, b := range []key.Binding{
-		tui.Pair("h/l/left/right", "model", k.next, k.previous), k.choose, tui.Pair("[/]", "what if", k.less, k.more),
-		k.number, k.page.PageDown, k.page.PageUp, k.flow, k.why, k.table,
+	all := []key.Binding{
+		k.leave, tui.Pair("h/l/left/right", "model", k.previous, k.next), tui.Pair("[/]", "what if", k.less, k.more),
+		k.number, k.choose, k.page.PageDown, k.page.PageUp, k.why, k.flow, k.impedance, k.waves, k.basis, k.table,
 		tui.Pair("j/k/up/down", "number", k.down, k.up), m.warnings.Keys.Open,
-	} {
-		if b.Enabled() {
-			on = append(on, b)
-		}
 	}
-	return on
+	return slices.DeleteFunc(all, func(b key.Binding) bool { return !b.Enabled() })
 }

@@ -18,8 +18,8 @@ import (
 // pictures are the curves of all models and of the flow, drawn within the
 // bounds that the models share, so that a step from model to model draws nothing.
 type pictures struct {
-	models []string // one a result; the measured pressure alone where there is none
-	flow   string
+	items []string // one a way; the measured pressure alone where there is none
+	flow  string
 }
 
 // picturesMsg brings pictures that were asked for.
@@ -34,74 +34,122 @@ func (m Model) prepare() (tui.Screen, tea.Cmd) {
 	if !m.beat() {
 		return m, nil
 	}
-	request, d := m.request, newDrawing(*m.fit, m.plan(), m.theme)
-	return m, func() tea.Msg {
-		return picturesMsg{request: request, pictures: d.pictures()}
-	}
+	request, d := m.request, m.drawing()
+	draw := func() tea.Msg { return picturesMsg{request: request, pictures: d.pictures()} }
+	s, weigh := m.weigh()
+	return s, tea.Batch(draw, weigh)
 }
 
 // drawing is what pictures are made of.
 type drawing struct {
 	fit   study.Fit
+	items []item
 	plan  plan
 	theme chart.Theme
+	// What all pictures share, so that a step from one to the next moves nothing.
+	pressureAxis chart.Axis
+	residuals    []chart.Axis // one a result
 }
 
-func newDrawing(f study.Fit, p plan, t tui.Theme) drawing {
-	return drawing{fit: f, plan: p, theme: t.Chart()}
+func (m Model) drawing() drawing {
+	d := drawing{fit: *m.fit, items: m.items, plan: m.plan(), theme: m.theme.Chart()}
+	all := [][]float64{d.fit.Beats.Pressure.Period.Samples}
+	for _, r := range d.fit.Results {
+		all = append(all, r.Modelled.Samples)
+	}
+	d.pressureAxis, d.residuals = chart.Covering("mmHg", all...), ranges(d.fit.Results)
+	return d
 }
 
 func (d drawing) pictures() pictures {
 	out := pictures{flow: d.flow()}
-	if len(d.fit.Results) == 0 {
-		out.models = []string{d.alone(d.pressure("average beat"))}
+	for i, one := range d.items {
+		out.items = append(out.items, d.item(i, one))
 	}
-	y := ranges(d.fit.Results)
-	for i, r := range d.fit.Results {
-		main := d.pressure(title(d.fit, i))
-		main.Series = append(main.Series, chart.Series{Name: r.Model.Name, Values: r.Modelled.Samples})
-		if !d.plan.stacked {
-			out.models = append(out.models, d.alone(main))
-			continue
-		}
-		out.models = append(out.models, d.stacked(chart.Stack{Main: main, Lower: d.residual(r, y[i])}))
+	if len(out.items) == 0 {
+		out.items = []string{d.alone(d.pressure("average beat"))}
 	}
 	return out
 }
 
-// title names the load, the model and its place among the models.
-func title(f study.Fit, i int) string {
-	return fmt.Sprintf("%s (%d of %d)", f.Results[i].Section().Title, i+1, len(f.Results))
+// title names a way, its place among all, and the load.
+func (d drawing) title(i int) string {
+	one := d.items[i]
+	title := fmt.Sprintf("%s (%d of %d)", one.title(), i+1, len(d.items))
+	if one.load != "" {
+		title += ", " + one.load
+	}
+	return title
+}
+
+// item draws one way: the pressure that it makes of the flow over the measured
+// one, as far as it makes one.
+func (d drawing) item(i int, one item) string {
+	main := d.pressure(d.title(i))
+	if one.fitted() {
+		r := d.fit.Results[one.result]
+		return d.over(main, r.Model.Name, r.Modelled.Samples, r.Residual, d.residuals[one.result], "")
+	}
+	modelled, ok := d.fit.Modelled(one.estimate)
+	if !ok {
+		return d.alone(main)
+	}
+	measured := d.fit.Beats.Pressure.Period.Samples
+	residual := make([]float64, len(measured))
+	for j := range residual {
+		residual[j] = measured[j] - modelled.Samples[j]
+	}
+	top := largest(residual)
+	return d.over(main, "wk2 of R, C", modelled.Samples, residual, chart.Covering("mmHg", []float64{-top, top}), "")
+}
+
+// whatIf draws a fit with an assumption moved, within the bounds of the fit as it
+// is.
+func (d drawing) whatIf(result int, all []study.WhatIf, i int) string {
+	w, was := all[i], d.fit.Results[result]
+	main := d.pressure(fmt.Sprintf("WHAT IF %s (%d of %d): %s %s", assumption(w.Sensitivity), i+1, len(all), was.Model.Name, was.Basis))
+	top := max(largest(w.Result.Residual), largest(was.Residual))
+	return d.over(main, "if so", w.Result.Modelled.Samples, w.Result.Residual, chart.Covering("mmHg", []float64{-top, top}), fmt.Sprintf(", was %s", bare(was.RMSE)))
+}
+
+// over draws a modelled pressure over the measured one, and the residual below
+// where there is room.
+func (d drawing) over(main chart.Plot, name string, modelled, residual []float64, y chart.Axis, was string) string {
+	main.Series = append(main.Series, chart.Series{Name: name, Values: modelled})
+	if !d.plan.stacked {
+		return d.alone(main)
+	}
+	return d.stacked(chart.Stack{Main: main, Lower: d.residual(residual, y, was)})
 }
 
 // labelWidth is room for the labels of any residual but a tiny one, so that a
 // step from model to model does not move the picture.
 const labelWidth = 5
 
-// pressure is the measured one, within bounds that hold that of every model.
+// pressure is the measured one.
 func (d drawing) pressure(title string) chart.Plot {
 	p := d.fit.Beats.Pressure.Period
-	all := [][]float64{p.Samples}
-	for _, r := range d.fit.Results {
-		all = append(all, r.Modelled.Samples)
-	}
 	return chart.Plot{
-		Title: title, X: timeAxis(p), Y: chart.Covering("mmHg", all...), LabelWidth: labelWidth,
+		Title: title, X: timeAxis(p), Y: d.pressureAxis, LabelWidth: labelWidth,
 		Series: []chart.Series{{Name: "measured", Values: p.Samples}},
 	}
 }
 
-// residual is that of a model about the line of 0, in the range of its own size.
-// It is made of stars and dots, of one byte each: lines of Unicode would be most
-// of what a step from model to model sends.
-func (d drawing) residual(r fitting.Result, y chart.Axis) chart.Plot {
-	zero := make([]float64, len(r.Residual))
+// residual is what is left over about the line of 0, in the range of its own
+// size. It is made of stars and dots, of one byte each: lines of Unicode would be
+// most of what a step from one way to the next sends.
+func (d drawing) residual(residual []float64, y chart.Axis, was string) chart.Plot {
+	square := 0.0
+	for _, v := range residual {
+		square += v * v
+	}
+	rms := math.Sqrt(square / float64(max(len(residual), 1)))
 	return chart.Plot{
-		Title: fmt.Sprintf("measured less %s, rms %s, maximum %s mmHg", r.Model.Name, bare(r.RMSE), bare(largest(r.Residual))),
+		Title: fmt.Sprintf("measured less that, rms %s%s, maximum %s mmHg", bare(rms), was, bare(largest(residual))),
 		Y:     y,
 		Series: []chart.Series{
-			{Values: zero, Glyph: chart.Dots},
-			{Values: r.Residual, Glyph: chart.Stars},
+			{Values: make([]float64, len(residual)), Glyph: chart.Dots},
+			{Values: residual, Glyph: chart.Stars},
 		},
 	}
 }

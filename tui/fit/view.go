@@ -12,57 +12,65 @@ import (
 	"afterbeat/tui/warnlist"
 )
 
+const noFlow = data.CodeNoFlow
+
 // View puts together what is there.
 func (m Model) View() string {
 	switch {
 	case m.warnings.Open():
 		return m.warnings.View()
-	case m.fit == nil, len(m.sheets) == 0:
+	case m.fit == nil, len(m.items) == 0:
 		return layout.Fit(m.absent(), m.area)
+	case m.numbers.Open():
+		return m.numbers.View()
 	case m.view == tabled:
 		return layout.Fit(strings.Split(m.table(), "\n"), m.area)
-	}
-	p := m.plan()
-	if lines := m.read.Lines(); lines > p.plot && (m.view == opened || m.view == advised) {
+	case m.view == advised:
 		foot := m.read.Position()
 		if m.read.Longer() {
 			foot += "   space and pgup read on"
 		}
 		return layout.Fit(append(slices.Clone(m.read.Window()), foot), m.area)
 	}
-	lines := layout.Lines(m.above(), p.plot)
+	p := m.plan()
+	lines := layout.Lines(m.drawnNow(), p.plot)
 	lines = append(lines, m.below(p)...)
 	return layout.Fit(lines, m.area)
 }
 
-// above is what stands above the numbers: curves, or a number opened.
-func (m Model) above() string {
+// drawnNow is the picture above the numbers.
+func (m Model) drawnNow() string {
+	w := m.weighed[m.shown]
 	switch {
-	case m.view == opened, m.view == advised:
-		return strings.Join(m.read.Window(), "\n")
-	case m.flow:
+	case m.picture == ofFlow:
 		return m.pictures.flow
-	case m.shown < len(m.pictures.models):
-		return m.pictures.models[m.shown]
+	case m.moved > 0 && m.moved <= len(w.pictures):
+		return w.pictures[m.moved-1]
+	case m.shown < len(m.pictures.items):
+		return m.pictures.items[m.shown]
 	}
 	return ""
 }
 
 // table is the curves as numbers, in words.
 func (m Model) table() string {
-	b := m.fit.Beats
+	b, one := m.fit.Beats, m.item()
 	p := chart.Plot{X: timeAxis(b.Pressure.Period), Y: chart.Axis{Unit: "mmHg"}}
 	p.Series = []chart.Series{{Name: "measured", Values: b.Pressure.Period.Samples}}
 	switch {
-	case m.flow:
+	case m.picture == ofFlow:
 		p = chart.Plot{X: timeAxis(b.Flow.Period), Y: chart.Axis{Unit: flowUnit(*m.fit)}}
 		p.Series = []chart.Series{{Name: "flow", Values: b.Flow.Period.Samples}}
-	case m.count() > 0:
-		r := m.result()
-		p.Title = title(*m.fit, m.shown)
+	case one.fitted():
+		r, name := m.fit.Results[one.result], one.name
+		p.Title = one.title() + ", " + one.load
+		if w, ok := m.whatIf(); ok {
+			r, name = w.Result, "if so"
+			p.Title = "WHAT IF " + assumption(w.Sensitivity) + ": " + one.title()
+		}
 		p.Series = append(
 			p.Series,
-			chart.Series{Name: r.Model.Name, Values: r.Modelled.Samples},
+			chart.Series{Name: name, Values: r.Modelled.Samples},
 			chart.Series{Name: "difference", Values: r.Residual},
 		)
 	}
@@ -71,30 +79,30 @@ func (m Model) table() string {
 
 // below is the numbers and what speaks of them.
 func (m Model) below(p plan) []string {
-	lines := m.numbers(p)
+	lines := m.numberLines(p)
 	if p.beside {
-		lines = layout.Beside(lines, m.comparison(p), m.numbersWidth(p))
+		lines = layout.Beside(lines, m.comparison(p), p.numbersWidth())
 	}
 	lines = layout.Lines(strings.Join(lines, "\n"), p.numbers)
 	if p.compare > 0 {
-		lines = append(lines, m.comparison(p)...)
+		lines = append(lines, layout.Lines(strings.Join(m.comparison(p), "\n"), p.compare)...)
 	}
 	lines = append(lines, m.assumptions(p)...)
 	if p.advice > 0 {
-		lines = append(lines, layout.Lines(strings.Join(wrapped(m.advice(), p.width, p.advice, m.theme), "\n"), p.advice)...)
+		lines = append(lines, layout.Lines(strings.Join(m.wrapped(m.advice(), p.width, p.advice, "r: in full"), "\n"), p.advice)...)
 	}
 	return append(lines, m.status(p))
 }
 
 // advice is the recommendation and its reason.
 func (m Model) advice() string {
-	if m.count() == 0 {
+	if m.fits() == 0 {
 		return turning(m.fit.Warnings)
 	}
 	r := m.fit.Recommended
 	switch {
 	case r.Model == "" && m.fit.Chosen < 0:
-		return "None is recommended, and none in use before enter chooses one: " + r.Why + "."
+		return "None is recommended, and none in use before c chooses one: " + r.Why + "."
 	case r.Model == "":
 		return "None is recommended: " + r.Why + "."
 	}
@@ -111,29 +119,32 @@ func turning(warnings []warning) string {
 	return ""
 }
 
-// status is the line of what is moved, and the count of warnings.
+// status is the line of what is moved, or of what is in use, and the count of
+// warnings.
 func (m Model) status(p plan) string {
 	count := m.warnings.Count()
-	words := layout.Clean(m.whatIf(p), m.theme)
+	words := layout.Clean(m.state(), m.theme)
 	return layout.Pad(words, max(p.width-len(count)-2, 0)) + "  " + count
 }
 
-// whatIf says what moving one assumption does.
-func (m Model) whatIf(p plan) string {
-	switch {
-	case m.count() == 0:
+// state says what is moved; else what speaks for the fit shown, and which one
+// goes to the next stages.
+func (m Model) state() string {
+	one := m.item()
+	w, ok := m.whatIf()
+	switch failed := m.weighed[m.shown].failed; {
+	case m.fits() == 0:
 		return ""
-	case m.moved == 0 && p.advice == 0:
-		return fmt.Sprintf("recommended %s, in use %s", m.recommended(), m.used())
-	case len(m.fit.Sensitivity) == 0:
-		return ""
-	case m.moved == 0:
-		return "What if: ] moves one assumption at a time"
-	case m.shown != m.fit.Chosen:
-		return fmt.Sprintf("What if: moves the model in use only, %s", m.fit.Results[m.fit.Chosen].Model.Name)
+	case ok:
+		return fmt.Sprintf("What if %s (%d of %d): not kept, esc ends it", assumption(w.Sensitivity), m.moved, m.moves())
+	case m.moved > 0 && failed != "":
+		return "What if: " + failed
+	case m.moved > 0:
+		return "What if: computing, esc ends it"
+	case !one.fitted():
+		return "in use " + m.used() + "; this stands beside it"
 	}
-	s := m.fit.Sensitivity[m.moved-1]
-	return fmt.Sprintf("What if %s (%d of %d)", assumption(s), m.moved, len(m.fit.Sensitivity))
+	return judged(m.fit.Results[one.result]) + "; in use " + m.used()
 }
 
 // absent says why there is nothing, and what cures it.
@@ -174,12 +185,15 @@ func shortened(lines []string, height int, how string) []string {
 
 // wrapped is text in at most height lines; where it does not fit, the last one
 // ends with "~" and the key that opens it.
-func wrapped(text string, width, height int, t tui.Theme) []string {
-	lines := layout.Wrap(layout.Clean(text, t), width)
+func (m Model) wrapped(text string, width, height int, key string) []string {
+	lines := layout.Wrap(layout.Clean(text, m.theme), width)
 	if len(lines) <= height {
 		return lines
 	}
-	const how = " (r: in full)"
+	if height < 1 {
+		return nil
+	}
+	how := " (" + key + ")"
 	last := data.Clean(strings.Join(lines[height-1:], " ")).Cut(max(width-len(how), 0))
 	return append(slices.Clone(lines[:height-1]), last.String()+how)
 }

@@ -1,0 +1,89 @@
+package study
+
+import (
+	"context"
+
+	"afterbeat/data"
+	"afterbeat/fitting"
+	"afterbeat/fitting/estimate"
+)
+
+// WhatIf is a result fitted anew with one assumption moved and all others as they
+// are: nothing of it is kept.
+type WhatIf struct {
+	Sensitivity
+	Result fitting.Result // without intervals
+}
+
+// WhatIfs moves the assumptions of [Fit.Sensitivity] about result i, and the
+// diameter by 5 % where a velocity was made into a flow.
+func (f Fit) WhatIfs(ctx context.Context, i int) ([]WhatIf, error) {
+	all := moves()
+	if f.Beats.FlowInfo.Conversion != nil {
+		for _, d := range []float64{-0.05, 0.05} {
+			all = append(all, flowMove("diameter", d, (1+d)*(1+d)))
+		}
+	}
+	return f.moved(ctx, i, all)
+}
+
+// Doubts moves each systematic error of result i to the upper end of its 95 %
+// interval: what the total interval is made of, beside random error.
+func (f Fit) Doubts(ctx context.Context, i int) ([]WhatIf, error) {
+	b, err := fitData(f.Beats)
+	if err != nil {
+		return nil, err
+	}
+	s, flow := b.Systematic, "flow"
+	if f.Beats.FlowInfo.Conversion != nil {
+		flow = "flow from velocity"
+	}
+	all := []move{
+		flowMove(flow, s.Flow, 1+s.Flow),
+		outflowMove(s.OutflowPressure),
+		delayMove(s.Delay),
+		pressureMove("pressure-scale", "%", 100*s.PressureScale, func(c *fitting.Calibration) { c.PressureScale *= 1 + s.PressureScale }),
+		pressureMove("pressure-offset", "mmHg", s.PressureOffset, func(c *fitting.Calibration) { c.PressureOffset += s.PressureOffset }),
+	}
+	var some []move
+	for _, m := range all {
+		if m.by > 0 {
+			some = append(some, m)
+		}
+	}
+	return f.moved(ctx, i, some)
+}
+
+// moved fits result i anew under each move.
+func (f Fit) moved(ctx context.Context, i int, all []move) ([]WhatIf, error) {
+	b, err := fitData(f.Beats)
+	if err != nil {
+		return nil, err
+	}
+	was := f.Results[i]
+	var out []WhatIf
+	for _, m := range all {
+		r, err := refit(ctx, was.Model, b, m)
+		if err != nil {
+			return out, err
+		}
+		r.Basis = was.Basis
+		out = append(out, WhatIf{m.effect(r, was), r})
+	}
+	return out, nil
+}
+
+// Modelled is the pressure that an estimate's R and C make of the average flow,
+// as wk2; false where the estimate or the flow does not allow it.
+func (f Fit) Modelled(e estimate.Estimate) (data.Period, bool) {
+	wk2, ok := fitting.ByName("wk2")
+	if !ok || !(e.R > 0 && e.C > 0) || f.Beats.Flow.Count == 0 {
+		return data.Period{}, false
+	}
+	load := fitting.Lumped{Model: wk2, Values: fitting.Values{R: e.R, C: e.C}}
+	return fitting.Respond(load, f.Beats.Flow.Period, outflow(f.Beats)), true
+}
+
+// Remark is what there is to say of an estimate: what it gives beside tau, R and
+// C, what to mind, or why there is none.
+func (f Fit) Remark(e estimate.Estimate) string { return f.remark(e) }
