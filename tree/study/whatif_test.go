@@ -60,7 +60,7 @@ func TestWhatIfsAreTheSensitivities(t *testing.T) {
 		t.Fatalf("%d, %v", len(all), err)
 	}
 	for i, s := range f.Sensitivity {
-		if all[i].Sensitivity != s {
+		if all[i].Values != s.Values || all[i].By != s.By || all[i].Assumption != s.Assumption {
 			t.Errorf("%+v is not %+v", all[i].Sensitivity, s)
 		}
 	}

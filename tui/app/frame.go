@@ -207,11 +207,14 @@ func brief(shown string) string {
 
 // faultRows stand where a frame could not be made.
 func (m Model) faultRows(at string) []string {
-	return []string{
-		casenote.Caution,
-		"The program has a fault at " + at + ".",
-		"Nothing is lost. Another digit opens another stage; q quits.",
+	rows := []string{casenote.Caution}
+	if w := m.size.Width; w > 0 {
+		rows = layout.Wrap(data.Clean(casenote.Caution), w)
 	}
+	return append(rows,
+		"The program has a fault at "+at+".",
+		"Nothing is lost. Another digit opens another stage; q quits.",
+	)
 }
 
 // clamp cuts a frame to the size, from below and from the right, so that the
