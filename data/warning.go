@@ -61,6 +61,7 @@ const (
 	CodeSpikes        Code = "spikes"
 	CodeDrift         Code = "drift"
 	CodeHum           Code = "hum"
+	CodeNotMatched    Code = "not-matched"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -119,5 +120,6 @@ func WarningCodes() []WarningCode {
 		{CodeNativeMiss, "the native state of the model differs from what was measured"},
 		{CodeFewDraws, "few of the drawn ventricles meet the native state, so that intervals are unsure"},
 		{CodeBeyondPump, "a speed lies outside the range in which the pump's coefficients make sense"},
+		{CodeNotMatched, "the mean flow or pressure that was to be matched cannot be met at a speed"},
 	}
 }

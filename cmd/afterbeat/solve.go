@@ -91,6 +91,7 @@ The periodic state of a ventricle, a lumped load and a pump. SPEC.toml holds
   Pfill = 20                  # mmHg
   Rmv = 0.01                  # mmHg s/mL, mitral valve
   Rav = 0.005                 # mmHg s/mL, aortic valve
+  Rar = 0                     # mmHg s/mL, aortic valve to flow back; 0: tight
   filling_slope = 0.46        # mmHg s/mL; 0: constant filling pressure
   filling_flow = 60           # mL/s at Pfill; absent: that without the pump
 
@@ -107,7 +108,8 @@ The periodic state of a ventricle, a lumped load and a pump. SPEC.toml holds
   b = 0.013
   c = 0.0006
   Rc = 0.12                   # mmHg s/mL, cannulas
-  Lc = 0.035                  # mmHg s2/mL`
+  Lc = 0.035                  # mmHg s2/mL
+  inlet = "ventricle"         # or "atrium", the left one, at Pfill`
 
 // solveSupportCommand is `afterbeat solve support SPEC.toml`.
 func solveSupportCommand(s stream) *cobra.Command {

@@ -33,6 +33,9 @@
 //	Qmv = max(0, (Pfill - Plv)/Rmv)     into the ventricle
 //	Qav = max(0, (Plv - Pao)/Rav)       out of it, into the arteries
 //
+// An aortic valve that leaks has a resistance Rar to flow back: where Plv < Pao,
+// Qav = (Plv - Pao)/Rar.
+//
 // # The filling line
 //
 // A heart that is relieved is filled under less pressure. [Filling] says how:

@@ -14,6 +14,7 @@ type Ventricle struct {
 	Emax, Emin float64 // mmHg/mL
 	V0         float64 // mL
 	Rmv, Rav   float64 // mmHg s/mL, mitral and aortic valve
+	Rar        float64 // mmHg s/mL, aortic valve to flow back; 0: it does not leak
 }
 
 // Check tells why these cannot be the parameters of a ventricle: an error for a
@@ -31,6 +32,7 @@ func (v Ventricle) Check() error {
 		{"V0", v.V0, v.V0 >= 0, "0 or more"},
 		{"Rmv", v.Rmv, v.Rmv > 0, "above 0"},
 		{"Rav", v.Rav, v.Rav > 0, "above 0"},
+		{"Rar", v.Rar, v.Rar >= 0, "0 or more"},
 	} {
 		if !p.ok || math.IsInf(p.value, 0) {
 			return fmt.Errorf("%s = %v is not a number %s", p.name, p.value, p.want)
@@ -58,8 +60,14 @@ func (v *Ventricle) Pressure(t, volume float64) float64 { return v.Elastance(t) 
 // MitralFlow is Qmv, mL/s, of the pressures before and behind the valve, mmHg.
 func (v *Ventricle) MitralFlow(pfill, plv float64) float64 { return max(0, (pfill-plv)/v.Rmv) }
 
-// AorticFlow is Qav, mL/s, of the pressures before and behind the valve, mmHg.
-func (v *Ventricle) AorticFlow(plv, pao float64) float64 { return max(0, (plv-pao)/v.Rav) }
+// AorticFlow is Qav, mL/s, of the pressures before and behind the valve, mmHg;
+// negative where the valve leaks.
+func (v *Ventricle) AorticFlow(plv, pao float64) float64 {
+	if plv < pao && v.Rar > 0 {
+		return (plv - pao) / v.Rar
+	}
+	return max(0, (plv-pao)/v.Rav)
+}
 
 // Corners are the times in 0..T at which E(t) is not smooth, in order, T last.
 func (v *Ventricle) Corners() []float64 {

@@ -33,6 +33,7 @@ type patient struct {
 	period       float64 // s
 	strokeVolume float64 // net, mL
 	ejection     float64 // s
+	relaxation   float64 // Tr/Tes; 0: one half
 }
 
 // patientOf reads a patient off a flow, mL/s, and the load fitted to it.
@@ -56,7 +57,12 @@ func (p patient) ventricle(c choice, slope float64) support.Coupling {
 func (p patient) setUp(c choice, slope, tolerance float64) (support.Coupling, error) {
 	k := p.ventricle(c, slope)
 	k.Tolerance = tolerance
-	return support.SetUp(k, support.Ejection{StrokeVolume: p.strokeVolume, Time: p.ejection, EndDiastolic: c.edv})
+	return support.SetUp(k, p.asked(c))
+}
+
+// asked is what the ventricle of the patient does natively.
+func (p patient) asked(c choice) support.Ejection {
+	return support.Ejection{StrokeVolume: p.strokeVolume, Time: p.ejection, EndDiastolic: c.edv, Relaxation: p.relaxation}
 }
 
 // draw is one answer that data and ranges allow.
@@ -124,6 +130,7 @@ const z95 = 1.959963984540054
 
 func (d *drawing) patient(r fitting.Replicate) patient {
 	p := patientOf(d.model, r.Values, r.OutflowPressure, r.Flow())
+	p.relaxation = d.nominal.relaxation
 	if math.IsNaN(p.ejection) {
 		p.ejection = d.nominal.ejection
 	}

@@ -136,8 +136,25 @@ func (f *Forecast) drawing() (*drawing, support.Coupling, error) {
 		d.choice = ranges.draw(rng.Float64)
 		coupling, err = d.nominal.setUp(d.choice, heart.RampSlope, 0)
 	}
+	if err == nil {
+		coupling, err = d.relax()
+	}
 	coupling.Pump = f.Pump.Pump
 	return d, coupling, err
+}
+
+// relax chooses the time of relaxation by the pulse pressure that was measured,
+// for the nominal ventricle and for all draws.
+func (d *drawing) relax() (support.Coupling, error) {
+	low, high := d.forecast.Comparison.Fit.Beats.Pressure.Period.Extremes()
+	var err error
+	k := d.nominal.ventricle(d.choice, heart.RampSlope)
+	k.Tolerance = forecastTolerance
+	d.nominal.relaxation, err = support.RelaxTo(k, d.nominal.asked(d.choice), high-low)
+	if err != nil {
+		return k, err
+	}
+	return d.nominal.setUp(d.choice, heart.RampSlope, 0)
 }
 
 // nominal fills the states with those of the nominal ventricle.

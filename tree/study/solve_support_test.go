@@ -149,6 +149,40 @@ func TestNumbersOfTheSupportReport(t *testing.T) {
 	}
 }
 
+// A valve that leaks and an inlet in the atrium are given in their tables; what
+// the pump moves is then told apart from what reaches the body.
+func TestLeakAndInletOfTheSpec(t *testing.T) {
+	s, err := solveSupport(t, "speeds = [0, 9]\n"+failingHeart+"Rar = 1.5\n"+givenLoad+axialPump+"inlet = \"atrium\"\n")
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, r := range s.Report().Speeds {
+		if r.Systemic == nil || r.Loop == nil || !(*r.Loop > 1) {
+			t.Fatalf("speed %v: systemic flow %v, loop flow %v", r.Speed, r.Systemic, r.Loop)
+		}
+		if d := float64(r.Arterial.Mean - 5 - 1.25**r.Systemic); math.Abs(d) > 1e-4 {
+			t.Errorf("speed %v: mean pressure is off by %v", r.Speed, d)
+		}
+		if math.Abs(float64(r.Energy.Balance)) > 1e-7 {
+			t.Errorf("speed %v: balance %v", r.Speed, r.Energy.Balance)
+		}
+	}
+	text := s.Note().Render(casenote.Options{})
+	for _, want := range []string{"Rar, aortic valve to flow back", "pump draws from", "atrium", "does not reach the body"} {
+		if !strings.Contains(strings.Join(strings.Fields(text), " "), want) {
+			t.Errorf("no %q in the note", want)
+		}
+	}
+	for spec, want := range map[string]string{
+		failingHeart + "Rar = -1\n" + givenLoad + axialPump:          "Rar = -1",
+		failingHeart + givenLoad + axialPump + "inlet = \"aorta\"\n": "none of ventricle, atrium",
+	} {
+		if _, err := solveSupport(t, "speeds = [9]\n"+spec); err == nil || !strings.Contains(err.Error(), want) {
+			t.Errorf("error %v, want %q", err, want)
+		}
+	}
+}
+
 // The filling line passes through the native state unless its flow is given.
 func TestFillingOfTheSpec(t *testing.T) {
 	native, err := solveSupport(t, "speeds = [0]\n"+failingHeart+givenLoad)

@@ -54,6 +54,9 @@ func (s SolvedSupport) givenSection() casenote.Section {
 	add("V0", v.V0, "mL")
 	add("Rmv", v.Rmv, "mmHg s/mL")
 	add("Rav", v.Rav, "mmHg s/mL")
+	if v.Rar > 0 {
+		add("Rar, aortic valve to flow back", v.Rar, "mmHg s/mL")
+	}
 	add("Pfill", f.Pressure, "mmHg")
 	add("filling slope", f.Slope, "mmHg s/mL")
 	if f.Slope > 0 {
@@ -69,6 +72,7 @@ func (s SolvedSupport) givenSection() casenote.Section {
 		add("pump c", p.C, "mmHg s2/mL2")
 		add("pump Rc", p.Resistance, "mmHg s/mL")
 		add("pump Lc", p.Inertance, "mmHg s2/mL")
+		section.Rows = append(section.Rows, casenote.Words("pump draws from", s.Coupling.Inlet.String()))
 	}
 	return section
 }
@@ -85,7 +89,11 @@ func symbolUnit(name string) string {
 
 // statesSection has three tables with a row a speed.
 func (s SolvedSupport) statesSection() casenote.Section {
-	return casenote.Section{
+	flows := []speedColumn{
+		{"systemic flow mean, mL/s", func(c support.CoupledState) float64 { return c.Flow() }},
+		{"back through the aortic valve, mL/s", func(c support.CoupledState) float64 { return c.Loop }},
+	}
+	section := casenote.Section{
 		Title: "Periodic state at each speed",
 		Words: []data.Text{data.Clean("Computed from what is given, so that no number has an interval. At speed 0 there is no pump. Minimum and maximum are those of the continuous beat.")},
 		Tables: []casenote.Table{
@@ -112,6 +120,11 @@ func (s SolvedSupport) statesSection() casenote.Section {
 			}),
 		},
 	}
+	if s.Coupling.Ventricle.Rar > 0 {
+		section.Words = append(section.Words, data.Clean("The aortic valve leaks: what runs back goes round through ventricle and pump and does not reach the body, so that the pump's flow is not the systemic flow."))
+		section.Tables = append(section.Tables, s.speedTable("speed, 1000/min", flows))
+	}
+	return section
 }
 
 // energySection has the mean power of sources and of arterial sinks.

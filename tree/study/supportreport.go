@@ -43,13 +43,17 @@ type CoupledEnergyReport struct {
 
 // SpeedReport is the periodic state at one speed.
 type SpeedReport struct {
-	Speed      Number              `json:"speed"`
-	Beats      int                 `json:"beats"`
-	Rounds     int                 `json:"rounds"`
-	Settled    bool                `json:"settled"`
-	Arterial   RangeReport         `json:"arterial"`
-	PumpFlow   RangeReport         `json:"pump_flow"`
-	ValveFlow  ValveReport         `json:"valve_flow"`
+	Speed     Number      `json:"speed"`
+	Beats     int         `json:"beats"`
+	Rounds    int         `json:"rounds"`
+	Settled   bool        `json:"settled"`
+	Arterial  RangeReport `json:"arterial"`
+	PumpFlow  RangeReport `json:"pump_flow"`
+	ValveFlow ValveReport `json:"valve_flow"`
+	// Of a leaking aortic valve only: what reaches the body, and what runs back
+	// through the valve, mL/s.
+	Systemic   *Number             `json:"systemic_flow,omitempty"`
+	Loop       *Number             `json:"loop_flow,omitempty"`
 	Volume     VolumeReport        `json:"volume"`
 	Filling    Number              `json:"filling_pressure"`
 	StrokeWork Number              `json:"stroke_work"`
@@ -62,7 +66,7 @@ type SpeedReport struct {
 
 func speedReport(s support.CoupledState) SpeedReport {
 	e := s.Energy
-	return SpeedReport{
+	r := SpeedReport{
 		Speed: Number(s.Speed), Beats: s.Beats, Settled: s.Settled,
 		Arterial: rangeReport(s.Arterial), PumpFlow: rangeReport(s.PumpFlow),
 		ValveFlow: ValveReport{Number(s.ValveFlow.Mean), Number(s.ValveFlow.Max), s.ValveOpened, Number(s.ValveOpen)},
@@ -74,6 +78,11 @@ func speedReport(s support.CoupledState) SpeedReport {
 		},
 		EEP: Number(s.EEP), SHE: Number(s.SHE), BackFlow: s.BackFlow(), Suction: s.Suction,
 	}
+	if s.Loop > 0 {
+		systemic, loop := Number(s.Flow()), Number(s.Loop)
+		r.Systemic, r.Loop = &systemic, &loop
+	}
+	return r
 }
 
 // StepReport is what follows a step of speed: beat means, one a beat.

@@ -26,6 +26,7 @@ type VentricleSpec struct {
 	Pfill        *float64 `toml:"Pfill"` // mmHg
 	Rmv          *float64 `toml:"Rmv"`   // mmHg s/mL
 	Rav          *float64 `toml:"Rav"`
+	Rar          float64  `toml:"Rar"`           // to flow back; 0: it does not leak
 	FillingSlope float64  `toml:"filling_slope"` // mmHg s/mL
 	FillingFlow  *float64 `toml:"filling_flow"`  // mL/s
 	FillingLag   *float64 `toml:"filling_lag_s"`
@@ -48,6 +49,8 @@ type PumpSpec struct {
 	C  float64  `toml:"c"`
 	Rc float64  `toml:"Rc"` // mmHg s/mL
 	Lc *float64 `toml:"Lc"` // mmHg s²/mL
+	// Inlet is where the pump draws from: ventricle or atrium.
+	Inlet string `toml:"inlet"`
 }
 
 // StepSpec is a change of speed.
@@ -169,7 +172,7 @@ func (s SupportSpec) ventricle(c *support.Coupling) error {
 	c.Ventricle = heart.Ventricle{
 		Period: g.of("period_s", v.Period), Activation: heart.Activation(v.Activation),
 		Emax: g.of("Emax", v.Emax), Emin: g.of("Emin", v.Emin), V0: v.V0,
-		Rmv: g.of("Rmv", v.Rmv), Rav: g.of("Rav", v.Rav),
+		Rmv: g.of("Rmv", v.Rmv), Rav: g.of("Rav", v.Rav), Rar: v.Rar,
 	}
 	c.Filling = heart.Filling{Pressure: g.of("Pfill", v.Pfill), Flow: math.NaN(), Slope: v.FillingSlope}
 	if g.missing != "" {
@@ -251,6 +254,9 @@ func (s SupportSpec) pump(c *support.Coupling) error {
 	}
 	if err := c.Pump.Check(); err != nil {
 		return s.refuseAll("pump", err)
+	}
+	if c.Inlet = support.Inlet(p.Inlet); !c.Inlet.Known() {
+		return s.refuse("pump", "inlet", "inlet %q is none of %s, %s", data.Clean(p.Inlet), support.InletVentricle, support.InletAtrium)
 	}
 	return nil
 }

@@ -18,6 +18,10 @@ type Coupling struct {
 	Filling heart.Filling
 	Load    Windkessel
 	Pump    pump.Pump // not looked at where the speed is 0
+	// Inlet is where the pump draws from: the ventricle where it is empty.
+	Inlet Inlet
+	// Match is what is made equal to a given value wherever the pump runs.
+	Match Match
 	// FillingLag is the time after which filling pressure has gone 63 % of the
 	// way to the line, in transients, s; 0: [DefaultFillingLag].
 	FillingLag float64
@@ -25,6 +29,26 @@ type Coupling struct {
 	// [DefaultTolerance].
 	Tolerance float64
 }
+
+// Inlet is where the pump draws from.
+type Inlet string
+
+// The inlets: the ventricle, or the left atrium, which is at the filling pressure.
+const (
+	InletVentricle Inlet = "ventricle"
+	InletAtrium    Inlet = "atrium"
+)
+
+// String names the inlet.
+func (i Inlet) String() string {
+	if i == "" {
+		i = InletVentricle
+	}
+	return string(i)
+}
+
+// Known tells an inlet that there is; the empty one is the ventricle.
+func (i Inlet) Known() bool { return i == "" || i == InletVentricle || i == InletAtrium }
 
 const (
 	// DefaultFillingLag is an assumption, s.
@@ -64,16 +88,22 @@ func NewCoupled(c Coupling) (*Coupled, error) {
 	if !(c.FillingLag > 0) || math.IsInf(c.FillingLag, 0) {
 		return nil, fmt.Errorf("filling_lag_s = %v is not a number above 0", c.FillingLag)
 	}
+	if !c.Inlet.Known() {
+		return nil, fmt.Errorf("inlet %q is none of %s, %s", c.Inlet, InletVentricle, InletAtrium)
+	}
+	if err := c.Match.check(); err != nil {
+		return nil, err
+	}
 	k := &Coupled{Coupling: c}
 	k.shooter = shooter{run: run{circuit: circuitOf(c), tolerance: c.Tolerance}, window: 1}
 	k.lineKnown = true
 	if math.IsNaN(c.Filling.Flow) {
 		k.Filling.Flow = 0
-		if c.Filling.Slope > 0 {
+		if c.Filling.Slope > 0 || c.Match.Pressure > 0 {
 			k.Filling.Flow, k.lineKnown = k.nativeFlow()
 		}
 	}
-	k.shooter.line = k.Filling
+	k.shooter.line = onLine{k.Filling, c.Load.R}
 	return k, nil
 }
 
@@ -94,7 +124,7 @@ const instantly = 1e-5
 func circuitOf(c Coupling) *circuit {
 	w := c.Load
 	k := &circuit{
-		heart: c.Ventricle, corners: c.Ventricle.Corners(), pump: c.Pump,
+		heart: c.Ventricle, corners: c.Ventricle.Corners(), pump: c.Pump, atrial: c.Inlet == InletAtrium,
 		r: w.R, c: w.C, zc: w.Zc, pv: w.OutflowPressure,
 	}
 	switch {
@@ -113,10 +143,10 @@ func circuitOf(c Coupling) *circuit {
 // nativeFlow is the mean flow with the pump absent, at the filling pressure P0.
 func (k *Coupled) nativeFlow() (flow float64, known bool) {
 	s := &k.shooter
-	s.line = heart.Filling{Pressure: k.Filling.Pressure}
+	s.line = onLine{heart.Filling{Pressure: k.Filling.Pressure}, k.Load.R}
 	o := s.find(k.guess(), false)
 	y := o.start
-	s.fill = o.start[out]
+	s.impose(&o.start)
 	held := s.beat(&y)
 	return y[out] / k.Ventricle.Period, held && o.settled
 }
@@ -125,7 +155,7 @@ func (k *Coupled) nativeFlow() (flow float64, known bool) {
 func (k *Coupled) guess() vector {
 	s := &k.shooter
 	v := k.Ventricle
-	z := vector{vol: v.V0 + 120, pc: s.pv + 80, out: k.Filling.Pressure}
+	z := vector{vol: v.V0 + 120, pc: s.pv + 80, out: s.line.Guess()}
 	if s.parallel {
 		z[qx] = 80 / s.r
 	}
@@ -166,6 +196,7 @@ func (k *Coupled) orbitAt(speed float64) (orbit, error) {
 	was := s.running
 	s.window, s.books, s.lost = 1, nil, false
 	s.drive = drive{running: speed > 0, speed: speed, fill: k.Filling.Pressure}
+	onLine := k.aim(speed)
 	start := k.last.start
 	if !k.haveLast || was != s.running {
 		start = k.guess()
@@ -173,10 +204,10 @@ func (k *Coupled) orbitAt(speed float64) (orbit, error) {
 	if !s.running {
 		start[qp] = 0
 	}
-	o := s.find(start, k.Filling.Slope > 0)
+	o := s.find(start, onLine)
 	if !o.settled && !s.lost { // once more, from nothing
 		s.known = false
-		o = s.find(k.guess(), k.Filling.Slope > 0)
+		o = s.find(k.guess(), onLine)
 	}
 	o.settled = o.settled && k.lineKnown
 	k.last, k.haveLast = o, o.settled
@@ -196,7 +227,7 @@ func (k *Coupled) At(speed float64) (CoupledState, error) {
 		b.void()
 	} else {
 		y := o.start
-		k.shooter.fill = o.start[out]
+		k.shooter.impose(&o.start)
 		held := k.shooter.booked(&y, &b)
 		o.settled = o.settled && held && k.shooter.cameBack(&y, &o.start)
 	}

@@ -34,6 +34,7 @@ const (
 	powOutflow
 	powRoot // Pao Q
 	powFlow // Q, which is no power, but is added up with them
+	powLoop // what runs back through the aortic valve, likewise
 	powers
 )
 
@@ -115,9 +116,17 @@ func (b *books) powers(r *run, w float64) {
 	if r.parallel {
 		drop = r.zc * square(q-y[qx])
 	}
+	fromHeart, fromAtrium := i.qav+y[qp]-i.qmv, i.qmv
+	if r.atrial {
+		fromHeart, fromAtrium = i.qav-i.qmv, i.qmv+y[qp]
+	}
+	aorticLoss := r.heart.Rav * i.qav * i.qav
+	if i.qav < 0 {
+		aorticLoss = r.heart.Rar * i.qav * i.qav
+	}
 	for k, x := range [powers]float64{
-		powFilling: i.pfill * i.qmv, powVentricle: i.plv * (i.qav + y[qp] - i.qmv), powHead: i.head * y[qp],
-		powMitral: r.heart.Rmv * i.qmv * i.qmv, powAortic: r.heart.Rav * i.qav * i.qav, powCannula: r.pump.Resistance * y[qp] * y[qp],
+		powFilling: i.pfill * fromAtrium, powVentricle: i.plv * fromHeart, powHead: i.head * y[qp], powLoop: max(0, -i.qav),
+		powMitral: r.heart.Rmv * i.qmv * i.qmv, powAortic: aorticLoss, powCannula: r.pump.Resistance * y[qp] * y[qp],
 		powZc: drop, powR: square(y[pc]-r.pv) / r.r, powOutflow: r.pv * (y[pc] - r.pv) / r.r,
 		powRoot: i.pao * q, powFlow: q,
 	} {
@@ -184,7 +193,7 @@ func (b *books) of(k int) Range {
 // opening is how long the aortic valve is open, s. A trickle is none: where blood
 // stands in front of the valve, rounding opens it.
 func (b *books) opening() (open float64, opened bool) {
-	const trickle = 1e-6 // mL/s
+	const trickle = 1e-3 // mL/s
 	if b.high[sigValve] < trickle {
 		return 0, false
 	}

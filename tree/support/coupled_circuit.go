@@ -31,6 +31,7 @@ type circuit struct {
 	r, c, zc, l, pv  float64
 	parallel, series bool
 	pump             pump.Pump
+	atrial           bool // the pump draws from the atrium
 }
 
 // drive is what is done to the circuit over a beat.
@@ -71,6 +72,7 @@ const (
 // instant is all that follows from the state at one time.
 type instant struct {
 	plv, pao, pfill, head float64
+	inlet                 float64 // pressure that the pump draws from
 	qmv, qav              float64
 	dqp, dqx              float64 // slopes of the flows that are states
 	margin                [3]float64
@@ -81,6 +83,10 @@ type instant struct {
 func (c *circuit) look(t float64, y *vector, m mode, d *drive, i *instant) {
 	i.plv = c.heart.Pressure(t, y[vol])
 	i.pfill = d.filling(t)
+	i.inlet = i.plv
+	if c.atrial {
+		i.inlet = i.pfill
+	}
 	i.qmv, i.qav, i.dqp, i.dqx, i.head = 0, 0, 0, 0, 0
 	if m[mitral] {
 		i.qmv = (i.pfill - i.plv) / c.heart.Rmv
@@ -109,36 +115,43 @@ func (c *circuit) lookDirect(y *vector, m mode, d *drive, i *instant) {
 		source -= c.zc * y[qx]
 	}
 	over := i.plv - source - c.zc*y[qp]
-	if m[aortic] {
+	switch {
+	case m[aortic]:
 		i.qav = over / (c.heart.Rav + c.zc)
+	case c.heart.Rar > 0:
+		i.qav = over / (c.heart.Rar + c.zc)
 	}
 	i.margin[aortic] = signed(over, m[aortic])
 	i.pao = source + c.zc*(i.qav+y[qp])
 	if d.running {
-		i.dqp = (i.plv - i.pao + i.head - c.pump.Resistance*y[qp]) / c.pump.Inertance
+		i.dqp = (i.inlet - i.pao + i.head - c.pump.Resistance*y[qp]) / c.pump.Inertance
 	}
 	if c.parallel {
 		i.dqx = c.zc * (i.qav + y[qp] - y[qx]) / c.l
 	}
 }
 
-// lookSeries solves the root for wk4s, where Qav is a state while the valve is
-// open, and the load's L is in line with the pump's while it is shut.
+// lookSeries solves the root for wk4s, where Qav is a state while blood passes the
+// valve, and the load's L is in line with the pump's while none does.
 func (c *circuit) lookSeries(y *vector, m mode, d *drive, i *instant) {
 	push := i.head - c.pump.Resistance*y[qp]
 	rest := y[pc] + c.zc*(y[qx]+y[qp])
-	if m[aortic] {
+	if m[aortic] || c.heart.Rar > 0 {
 		i.qav = y[qx]
-		i.pao = i.plv - c.heart.Rav*i.qav
+		resistance := c.heart.Rav
+		if !m[aortic] {
+			resistance = c.heart.Rar
+		}
+		i.pao = i.plv - resistance*i.qav
 		if d.running {
-			i.dqp = (c.heart.Rav*i.qav + push) / c.pump.Inertance
+			i.dqp = (i.inlet - i.pao + push) / c.pump.Inertance
 		}
 		i.dqx = (i.pao-rest)/c.l - i.dqp
-		i.margin[aortic] = i.qav
+		i.margin[aortic] = signed(i.qav, m[aortic])
 		return
 	}
 	if d.running {
-		i.dqp = (i.plv - rest + push) / (c.pump.Inertance + c.l)
+		i.dqp = (i.inlet - rest + push) / (c.pump.Inertance + c.l)
 	}
 	i.pao = rest + c.l*i.dqp
 	i.margin[aortic] = i.pao - i.plv
@@ -158,7 +171,7 @@ func (c *circuit) modeAt(t float64, y *vector, d *drive) mode {
 	m := mode{true, c.series && y[qx] > 0, y[qp] < 0}
 	c.look(t, y, m, d, &i)
 	m[mitral] = i.margin[mitral] > 0
-	if !m[aortic] {
+	if !m[aortic] && !(c.series && c.heart.Rar > 0) {
 		m[aortic] = i.margin[aortic] < 0
 	}
 	return m

@@ -17,6 +17,7 @@ import (
 type plain struct {
 	Coupling
 	fill, speed float64
+	r           float64 // in place of the load's where it is not 0
 	gap, lag    float64 // of the filling pressure above fill, in transients
 	open        bool    // the valve of wk4s
 }
@@ -42,39 +43,59 @@ func (p *plain) root(t float64, y [4]float64) (plv, pao, qmv, qav, dqp, dqx floa
 	n, q := p.speed, y[2]
 	drive := p.Pump.A*n*n - p.Pump.B*n*q - p.Pump.C*q*math.Abs(q) - p.Pump.Resistance*q
 	running := n > 0
+	inlet := plv
+	if p.Inlet == InletAtrium {
+		inlet = fill
+	}
+	valve := func(over, zc float64) float64 {
+		if over < 0 && v.Rar > 0 {
+			return over / (v.Rar + zc)
+		}
+		return math.Max(0, over/(v.Rav+zc))
+	}
 	switch l.Kind {
 	case WK4S:
-		if p.open {
+		if p.open || v.Rar > 0 {
 			qav = y[3]
 			pao = plv - v.Rav*qav
+			if qav < 0 {
+				pao = plv - v.Rar*qav
+			}
 			if running {
-				dqp = (plv - pao + drive) / p.Pump.Inertance
+				dqp = (inlet - pao + drive) / p.Pump.Inertance
 			}
 			dqx = (pao-y[1]-l.Zc*(qav+q))/l.L - dqp
 			return plv, pao, qmv, qav, dqp, dqx
 		}
 		if running {
-			dqp = (plv - y[1] - l.Zc*q + drive) / (p.Pump.Inertance + l.L)
+			dqp = (inlet - y[1] - l.Zc*q + drive) / (p.Pump.Inertance + l.L)
 		}
 		return plv, y[1] + l.Zc*q + l.L*dqp, qmv, 0, dqp, 0
 	case WK4P:
-		qav = math.Max(0, (plv-y[1]-l.Zc*(q-y[3]))/(v.Rav+l.Zc))
+		qav = valve(plv-y[1]-l.Zc*(q-y[3]), l.Zc)
 		pao = y[1] + l.Zc*(qav+q-y[3])
 		dqx = (pao - y[1]) / l.L
 	default:
-		qav = math.Max(0, (plv-y[1]-l.Zc*q)/(v.Rav+l.Zc))
+		qav = valve(plv-y[1]-l.Zc*q, l.Zc)
 		pao = y[1] + l.Zc*(qav+q)
 	}
 	if running {
-		dqp = (plv - pao + drive) / p.Pump.Inertance
+		dqp = (inlet - pao + drive) / p.Pump.Inertance
 	}
 	return plv, pao, qmv, qav, dqp, dqx
 }
 
 func (p *plain) slope(t float64, y [4]float64) [4]float64 {
 	_, _, qmv, qav, dqp, dqx := p.root(t, y)
+	drawn, r := y[2], p.Load.R
+	if p.Inlet == InletAtrium {
+		drawn = 0
+	}
+	if p.r > 0 {
+		r = p.r
+	}
 	return [4]float64{
-		qmv - qav - y[2], (qav + y[2] - (y[1]-p.Load.OutflowPressure)/p.Load.R) / p.Load.C, dqp, dqx,
+		qmv - qav - drawn, (qav + y[2] - (y[1]-p.Load.OutflowPressure)/r) / p.Load.C, dqp, dqx,
 	}
 }
 
@@ -99,6 +120,7 @@ func (p *plain) step(t, h float64, y [4]float64) [4]float64 {
 type seen struct {
 	pao, qp, vol    Range
 	qav, qmax, work float64
+	loop            float64
 }
 
 // beat carries a state over a beat of n steps.
@@ -106,7 +128,7 @@ func (p *plain) beat(y [4]float64, n int, s *seen) [4]float64 {
 	h := p.Ventricle.Period / float64(n)
 	wide := func(r *Range, x float64) { r.Min, r.Max = math.Min(r.Min, x), math.Max(r.Max, x) }
 	empty := Range{Min: math.Inf(1), Max: math.Inf(-1)}
-	*s = seen{pao: empty, qp: empty, vol: empty}
+	*s = seen{pao: empty, qp: empty, vol: empty, qmax: math.Inf(-1)}
 	look := func(t, span float64) { // half of the trapezium over a span
 		weight := span / 2 / p.Ventricle.Period
 		plv, pao, qmv, qav, _, _ := p.root(t, y)
@@ -117,16 +139,21 @@ func (p *plain) beat(y [4]float64, n int, s *seen) [4]float64 {
 		s.qp.Mean += weight * y[2]
 		s.qav += weight * qav
 		s.qmax = math.Max(s.qmax, qav)
-		s.work += weight * plv * (qav + y[2] - qmv) * p.Ventricle.Period
+		s.loop += weight * math.Max(0, -qav)
+		out := qav + y[2]
+		if p.Inlet == InletAtrium {
+			out = qav
+		}
+		s.work += weight * plv * (out - qmv) * p.Ventricle.Period
 	}
 	for k := range n {
 		t := float64(k) * h
-		if p.Load.Kind == WK4S && !p.open {
+		if p.Load.Kind == WK4S && !p.open && p.Ventricle.Rar == 0 {
 			plv, pao, _, _, _, _ := p.root(t, y)
 			p.open = plv > pao
 		}
 		after, rest := p.step(t, h, y), h
-		if p.Load.Kind == WK4S && p.open && after[3] < 0 {
+		if p.Load.Kind == WK4S && p.open && after[3] < 0 && p.Ventricle.Rar == 0 {
 			// The valve shuts within the step: go there, look at both sides, go on.
 			part := h * y[3] / (y[3] - after[3])
 			for range 4 {
@@ -196,7 +223,31 @@ func couplings(t testing.TB) map[string]Coupling {
 			Load:      Windkessel{Kind: WK4P, Values: fitting.Values{R: 1, C: 1.4, Zc: 0.06, L: 0.006}, OutflowPressure: 5},
 			Pump:      named(t, "generic A").Pump,
 		},
+		"leaking valve, wk3": leaking(failingCase(t), 1.5),
+		"leaking valve, wk4s": leaking(Coupling{
+			Ventricle: heart.Ventricle{Period: 0.8, Activation: heart.Cosine, Tes: 0.3, Tr: 0.15, Emax: 1, Emin: 0.07, V0: 12, Rmv: 0.012, Rav: 0.008},
+			Filling:   heart.Filling{Pressure: 20, Flow: 60, Slope: 0.3},
+			Load:      Windkessel{Kind: WK4S, Values: fitting.Values{R: 1.1, C: 1.5, Zc: 0.05, L: 0.004}, OutflowPressure: 5},
+			Pump:      named(t, "generic A").Pump,
+		}, 2.5),
+		"inlet from the atrium, wk3": fromAtrium(failingCase(t)),
+		"from the atrium, leaking valve, wk2": fromAtrium(leaking(Coupling{
+			Ventricle: heart.Ventricle{Period: 0.75, Activation: heart.Hill, Emax: 0.9, Emin: 0.08, V0: 10, Rmv: 0.01, Rav: 0.006},
+			Filling:   heart.Filling{Pressure: 18, Flow: 70, Slope: 0.46},
+			Load:      Windkessel{Kind: WK2, Values: fitting.Values{R: 1.2, C: 1.2}, OutflowPressure: 5},
+			Pump:      named(t, "literature axial").Pump,
+		}, 3)),
 	}
+}
+
+func leaking(c Coupling, rar float64) Coupling {
+	c.Ventricle.Rar = rar
+	return c
+}
+
+func fromAtrium(c Coupling) Coupling {
+	c.Inlet = InletAtrium
+	return c
 }
 
 // set is a set of pump coefficients in a test.
@@ -263,6 +314,10 @@ func TestCoupledAgainstAPlainMethod(t *testing.T) {
 		t.Run(name, func(t *testing.T) {
 			t.Parallel()
 			k := coupled(t, c)
+			speeds, close := speeds, 1e-5
+			if c.Inlet == InletAtrium || c.Ventricle.Rar > 0 { // the first has slow states, which the plain method nears slowly
+				speeds, close = []float64{0, 8, 10, 13}, 2e-4
+			}
 			for _, speed := range speeds {
 				s := at(t, k, speed)
 				p := plain{Coupling: k.Coupling, fill: s.Filling, speed: speed}
@@ -273,19 +328,26 @@ func TestCoupledAgainstAPlainMethod(t *testing.T) {
 					}
 				}
 				near := func(what string, got, want float64) {
-					compare(what, got, want, 1e-5*(math.Abs(want)+1))
+					compare(what, got, want, close*(math.Abs(want)+1))
 				}
 				near("arterial mean", s.Arterial.Mean, want.pao.Mean)
-				compare("arterial min", s.Arterial.Min, want.pao.Min, 0.01)
-				compare("arterial max", s.Arterial.Max, want.pao.Max, 0.01)
+				kink := 0.01
+				if c.Ventricle.Rar > 0 { // pressure is bent where the flow turns
+					kink = 0.02
+				}
+				compare("arterial min", s.Arterial.Min, want.pao.Min, kink)
+				compare("arterial max", s.Arterial.Max, want.pao.Max, kink)
 				near("pump flow mean", s.PumpFlow.Mean, want.qp.Mean)
 				near("pump flow min", s.PumpFlow.Min, want.qp.Min)
 				near("pump flow max", s.PumpFlow.Max, want.qp.Max)
 				near("valve flow mean", s.ValveFlow.Mean, want.qav)
 				near("valve flow max", s.ValveFlow.Max, want.qmax)
-				near("volume min", s.Volume.Min, want.vol.Min)
-				near("volume max", s.Volume.Max, want.vol.Max)
+				if s.Volume.Swing() > 1 { // else any volume that moves no valve is one
+					near("volume min", s.Volume.Min, want.vol.Min)
+					near("volume max", s.Volume.Max, want.vol.Max)
+				}
 				near("stroke work", s.StrokeWork, want.work)
+				near("what runs back through the valve", s.Loop, want.loop)
 				if onLine := k.Filling.At(want.qp.Mean + want.qav); math.Abs(onLine-s.Filling) > 1e-3 {
 					t.Errorf("speed %v: filling pressure %v, the line says %v", speed, s.Filling, onLine)
 				}

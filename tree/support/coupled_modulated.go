@@ -34,6 +34,9 @@ func (k *Coupled) Modulate(m Modulation, locked int) (Modulated, error) {
 		return Modulated{}, err
 	}
 	if locked == 0 {
+		if !k.Match.None() {
+			return Modulated{}, errTransient
+		}
 		return k.free(&m)
 	}
 	want := float64(locked) * k.Ventricle.Period
@@ -77,11 +80,11 @@ func (k *Coupled) locked(m *Modulation, beats int) (Modulated, error) {
 	}
 	s := &k.shooter
 	s.window = beats
-	o = s.find(o.start, k.Filling.Slope > 0)
+	o = s.find(o.start, k.aim(m.Mean()))
 	s.known = false
 	var w window
 	y := o.start
-	s.fill = o.start[out]
+	s.impose(&o.start)
 	for i := range beats {
 		s.since = float64(i) * k.Ventricle.Period
 		var b books

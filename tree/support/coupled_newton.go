@@ -62,11 +62,11 @@ func (s *shooter) moved(z, move *vector, share float64) vector {
 	for _, k := range s.active {
 		to[k] += share * move[k]
 	}
-	if s.series { // the valve does not leak
+	if s.series && s.heart.Rar == 0 { // the valve does not leak
 		to[qx] = max(0, to[qx])
 	}
 	if slices.Contains(s.active, out) {
-		to[out] = min(max(0, to[out]), s.line.Highest())
+		to[out] = min(max(s.line.Lowest(), to[out]), s.line.Highest())
 	}
 	return to
 }

@@ -8,6 +8,7 @@ type orbit struct {
 	start   vector
 	beats   int // integrated to find it
 	settled bool
+	missed  bool // settled, but what was to be matched is not
 }
 
 // shooter finds periodic states: starts z that come back after a number of
@@ -19,7 +20,7 @@ type orbit struct {
 // periodic state at a given filling pressure.
 type shooter struct {
 	run
-	line    fillLine
+	line    aim
 	window  int // beats of a period
 	active  []int
 	slopes  [5]vector // of G: row, column
@@ -27,12 +28,6 @@ type shooter struct {
 	beats   int
 	worst   float64 // gap before a move
 	scratch [5]vector
-}
-
-// fillLine is the filling pressure as a function of mean flow.
-type fillLine interface {
-	At(flow float64) float64
-	Highest() float64
 }
 
 const (
@@ -66,10 +61,15 @@ func (s *shooter) unknowns(fill bool) {
 	s.known = s.known && len(s.active) == before
 }
 
-// after is G: the state after a period, and the line at its mean flow.
+// impose gives the circuit the filling pressure, and where it is matched the
+// resistance, that the last place of a start stands for.
+func (s *shooter) impose(z *vector) { s.fill, s.r = s.line.Impose(z[out]) }
+
+// after is G: the state after a period, and what its mean flow makes of the last
+// place.
 func (s *shooter) after(z *vector) (vector, bool) {
 	y := *z
-	s.fill = z[out]
+	s.impose(z)
 	total := 0.0
 	for k := range s.window {
 		s.since = float64(k) * s.heart.Period
@@ -79,7 +79,7 @@ func (s *shooter) after(z *vector) (vector, bool) {
 		}
 		total += y[out]
 	}
-	y[out] = s.line.At(total / (float64(s.window) * s.heart.Period))
+	y[out] = s.line.Next(z[out], total/(float64(s.window)*s.heart.Period))
 	return y, finiteVector(&y)
 }
 
@@ -125,14 +125,27 @@ func (s *shooter) settle(z vector) orbit {
 	return orbit{start: z, beats: s.beats}
 }
 
-// bracket looks for the filling pressure on the line by halving its range: mean
-// flow rises with filling pressure and the line falls with flow, so that there is
-// one root. It is slow, and only for where Newton's method fails.
+// bracket looks for the last place by halving its range: mean flow rises with
+// filling pressure and the line falls with flow, so that there is one root; of an
+// aim that cannot be met there is none. It is slow, and only for where Newton's
+// method fails.
 func (s *shooter) bracket(z vector) orbit {
-	for low, high := 0.0, s.line.Highest(); ; {
+	low, high := s.line.Lowest(), s.line.Highest()
+	for _, end := range []float64{low, high} {
+		z[out] = end
+		at := s.settle(z)
+		if y, ok := s.after(&at.start); at.settled && ok && (y[out]-end)*(end-(low+high)/2) > 0 {
+			at.missed = true
+			return at
+		}
+	}
+	for {
 		z[out] = (low + high) / 2
 		at := s.settle(z)
-		if !at.settled || high-low < closed*typicalSize {
+		if !at.settled {
+			return at
+		}
+		if high-low < closed*typicalSize {
 			return at
 		}
 		z = at.start

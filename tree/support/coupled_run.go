@@ -37,7 +37,10 @@ func (r *run) slope(_ int, t float64, y, dy *vector) {
 	i := &r.now
 	r.look(t, y, r.mode, &r.drive, i)
 	q := i.qav + y[qp]
-	dy[vol] = i.qmv - i.qav - y[qp]
+	dy[vol] = i.qmv - i.qav
+	if !r.atrial {
+		dy[vol] -= y[qp]
+	}
 	dy[pc] = (q - (y[pc]-r.pv)/r.r) / r.c
 	dy[qp], dy[qx], dy[out] = i.dqp, i.dqx, q
 	for e, margin := range &i.margin {

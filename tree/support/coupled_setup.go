@@ -13,14 +13,17 @@ type Ejection struct {
 	StrokeVolume float64 // net, mL
 	Time         float64 // that the aortic valve is open, s
 	EndDiastolic float64 // the largest volume, mL
+	// Relaxation is Tr/Tes; 0: [DefaultRelaxation]. Tr ends with the beat at the
+	// latest.
+	Relaxation float64
 }
 
 // ErrNotMet is that no ventricle of a [Coupling] ejects as asked.
 var ErrNotMet = errors.New("no ventricle ejects as asked")
 
 const (
-	// relaxation is Tr/Tes of a ventricle that is set up (an assumption).
-	relaxation = 0.5
+	// DefaultRelaxation is Tr/Tes of a ventricle that is set up (an assumption).
+	DefaultRelaxation = 0.5
 	// met is how near a set-up comes to what is asked, relative.
 	met = 1e-6
 	// leastLeft is what a set-up leaves in the ventricle above V0, mL.
@@ -29,7 +32,7 @@ const (
 
 // SetUp finds the ventricle that, with the load, V0, the valves and the filling
 // pressure of c and without a pump, ejects as asked: Emax, Emin and Tes of a
-// [heart.Cosine] with Tr = Tes/2. The filling line is laid through that state.
+// [heart.Cosine] with Tr = Relaxation Tes. The filling line is laid through that state.
 // What c has of these is not looked at.
 //
 // Three unknowns for three conditions: at the end of ejection pressure is
@@ -83,6 +86,9 @@ type setUp struct {
 func newSetUp(c Coupling, e Ejection) *setUp {
 	v := c.Ventricle
 	v.Activation = heart.Cosine
+	if e.Relaxation == 0 {
+		e.Relaxation = DefaultRelaxation
+	}
 	s := &setUp{ejection: e}
 	c.Ventricle = v
 	s.run = run{circuit: circuitOf(c), tolerance: c.Tolerance}
@@ -109,7 +115,7 @@ func (s *setUp) place(x *[setUpSize]float64) {
 	h := &s.circuit.heart
 	h.Emax, h.Emin = math.Exp(x[lnEmax]), math.Exp(x[lnEmin])
 	h.Tes = x[endSystole]
-	h.Tr = min(relaxation*h.Tes, h.Period-h.Tes)
+	h.Tr = min(s.ejection.Relaxation*h.Tes, h.Period-h.Tes)
 	s.circuit.corners = h.Corners()
 }
 

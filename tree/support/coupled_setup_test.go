@@ -92,6 +92,39 @@ func TestSetUpFindsTheVentricleAgain(t *testing.T) {
 	})
 }
 
+// A ventricle that relaxes otherwise than is assumed is told by its pulse
+// pressure; one that no relaxation explains gets the end that comes nearest.
+func TestRelaxTo(t *testing.T) {
+	c, e := setUpCase(WK3)
+	pulse := func(relaxation float64) float64 {
+		e := e
+		e.Relaxation = relaxation
+		set, err := SetUp(c, e)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := set.Ventricle.Tr / set.Ventricle.Tes; math.Abs(got-relaxation) > 1e-9 {
+			t.Errorf("Tr/Tes is %v, want %v", got, relaxation)
+		}
+		return at(t, coupled(t, set), 0).PulsePressure()
+	}
+	for _, want := range []float64{0.3, 0.5, 0.8} {
+		got, err := RelaxTo(c, e, pulse(want))
+		if err != nil || math.Abs(pulse(got)-pulse(want)) > 2*relaxedWithin || math.Abs(got-want) > 0.05 {
+			t.Errorf("%v, %v; want %v", got, err, want)
+		}
+	}
+	for beyond, want := range map[float64]float64{10: QuickestRelaxation, 200: SlowestRelaxation} {
+		if got, err := RelaxTo(c, e, beyond); err != nil || got != want {
+			t.Errorf("%v mmHg: %v, %v; want %v", beyond, got, err, want)
+		}
+	}
+	e.StrokeVolume = 0
+	if _, err := RelaxTo(c, e, 40); !errors.Is(err, ErrNotMet) {
+		t.Errorf("nothing ejected: %v", err)
+	}
+}
+
 func TestWhatCannotBeSetUp(t *testing.T) {
 	for name, change := range map[string]func(*Coupling, *Ejection){
 		"nothing ejected":            func(_ *Coupling, e *Ejection) { e.StrokeVolume = 0 },

@@ -12,6 +12,9 @@ type CoupledState struct {
 	Speed   float64 // 1000/min; 0: no pump
 	Beats   int     // integrated to find it
 	Settled bool
+	// Missed tells that what was to be matched cannot be, at this speed: the
+	// state is the one that comes nearest.
+	Missed bool
 
 	Arterial    Range   // Pao, mmHg
 	PumpFlow    Range   // mL/s
@@ -21,7 +24,9 @@ type CoupledState struct {
 	ValveOpened bool
 	Volume      Range   // of the ventricle, mL
 	Ventricular Range   // Plv, mmHg
+	Loop        float64 // mean of what runs back through the aortic valve, mL/s
 	Filling     float64 // Pfill, mmHg
+	Resistance  float64 // R, mmHg s/mL: that of the load, unless it is matched
 	StrokeWork  float64 // int Plv (Qav + Qp - Qmv) dt, mmHg mL
 	EEP, SHE    float64 // mmHg, erg/cm³; the flow is Qav + Qp
 	Energy      CoupledEnergy
@@ -68,9 +73,9 @@ func (k *Coupled) stateOf(o orbit, speed float64, b *books) CoupledState {
 	s := CoupledState{
 		Speed: speed, Beats: o.beats, Settled: o.settled, start: o.start,
 		Arterial: b.of(sigPao), PumpFlow: b.of(sigPump), ValveFlow: b.of(sigValve), RootFlow: b.of(sigRoot),
-		Volume: b.of(sigVolume), Ventricular: b.of(sigPlv), Filling: o.start[out],
-		StrokeWork: b.power[powVentricle],
-		EEP:        b.of(sigPao).Mean + surplus, SHE: unit.DynPerMmHg * surplus,
+		Volume: b.of(sigVolume), Ventricular: b.of(sigPlv), Filling: k.shooter.fill, Resistance: k.shooter.r, Missed: o.missed,
+		StrokeWork: b.power[powVentricle], Loop: b.power[powLoop] / b.time,
+		EEP: b.of(sigPao).Mean + surplus, SHE: unit.DynPerMmHg * surplus,
 		Energy: CoupledEnergy{
 			Filling: b.power[powFilling], Ventricle: b.power[powVentricle], Pump: b.power[powHead],
 			Mitral: b.power[powMitral], Aortic: b.power[powAortic], Cannula: b.power[powCannula],

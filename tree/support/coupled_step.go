@@ -24,6 +24,9 @@ func (k *Coupled) Step(from, to float64, beats int) (StepResponse, error) {
 	if beats < 1 {
 		return r, fmt.Errorf("%d beats after a step are none to follow", beats)
 	}
+	if !k.Match.None() {
+		return r, errTransient
+	}
 	if err := k.checkSpeed(to); err != nil {
 		return r, err
 	}

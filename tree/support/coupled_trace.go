@@ -29,6 +29,7 @@ func (k *Coupled) Trace(s CoupledState, n int) Trace {
 	r := &k.shooter.run
 	r.drive = drive{running: s.Speed > 0, speed: s.Speed, fill: s.Filling}
 	b := books{trace: t}
+	r.r = s.Resistance
 	y := s.start
 	r.booked(&y, &b)
 	return *t

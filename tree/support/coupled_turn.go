@@ -100,7 +100,7 @@ func (r *run) root(event int, low, high float64) float64 {
 func (r *run) flip(event int) {
 	s := &r.step
 	r.mode[event] = !r.mode[event]
-	if event == aortic && r.series && !r.mode[aortic] {
+	if event == aortic && r.series && !r.mode[aortic] && r.heart.Rar == 0 {
 		s.start[qx] = 0
 	}
 	r.slope(0, s.t, &s.start, &s.k[0])

@@ -37,6 +37,9 @@ func (k *Coupled) warnings(s *CoupledState) []data.Warning {
 	if math.IsNaN(s.Arterial.Mean) {
 		return all
 	}
+	if s.Missed {
+		warn(data.CodeNotMatched, "another speed, or --match none", "what was to be matched is not: with a filling pressure of %.3g mmHg and a resistance of %.3g mmHg s/mL mean flow is %.3g L/min and mean pressure %.4g mmHg", s.Filling, s.Resistance, s.Flow()*0.06, s.Arterial.Mean)
+	}
 	if s.BackFlow() {
 		warn(data.CodeBackFlow, "see that the given head-flow law holds for reversed flow", "blood flows back through the pump, at up to %.3g mL/s", -s.PumpFlow.Min)
 	} else if s.Speed > 0 && s.PumpFlow.Min < littleFlow {

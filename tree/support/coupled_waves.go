@@ -28,7 +28,8 @@ func (k *Coupled) Waves(speed float64, samples int) (Waves, error) {
 	}
 	s := &k.shooter
 	y := o.start
-	s.fill, s.tape = o.start[out], t
+	s.impose(&o.start)
+	s.tape = t
 	s.beat(&y)
 	s.tape = nil
 	period := func(signal int) data.Period { return data.Period{Samples: t.signals[signal], Rate: 1 / t.step} }

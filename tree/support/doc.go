@@ -49,9 +49,17 @@
 //	Lc dQp/dt = Plv - Pao + H - Rc Qp,                     Q = Qav + Qp into the load
 //	wk3:  Pao = Pc + Zc Q,  C dPc/dt = Q - (Pc - Pv)/R,    hence Qav = max(0, (Plv - Pc - Zc Qp)/(Rav + Zc))
 //
-// and likewise for wk2, wk4s and wk4p. While no valve moves the equations are
-// smooth: they are integrated with an adaptive method of order 5 (Dormand and
-// Prince 1980) whose steps end where a valve opens or shuts or the pump's flow
+// and likewise for wk2, wk4s and wk4p. Two things may be otherwise: a valve that
+// leaks lets Qav = (Plv - Pao)/Rar back where Plv < Pao, so that some of the flow
+// of the pump goes round and only Qav + Qp reaches the body; and a pump whose
+// inlet is the left atrium draws from Pfill in place of Plv, and not from V.
+//
+// [Match] makes mean flow or mean pressure equal to a given value: the flow by
+// another filling pressure than that of the line, the pressure by another R at
+// the filling pressure of the line.
+//
+// While no valve moves the equations are smooth: they are integrated with an
+// adaptive method of order 5 (Dormand and Prince 1980) whose steps end where a valve opens or shuts or the pump's flow
 // reverses, which is located, not stepped over. What comes back after a beat is
 // found by Newton's method on the few states at its start and, on a filling line,
 // the filling pressure as one more unknown; never by repeated substitution of the
