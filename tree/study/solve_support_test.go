@@ -168,7 +168,7 @@ func TestLeakAndInletOfTheSpec(t *testing.T) {
 		}
 	}
 	text := s.Note().Render(casenote.Options{})
-	for _, want := range []string{"Rar, aortic valve to flow back", "pump draws from", "atrium", "does not reach the body"} {
+	for _, want := range []string{"Rar, backwards", "pump draws from", "atrium", "does not reach the body"} {
 		if !strings.Contains(strings.Join(strings.Fields(text), " "), want) {
 			t.Errorf("no %q in the note", want)
 		}

@@ -55,7 +55,7 @@ func (s SolvedSupport) givenSection() casenote.Section {
 	add("Rmv", v.Rmv, "mmHg s/mL")
 	add("Rav", v.Rav, "mmHg s/mL")
 	if v.Rar > 0 {
-		add("Rar, aortic valve to flow back", v.Rar, "mmHg s/mL")
+		add("Rar, backwards", v.Rar, "mmHg s/mL")
 	}
 	add("Pfill", f.Pressure, "mmHg")
 	add("filling slope", f.Slope, "mmHg s/mL")

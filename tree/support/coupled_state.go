@@ -74,7 +74,7 @@ func (k *Coupled) stateOf(o orbit, speed float64, b *books) CoupledState {
 		Speed: speed, Beats: o.beats, Settled: o.settled, start: o.start,
 		Arterial: b.of(sigPao), PumpFlow: b.of(sigPump), ValveFlow: b.of(sigValve), RootFlow: b.of(sigRoot),
 		Volume: b.of(sigVolume), Ventricular: b.of(sigPlv), Filling: k.shooter.fill, Resistance: k.shooter.r, Missed: o.missed,
-		StrokeWork: b.power[powVentricle], Loop: b.power[powLoop] / b.time,
+		StrokeWork: b.power[powVentricle],
 		EEP: b.of(sigPao).Mean + surplus, SHE: unit.DynPerMmHg * surplus,
 		Energy: CoupledEnergy{
 			Filling: b.power[powFilling], Ventricle: b.power[powVentricle], Pump: b.power[powHead],
@@ -83,6 +83,9 @@ func (k *Coupled) stateOf(o orbit, speed float64, b *books) CoupledState {
 		},
 	}
 	s.ValveOpen, s.ValveOpened = b.opening()
+	if k.Ventricle.Rar > 0 { // else rounding
+		s.Loop = b.power[powLoop] / b.time
+	}
 	s.Suction = k.suction(&s)
 	s.Warnings = k.warnings(&s)
 	return s
