@@ -50,12 +50,15 @@ edv_ml = 210
 ef = 0.25
 pump = "generic A"
 speed = [8, 9.5]
+match = "flow"
+hold_resistance = 0.9
 drop = [3.5]
 keep = [7, 8.25]
 remark = "worth a second look"
 
 error.flow = "10 %"
 error.cardiac-output = 0.5
+ventricle = { Pfill = 20, activation = "hill" }
 
 [site]
 abp = "root"
@@ -67,6 +70,10 @@ abp = "root"
 abp = 1.05
 [offset]
 abp = -3
+[modulation]
+shape = "square"
+low = 7.5
+locked = 2
 `
 
 func fullCase() Case {
@@ -83,8 +90,10 @@ func fullCase() Case {
 		OutflowPressure: ptr(0.0), Delay: "0.0125",
 		Error:   map[string]string{"flow": "10%", "cardiac-output": "0.5"},
 		OneBeat: true, Model: "wk3", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
-		EDVML: ptr(210.0), EF: ptr(0.25), Pump: "generic A", Speed: []float64{8, 9.5},
-		Drop: []float64{3.5}, Keep: []float64{7, 8.25}, Remark: "worth a second look",
+		EDVML: ptr(210.0), EF: ptr(0.25), Pump: map[string]string{"set": "generic A"}, Speed: []float64{8, 9.5},
+		Match: "flow", HoldResistance: ptr(0.9), Ventricle: map[string]string{"Pfill": "20", "activation": "hill"},
+		Modulation: map[string]string{"shape": "square", "low": "7.5", "locked": "2"},
+		Drop:       []float64{3.5}, Keep: []float64{7, 8.25}, Remark: "worth a second look",
 	}
 }
 
@@ -105,8 +114,8 @@ func TestReadEveryKey(t *testing.T) {
 		}
 	}
 	for key, line := range map[string]int{
-		"recording": 2, "invert": 8, "rate": 10, "share": 23, "error.flow": 32, "error.cardiac-output": 33,
-		"site": 35, "site.abp": 36, "site.q.1": 37, "unit.na=me": 40, "offset.abp": 44, "site.other": 0, "": 0,
+		"recording": 2, "invert": 8, "rate": 10, "share": 23, "error.flow": 34, "error.cardiac-output": 35, "ventricle.Pfill": 36, "pump": 26,
+		"site": 38, "site.abp": 39, "site.q.1": 40, "unit.na=me": 43, "offset.abp": 47, "modulation.low": 50, "site.other": 0, "": 0,
 	} {
 		if got := c.Line(key); got != line {
 			t.Errorf("line of %q is %d, want %d", key, got, line)
@@ -161,6 +170,14 @@ func TestReadErrors(t *testing.T) {
 		{head + "[site]\n\nabp.x = \"root\"", `c.toml:4: site.abp: want text in quotes, not a table (a name that holds a dot stands in quotes)`},
 		{head + "[scale]\nabp = \"2\"", `c.toml:3: scale.abp: want a number, not text`},
 		{head + "[site]\nabp = \"a=b\"", `c.toml:3: site.abp: the value holds a =, which ends a name on the command line`},
+		{head + "[pump]\na = 1\nRC = 0.1", `c.toml:4: unknown entry of [pump] "RC"; did you mean "Rc"?`},
+		{head + "[pump]\na = \"1\"", `c.toml:3: pump.a: want a number, not text`},
+		{head + "[pump]\na = inf", `c.toml:3: pump.a: want a finite number, not +Inf`},
+		{head + "pump = 3", `c.toml:2: pump: want text in quotes, not the number 3`},
+		{head + "pump.name = 3", `c.toml:2: pump.name: want text in quotes, not the number 3`},
+		{head + "ventricle = \"hill\"", `c.toml:2: ventricle: want a table, [ventricle], not text`},
+		{head + "[ventricle]\nEmx = 1", `c.toml:3: unknown entry of [ventricle] "Emx"; did you mean "Emax"?`},
+		{head + "[modulation]\nshape = 1", `c.toml:3: modulation.shape: want text in quotes, not the number 1`},
 		{head + `pressure = "a\u0000"`, `c.toml:2: pressure: holds a NUL character, which no name has`},
 		{head + "label = \"Mary Smith\"", `c.toml:2: label: does not look like a research label, such as pilot-07: want letters, digits and - _ . only, 32 at most, a letter and one to five digits among them; never a name or a date of birth`},
 		{head + "rate = 1\nrate = 2", `c.toml:3: `},
@@ -196,6 +213,14 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		rapid.Float64Range(-1e3, 1e3), rapid.Float64Range(-math.MaxFloat64, math.MaxFloat64),
 		rapid.Map(rapid.IntRange(-1000, 1000), func(i int) float64 { return float64(i) }),
 	)
+	digits := rapid.Map(num, decimal)
+	owned := func(label, plain string, numbers ...string) map[string]string {
+		m := rapid.MapOfN(rapid.SampledFrom(numbers), digits, 0, 3).Draw(t, label)
+		if s := value.Draw(t, label+" by name"); plain != "" && s != "" {
+			m[plain] = s
+		}
+		return m
+	}
 	optional := func(label string) *float64 { return rapid.Ptr(num, true).Draw(t, label) }
 	return Case{
 		Recording: word.Filter(func(s string) bool { return s != "" }).Draw(t, "recording"),
@@ -211,7 +236,9 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		OneBeat: rapid.Bool().Draw(t, "one beat"), Model: word.Draw(t, "model"),
 		Replicates: rapid.Ptr(rapid.Int(), true).Draw(t, "replicates"), Seed: rapid.Ptr(rapid.Int(), true).Draw(t, "seed"),
 		Share: rapid.SliceOfN(rapid.Float64Range(0, 1), 0, 4).Draw(t, "share"),
-		EDVML: optional("volume"), EF: optional("fraction"), Pump: word.Draw(t, "pump"), Speed: rapid.SliceOfN(num, 0, 3).Draw(t, "speed"),
+		EDVML: optional("volume"), EF: optional("fraction"), Pump: owned("pump", "set", "a", "b", "Rc", "lowest"), Speed: rapid.SliceOfN(num, 0, 3).Draw(t, "speed"),
+		Ventricle: owned("ventricle", "activation", "Emax", "V0"), Modulation: owned("modulation", "file", "low", "locked"),
+		Match: word.Draw(t, "match"), HoldResistance: optional("hold"),
 	}
 })
 

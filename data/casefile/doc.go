@@ -13,6 +13,10 @@
 //	[error]
 //	flow = "10 %"
 //
+// Tables of channels have any names; [error], [pump], [ventricle] and [modulation]
+// have fixed ones. A pump may be a name alone, pump = "generic A", and a modulation
+// the name of a file.
+//
 // A case holds choices, never results, and as plain strings and numbers: those
 // who use a choice check it, and [Case.Line] tells them which line to name.
 // What is checked here is what belongs to the file: that the keys exist, that

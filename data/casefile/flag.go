@@ -41,14 +41,36 @@ func (f field) parse(c *Case, text string) error {
 		return f.set(c, v)
 	}
 	equals := strings.LastIndexByte(text, '=')
+	if equals < 0 && f.plain != "" {
+		return f.enter(c, f.plain, text)
+	}
 	if equals < 0 {
 		return fmt.Errorf("want %s", f.Value)
+	}
+	if len(f.entries) > 0 {
+		return f.enterText(c, text[:equals], text[equals+1:])
 	}
 	v, err := f.fromText(text[equals+1:])
 	if err != nil {
 		return err
 	}
 	return f.enter(c, text[:equals], v)
+}
+
+// enterText sets an entry of a table with fixed ones from the text of a flag.
+func (f field) enterText(c *Case, name, text string) error {
+	e, err := f.entry(name)
+	if err != nil {
+		return err
+	}
+	if e.text {
+		return f.enter(c, name, text)
+	}
+	v, err := strconv.ParseFloat(text, 64)
+	if err != nil {
+		return fmt.Errorf("%s: want a number, not %q", name, clean(text))
+	}
+	return f.enter(c, name, v)
 }
 
 // fromText makes text what TOML would hold in its place.
@@ -114,7 +136,12 @@ func (f field) texts(c *Case) []string {
 		}
 	case reflect.Map:
 		for _, name := range sorted(v) {
-			list = append(list, name+"="+inWords(v.MapIndex(reflect.ValueOf(name))))
+			text := inWords(v.MapIndex(reflect.ValueOf(name)))
+			if f.plain != "" && name == f.plain {
+				list = append([]string{text}, list...)
+				continue
+			}
+			list = append(list, name+"="+text)
 		}
 	default:
 		list = append(list, inWords(reflect.Indirect(v)))

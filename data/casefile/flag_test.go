@@ -14,7 +14,8 @@ func TestArguments(t *testing.T) {
 		"--rate 125 --from -1.5 --to 0 --exclude artefacts.csv --diameter-cm 2.1 --angle-deg 20 --profile 1 "+
 		"--outflow-pressure 0 --delay 0.0125 --error cardiac-output=0.5 --error flow=10% --drop 3.5 --keep 7 --keep 8.25 --one-beat --model wk3 "+
 		"--replicates 2000 --seed -7 --share 0 --share 0.25 --share 1 --edv-ml 210 --ef 0.25", " ")
-	want = append(want, "--pump", "generic A", "--speed", "8", "--speed", "9.5", "--remark", "worth a second look")
+	want = append(want, "--pump", "generic A", "--ventricle", "Pfill=20", "--ventricle", "activation=hill", "--speed", "8", "--speed", "9.5", "--match", "flow",
+		"--hold-resistance", "0.9", "--modulation", "locked=2", "--modulation", "low=7.5", "--modulation", "shape=square", "--remark", "worth a second look")
 	if d := cmp.Diff(want, fullCase().Command("study", "-a.csv")); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
@@ -38,6 +39,9 @@ func TestSetErrors(t *testing.T) {
 		{"error", "angel=5", `unknown systematic error "angel"; did you mean "angle"?`},
 		{"share", "2", `want a number from 0 to 1, not 2`},
 		{"label", "Mary", errLabel.Error()},
+		{"pump", "aa=1", `unknown entry of [pump] "aa"; did you mean "a"?`},
+		{"pump", "a=much", `a: want a number, not "much"`},
+		{"ventricle", "hill", `want WHAT=VALUE`},
 	} {
 		var into Case
 		err := into.Set(c.flag, c.text)
@@ -82,13 +86,29 @@ func TestOver(t *testing.T) {
 	if d := diff(want, got); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
-	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 37} {
+	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 40} {
 		if got.Line(key) != line {
 			t.Errorf("line of %q is %d, want %d", key, got.Line(key), line)
 		}
 	}
-	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 36 {
+	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 39 {
 		t.Errorf("the case below has changed (-want +got)\n%s", d)
+	}
+}
+
+// A set named over one's own values replaces them whole; a value goes over a set.
+func TestOverAWholeTable(t *testing.T) {
+	base, err := Read("a", []byte("recording = \"a.csv\"\n[pump]\na = 1\nLc = 0.03\n"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	named := Case{Pump: map[string]string{"set": "generic B"}}.Over(base)
+	if d := diff(Case{Recording: "a.csv", Pump: map[string]string{"set": "generic B"}}, named); d != "" || named.Line("pump.a") != 0 {
+		t.Errorf("line %d (-want +got)\n%s", named.Line("pump.a"), d)
+	}
+	one := Case{Pump: map[string]string{"a": "2"}}.Over(base)
+	if d := diff(Case{Recording: "a.csv", Pump: map[string]string{"a": "2", "Lc": "0.03"}}, one); d != "" || one.Line("pump.a") != 0 || one.Line("pump.Lc") != 4 {
+		t.Errorf("(-want +got)\n%s", d)
 	}
 }
 

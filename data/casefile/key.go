@@ -33,6 +33,15 @@ type field struct {
 	shape  reflect.Kind // Pointer, Slice, Map, or that of the one value
 	value  reflect.Type // of one value: string, float64, int or bool
 	amount bool         // text that may be given as a number too
+	// entries are the names that a table has; empty: any, as of channels.
+	entries []tableEntry
+	plain   string // the entry that a bare value, in place of the table, sets
+}
+
+// tableEntry is a name that a table has: a number unless it is text.
+type tableEntry struct {
+	name string
+	text bool
 }
 
 // fields are the keys in the order of [Case].
@@ -49,6 +58,7 @@ func tagged() []field {
 			continue
 		}
 		f := field{index: i, shape: of.Kind(), value: of, amount: tag.Get("amount") == "true"}
+		f.entries, f.plain = entriesOf(tag.Get("entries")), tag.Get("plain")
 		if f.many() || f.shape == reflect.Pointer {
 			f.value = of.Elem()
 		}
@@ -59,6 +69,28 @@ func tagged() []field {
 		list = append(list, f)
 	}
 	return list
+}
+
+// entriesOf reads the tag of a table with fixed entries: "set=text,a,b".
+func entriesOf(tag string) []tableEntry {
+	var all []tableEntry
+	for _, one := range strings.FieldsFunc(tag, func(r rune) bool { return r == ',' }) {
+		name, _, text := strings.Cut(one, "=")
+		all = append(all, tableEntry{name, text})
+	}
+	return all
+}
+
+// entry is the entry of a table with fixed ones.
+func (f field) entry(name string) (tableEntry, error) {
+	var known []string
+	for _, e := range f.entries {
+		if e.name == name {
+			return e, nil
+		}
+		known = append(known, e.name)
+	}
+	return tableEntry{}, unknown("entry of ["+f.Name+"]", name, known)
 }
 
 func (f field) many() bool { return f.list() || f.table() }

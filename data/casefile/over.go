@@ -3,6 +3,7 @@ package casefile
 import (
 	"maps"
 	"reflect"
+	"strings"
 )
 
 // Over lays the choices of c over those of base: what c does not choose, base
@@ -18,6 +19,14 @@ func (c Case) Over(base Case) Case {
 			continue
 		case f.table():
 			joined := cloned(target)
+			if f.plain != "" && v.MapIndex(reflect.ValueOf(f.plain)).IsValid() { // a whole in place of another
+				joined = reflect.MakeMap(target.Type())
+				for name := range out.lines {
+					if strings.HasPrefix(name, f.Name+".") {
+						delete(out.lines, name)
+					}
+				}
+			}
 			for _, name := range sorted(v) {
 				joined.SetMapIndex(reflect.ValueOf(name), v.MapIndex(reflect.ValueOf(name)))
 				delete(out.lines, f.Name+"."+name)

@@ -68,6 +68,8 @@ func (f field) read(c *Case, v any, e entry) error {
 	if f.table() {
 		table, ok := v.(map[string]any)
 		switch {
+		case !ok && f.plain != "" && !e.inTable:
+			return f.enter(c, f.plain, v)
 		case !ok:
 			return fmt.Errorf("want a table, [%s], not %s", f.Name, describe(v))
 		case e.inTable:

@@ -34,7 +34,7 @@ func (f field) enter(c *Case, name string, v any) error {
 	if f.Name == "error" && !slices.Contains(Errors(), name) {
 		return unknown("systematic error", name, Errors())
 	}
-	x, err := f.convert(v)
+	x, err := f.convertEntry(name, v)
 	switch {
 	case err != nil:
 		return err
@@ -44,11 +44,31 @@ func (f field) enter(c *Case, name string, v any) error {
 		return errors.New("the value holds a =, which ends a name on the command line")
 	}
 	table := f.in(c)
+	if len(f.entries) > 0 && x.String() == "" { // as any text: not chosen
+		return nil
+	}
 	if table.IsNil() {
 		table.Set(reflect.MakeMap(table.Type()))
 	}
 	table.SetMapIndex(reflect.ValueOf(name), x)
 	return nil
+}
+
+// convertEntry makes v, as TOML holds it, the value of an entry of a table.
+func (f field) convertEntry(name string, v any) (reflect.Value, error) {
+	if len(f.entries) == 0 {
+		return f.convert(v)
+	}
+	e, err := f.entry(name)
+	if err != nil {
+		return reflect.Value{}, err
+	}
+	if e.text {
+		x, err := text(v, false)
+		return reflect.ValueOf(x), err
+	}
+	x, err := number(v)
+	return reflect.ValueOf(decimal(x)), err
 }
 
 // cloned copies a list or a table, so that copies of a [Case] stay apart.

@@ -18,21 +18,35 @@ func Write(c Case) []byte {
 	var b strings.Builder
 	b.WriteString("# " + casenote.Caution + "\n\n")
 	for _, f := range fields() {
-		if v := f.in(&c); !f.table() && chosen(v) {
+		switch v := f.in(&c); {
+		case !chosen(v):
+		case f.bare(v):
+			fmt.Fprintf(&b, "%s = %s\n", f.Name, literal(v.MapIndex(reflect.ValueOf(f.plain))))
+		case !f.table():
 			fmt.Fprintf(&b, "%s = %s\n", f.Name, literal(reflect.Indirect(v)))
 		}
 	}
 	for _, f := range fields() {
 		table := f.in(&c)
-		if !f.table() || !chosen(table) {
+		if !f.table() || !chosen(table) || f.bare(table) {
 			continue
 		}
 		fmt.Fprintf(&b, "\n[%s]\n", f.Name)
 		for _, name := range sorted(table) {
-			fmt.Fprintf(&b, "%s = %s\n", keyName(name), literal(table.MapIndex(reflect.ValueOf(name))))
+			value := table.MapIndex(reflect.ValueOf(name))
+			written := literal(value)
+			if e, err := f.entry(name); err == nil && !e.text {
+				written = value.String()
+			}
+			fmt.Fprintf(&b, "%s = %s\n", keyName(name), written)
 		}
 	}
 	return []byte(b.String())
+}
+
+// bare tells a table that is written as its plain value.
+func (f field) bare(table reflect.Value) bool {
+	return f.plain != "" && table.Len() == 1 && table.MapIndex(reflect.ValueOf(f.plain)).IsValid()
 }
 
 // literal writes a value in TOML.

@@ -49,9 +49,9 @@ func TestChoicesThatMakeNoSense(t *testing.T) {
 		{"replicates", "--replicates", "1000", func(c *casefile.Case) { c.Replicates = ptr(0) }},
 		{"seed", "--seed", "leave it out", func(c *casefile.Case) { c.Seed = ptr(0) }},
 		{"share", "--share", "--share 0.5", func(c *casefile.Case) { c.Share = []float64{0.5, 1.5} }},
-		{"pump", "--pump", "generic A, generic B", func(c *casefile.Case) { c.Pump = "generic C" }},
+		{"pump", "--pump", "generic A, generic B", func(c *casefile.Case) { c.Pump = setCalled("generic C") }},
 		{"speed", "--speed", "--speed 9", func(c *casefile.Case) { c.Speed = []float64{9, 9000} }},
-		{"speed", "--speed", "--speed 3", func(c *casefile.Case) { c.Pump, c.Speed = "Generic-b", []float64{0} }},
+		{"speed", "--speed", "--speed 3", func(c *casefile.Case) { c.Pump, c.Speed = setCalled("Generic-b"), []float64{0} }},
 		{"ef", "--ef", "--ef 0.25", func(c *casefile.Case) { c.EF = ptr(25.0) }},
 		{"edv_ml", "--edv-ml", "--edv-ml 220", func(c *casefile.Case) { c.EDVML = ptr(40.0) }},
 	} {

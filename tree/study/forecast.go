@@ -2,7 +2,6 @@ package study
 
 import (
 	"afterbeat/data"
-	"afterbeat/tree/pump"
 	"afterbeat/tree/support"
 )
 
@@ -16,7 +15,7 @@ type Forecast struct {
 	// Ventricle are the parameters of the ventricle, the filling line included,
 	// in the order of a table.
 	Ventricle []VentricleParameter
-	Pump      pump.Set
+	Pump      ForecastPump
 	// Native is the state of the model without a pump: Speed 0.
 	Native ForecastState
 	// Speeds has one state a speed above 0, rising.
@@ -33,7 +32,9 @@ type Forecast struct {
 	// Mismatch sets the native state of the model beside what was measured.
 	Mismatch []Mismatch
 	// Held is what is the same at every speed.
-	Held []support.Held
+	Held []ForecastHeld
+	// Matching is what was made equal to the native state at every speed.
+	Matching Matching
 	// Published sets the forecast beside published ranges.
 	Published []PublishedCheck
 	// Disproof is the one bedside measurement that would prove the forecast
@@ -42,6 +43,23 @@ type Forecast struct {
 	Draws    int    // of each kind of interval
 	Reason   string // why there is no forecast; empty where there is one
 	Warnings []data.Warning
+
+	// Modulated is the state under a speed that changes over time; nil: none was
+	// asked for.
+	Modulated *ForecastModulated
+
+	match      matching
+	modulation *modulation
+	own        ownVentricle
+	nominal    support.Coupling // natively
+}
+
+// ForecastHeld is a quantity that is the same at every speed.
+type ForecastHeld struct {
+	Quantity string
+	Unit     string
+	data.Estimate
+	Origin data.Origin
 }
 
 // VentricleParameter is one parameter of the ventricle with where it comes from.
@@ -66,6 +84,7 @@ type ForecastState struct {
 	EEPressure     data.Estimate // energy-equivalent pressure, mmHg
 	SurplusEnergy  data.Estimate // SHE, erg/cm³
 	FillingPress   data.Estimate // mmHg
+	Resistance     data.Estimate // R over the native one
 	ValveOpenTime  data.Estimate // of a beat, s
 	PumpSwing      data.Estimate // max - min of pump flow, mL/s; 0 at speed 0
 	PressureChange data.Estimate // of the mean, against the native state of the model, mmHg

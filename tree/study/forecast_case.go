@@ -4,34 +4,11 @@ import (
 	"fmt"
 	"math"
 	"slices"
-	"strings"
 
 	"afterbeat/data"
 	"afterbeat/data/casefile"
 	"afterbeat/tree/pump"
 )
-
-// standardPump is the set of coefficients where the case names none. It is
-// invented.
-const standardPump = "generic A"
-
-// pumpOf is the set that the case names. Upper and lower case, and - for a
-// blank, make no difference.
-func pumpOf(c casefile.Case) (pump.Set, error) {
-	wanted := c.Pump
-	if wanted == "" {
-		wanted = standardPump
-	}
-	plain := func(s string) string { return strings.ReplaceAll(strings.ToLower(strings.TrimSpace(s)), "-", " ") }
-	var names []string
-	for _, s := range pump.Sets() {
-		if plain(s.Name) == plain(wanted) {
-			return s, nil
-		}
-		names = append(names, s.Name)
-	}
-	return pump.Set{}, &ChoiceError{Key: "pump", What: fmt.Sprintf("there is no set of coefficients %q", data.Clean(wanted)), Hint: "sets: " + list(names)}
-}
 
 // speedSteps is the number of steps in the range of a pump where the case names
 // no speeds.
@@ -93,6 +70,7 @@ type free struct {
 	pfill, v0, edv, rmv, rav freeRange
 	volumeOrigin             data.Origin // of the end-diastolic volume
 	volumeWhy                string
+	given                    map[string]bool // symbols that the case gives
 }
 
 // 95 % half-widths of a given end-diastolic volume (relative) and ejection
@@ -124,7 +102,22 @@ func freeOf(c casefile.Case, strokeVolume float64) (free, error) {
 		f.edv = freeRange{*edv * (1 - volumeError), *edv * (1 + volumeError)}
 		f.volumeOrigin, f.volumeWhy = data.Measured, fmt.Sprintf("given, +-%.0f %% (assumed)", 100*volumeError)
 	}
-	return f, nil
+	return f, f.take(c)
+}
+
+// take narrows the ranges to what the case gives of the ventricle.
+func (f *free) take(c casefile.Case) error {
+	own, err := numbersOf("ventricle", c.Ventricle)
+	if err != nil {
+		return err
+	}
+	f.given = map[string]bool{}
+	for symbol, r := range map[string]*freeRange{"V0": &f.v0, "Pfill": &f.pfill, "Rmv": &f.rmv, "Rav": &f.rav} {
+		if v, ok := own[symbol]; ok {
+			*r, f.given[symbol] = freeRange{v, v}, true
+		}
+	}
+	return nil
 }
 
 // choice is one point of the ranges.

@@ -3,6 +3,7 @@ package study
 import (
 	"cmp"
 	"context"
+	"fmt"
 	"math"
 	"math/rand/v2"
 	"runtime"
@@ -34,6 +35,7 @@ type patient struct {
 	strokeVolume float64 // net, mL
 	ejection     float64 // s
 	relaxation   float64 // Tr/Tes; 0: one half
+	own          ownVentricle
 }
 
 // patientOf reads a patient off a flow, mL/s, and the load fitted to it.
@@ -46,18 +48,40 @@ func patientOf(m fitting.Model, v fitting.Values, pv float64, flow data.Period) 
 
 // ventricle sets up a ventricle for the patient at a point of the free ranges.
 func (p patient) ventricle(c choice, slope float64) support.Coupling {
-	return support.Coupling{
+	k := support.Coupling{
 		Ventricle: heart.Ventricle{Period: p.period, V0: c.v0, Rmv: c.rmv, Rav: c.rav},
 		Filling:   heart.Filling{Pressure: c.pfill, Slope: slope},
 		Load:      p.load,
 	}
+	p.own.into(&k.Ventricle)
+	return k
 }
 
 // setUp is a coupling whose native state is met; pump and tolerance are to come.
 func (p patient) setUp(c choice, slope, tolerance float64) (support.Coupling, error) {
 	k := p.ventricle(c, slope)
 	k.Tolerance = tolerance
+	if p.own.whole {
+		return asGiven(k)
+	}
 	return support.SetUp(k, p.asked(c))
+}
+
+// asGiven lays the filling line of a ventricle that is given through its native
+// state.
+func asGiven(k support.Coupling) (support.Coupling, error) {
+	at := k
+	at.Filling.Slope = 0
+	c, err := support.NewCoupled(at)
+	if err != nil {
+		return k, fmt.Errorf("%w: %w", support.ErrNotMet, err)
+	}
+	s, err := c.At(0)
+	if err != nil || !s.Settled || !s.ValveOpened {
+		return k, fmt.Errorf("%w: the ventricle that is given does not eject into the fitted load", support.ErrNotMet)
+	}
+	k.Filling.Flow = s.Flow()
+	return k, nil
 }
 
 // asked is what the ventricle of the patient does natively.
@@ -101,7 +125,7 @@ func (d *drawing) choose(count int) {
 // random is draw i of random error alone: the ventricle at the nominal point.
 func (d *drawing) random(i int) draw {
 	p := d.patient(d.replicates.Random[i])
-	k, err := p.setUp(d.choice, heart.RampSlope, forecastTolerance)
+	k, err := p.setUp(d.choice, p.own.slope, forecastTolerance)
 	return draw{k, d.choice, err == nil}
 }
 
@@ -110,7 +134,7 @@ func (d *drawing) random(i int) draw {
 func (d *drawing) total(i int) draw {
 	rng := newRand(d.seed, 1000+uint64(i))
 	p := d.patient(d.replicates.Total[d.chosen[i]])
-	slope := max(0, heart.RampSlope*(1+d.slopeError/z95*rng.NormFloat64()))
+	slope := max(0, p.own.slope*(1+d.slopeError/z95*rng.NormFloat64()))
 	ranges, err := freeOf(d.forecast.caseOf(), p.strokeVolume)
 	if err != nil {
 		return draw{}
@@ -130,7 +154,7 @@ const z95 = 1.959963984540054
 
 func (d *drawing) patient(r fitting.Replicate) patient {
 	p := patientOf(d.model, r.Values, r.OutflowPressure, r.Flow())
-	p.relaxation = d.nominal.relaxation
+	p.relaxation, p.own = d.nominal.relaxation, d.nominal.own
 	if math.IsNaN(p.ejection) {
 		p.ejection = d.nominal.ejection
 	}
@@ -150,13 +174,24 @@ const (
 	drawnRootSwing
 	drawnSteady
 	drawnPulsatile
+	drawnResistance // R, mmHg s/mL
+	drawnBeatPulse  // mean over the beats of max - min, mmHg
 	drawnNumbers
 )
 
 type drawn [drawnNumbers]float64
 
+// drawnOf reads a state; all is NaN of one that has no numbers.
 func drawnOf(s *support.CoupledState) drawn {
+	if missing(s) != "" {
+		var none drawn
+		for i := range none {
+			none[i] = math.NaN()
+		}
+		return none
+	}
 	return drawn{
+		drawnResistance: s.Resistance, drawnBeatPulse: s.PulsePressure(),
 		drawnMean: s.Arterial.Mean, drawnOutput: s.Flow(), drawnPulse: s.PulsePressure(),
 		drawnSHE: s.SHE, drawnEEP: s.EEP, drawnFilling: s.Filling, drawnOpen: s.ValveOpen, drawnSwing: s.PumpFlow.Swing(),
 		drawnRootSwing: s.RootFlow.Swing(), drawnSteady: s.Arterial.Mean * s.Flow(), drawnPulsatile: (s.EEP - s.Arterial.Mean) * s.Flow(),
@@ -171,6 +206,8 @@ type row struct {
 	states    []drawn // native, then one a speed
 	opened    []bool
 	limit     float64 // 1000/min
+	modulated drawn
+	steady    drawn // at the mean speed of the modulation
 	ok        bool
 }
 
@@ -201,8 +238,7 @@ func (d *drawing) rows(ctx context.Context, count int, take func(int) draw) ([]r
 func (d *drawing) row(one draw) row {
 	f := d.forecast
 	r := row{ventricle: one.coupling.Ventricle, filling: one.coupling.Filling, edv: one.choice.edv, limit: math.NaN()}
-	one.coupling.Pump = f.Pump.Pump
-	k, err := support.NewCoupled(one.coupling)
+	k, err := support.NewCoupled(f.supported(one.coupling))
 	if err != nil {
 		return r
 	}
@@ -212,11 +248,17 @@ func (d *drawing) row(one draw) row {
 		return r
 	}
 	for i := range states {
-		if !states[i].Settled {
+		if !states[i].Settled && (i == 0 || f.match.what == MatchNone) {
 			return r
 		}
 		r.states = append(r.states, drawnOf(&states[i]))
 		r.opened = append(r.opened, states[i].ValveOpened)
+	}
+	if f.own.whole {
+		r.edv = states[0].Volume.Max
+	}
+	if f.modulation != nil {
+		r.modulated, r.steady = f.modulation.drawn(k)
 	}
 	r.limit = min(valveLimit(k, states, f.farthest()), f.farthest())
 	r.ok = true
@@ -229,6 +271,9 @@ func (d *drawing) row(one draw) row {
 func valveLimit(k *support.Coupled, known []support.CoupledState, most float64) float64 {
 	opens, shut := math.NaN(), math.NaN()
 	for _, s := range known {
+		if missing(&s) != "" {
+			continue
+		}
 		if s.ValveOpened {
 			opens = s.Speed
 		} else {
@@ -242,7 +287,7 @@ func valveLimit(k *support.Coupled, known []support.CoupledState, most float64) 
 	for next := max(1.2*opens, most/8); math.IsNaN(shut); next *= 1.2 {
 		s, err := k.At(min(next, most))
 		switch {
-		case err != nil || !s.Settled:
+		case err != nil || missing(&s) != "":
 			return math.NaN()
 		case !s.ValveOpened:
 			shut = s.Speed

@@ -34,6 +34,11 @@ func (f *Forecast) intervals(ctx context.Context, d *drawing, k support.Coupling
 	}
 	for i := range len(f.Speeds) + 1 {
 		s := f.state(i)
+		random, total := met(random, i), met(total, i)
+		if min(len(random), len(total)) < int(fewDraws*float64(f.Draws)) {
+			f.unmet(s)
+			continue
+		}
 		for _, e := range s.estimates() {
 			doubt(e.into, random, total, func(r *row) float64 { return e.of(r.states[i], r.states[0]) })
 		}
@@ -45,6 +50,9 @@ func (f *Forecast) intervals(ctx context.Context, d *drawing, k support.Coupling
 		}
 		s.ValveOpenDraws = float64(opened) / float64(len(total))
 	}
+	if f.modulation != nil {
+		f.Modulated.doubt(random, total)
+	}
 	limited := func(all []row) []row {
 		return slices.DeleteFunc(slices.Clone(all), func(r row) bool { return math.IsNaN(r.limit) })
 	}
@@ -52,6 +60,20 @@ func (f *Forecast) intervals(ctx context.Context, d *drawing, k support.Coupling
 		doubt(&f.ValveLimit, random, total, func(r *row) float64 { return r.limit })
 	}
 	return nil
+}
+
+// met are the draws in which state i has numbers: without matching all of them.
+func met(all []row, i int) []row {
+	return slices.DeleteFunc(slices.Clone(all), func(r row) bool { return math.IsNaN(r.states[i][drawnMean]) })
+}
+
+// unmet says of the estimates of a state why they have no interval.
+func (f *Forecast) unmet(s *ForecastState) {
+	for _, e := range s.estimates() {
+		if !math.IsNaN(e.into.Value) {
+			e.into.Why = "what is to be matched cannot be met in many of the draws"
+		}
+	}
 }
 
 // doubt gives a value its intervals over the draws. A value that there is none
@@ -120,7 +142,14 @@ func (f *Forecast) ventricle(k support.Coupling, d *drawing, random, total []row
 		}
 		f.Ventricle = append(f.Ventricle, VentricleParameter{symbol, meaning, unit, e, data.Estimated})
 	}
+	known := func(symbol, meaning, unit string, value float64) {
+		f.Ventricle = append(f.Ventricle, VentricleParameter{symbol, meaning, unit, data.Exact(value), data.Measured})
+	}
 	drawnFrom := func(symbol, meaning, unit string, value float64, r freeRange, o data.Origin, why string) {
+		if ranges.given[symbol] {
+			known(symbol, meaning, unit, value)
+			return
+		}
 		f.Ventricle = append(f.Ventricle, VentricleParameter{symbol, meaning, unit, data.Estimate{
 			Value: value, Total: data.Interval{Low: r.low, High: r.high}, Random: data.NoInterval(), Identified: o == data.Measured, Why: why,
 		}, o})
@@ -128,19 +157,49 @@ func (f *Forecast) ventricle(k support.Coupling, d *drawing, random, total []row
 	const why = "not fixed by the traces; drawn evenly"
 	period := data.Exact(v.Period)
 	f.Ventricle = append(f.Ventricle, VentricleParameter{"T", "heart period", "s", period, data.Measured})
-	set("Emax", "end-systolic elastance", "mmHg/mL", v.Emax, func(r *row) float64 { return r.ventricle.Emax })
-	set("Emin", "diastolic elastance", "mmHg/mL", v.Emin, func(r *row) float64 { return r.ventricle.Emin })
-	set("Tes", "time to end systole", "s", v.Tes, func(r *row) float64 { return r.ventricle.Tes })
-	set("Tr", "time of relaxation, Tes/2", "s", v.Tr, func(r *row) float64 { return r.ventricle.Tr })
-	drawnFrom("EDV", "end-diastolic volume, native", "mL", d.choice.edv, ranges.edv, ranges.volumeOrigin, ranges.volumeWhy)
+	switch edv := "EDV"; {
+	case f.own.whole:
+		known("Emax", "end-systolic elastance", "mmHg/mL", v.Emax)
+		known("Emin", "diastolic elastance", "mmHg/mL", v.Emin)
+		if v.Activation == heart.Cosine {
+			known("Tes", "time to end systole", "s", v.Tes)
+			known("Tr", "time of relaxation", "s", v.Tr)
+		}
+		set(edv, "end-diastolic volume, native", "mL", f.Native.Volume.Max, func(r *row) float64 { return r.edv })
+	default:
+		set("Emax", "end-systolic elastance", "mmHg/mL", v.Emax, func(r *row) float64 { return r.ventricle.Emax })
+		set("Emin", "diastolic elastance", "mmHg/mL", v.Emin, func(r *row) float64 { return r.ventricle.Emin })
+		set("Tes", "time to end systole", "s", v.Tes, func(r *row) float64 { return r.ventricle.Tes })
+		set("Tr", fmt.Sprintf("time of relaxation, %.2g Tes", v.Tr/v.Tes), "s", v.Tr, func(r *row) float64 { return r.ventricle.Tr })
+		drawnFrom(edv, "end-diastolic volume, native", "mL", d.choice.edv, ranges.edv, ranges.volumeOrigin, ranges.volumeWhy)
+	}
 	drawnFrom("V0", "volume at no pressure", "mL", d.choice.v0, ranges.v0, data.Assumed, why)
 	drawnFrom("Pfill", "filling pressure, native", "mmHg", d.choice.pfill, ranges.pfill, data.Assumed, why)
 	drawnFrom("Rmv", "mitral valve", "mmHg s/mL", d.choice.rmv, ranges.rmv, data.Assumed, why)
 	drawnFrom("Rav", "aortic valve", "mmHg s/mL", d.choice.rav, ranges.rav, data.Assumed, why)
-	slope := heart.RampSlope * d.slopeError
-	f.Ventricle = append(f.Ventricle, VentricleParameter{"slope", "fall of filling pressure with output", "mmHg s/mL", data.Estimate{
-		Value: heart.RampSlope, Total: data.Interval{Low: max(0, heart.RampSlope-slope), High: heart.RampSlope + slope}, Random: data.NoInterval(),
-		Identified: true, Why: fmt.Sprintf("from a ramp study of 35 patients, +-%.0f %%", 100*d.slopeError),
-	}, data.Assumed})
+	if v.Rar > 0 {
+		known("Rar", "aortic valve to flow back", "mmHg s/mL", v.Rar)
+	}
+	f.Ventricle = append(f.Ventricle, f.slope(d.slopeError))
 	return nil
+}
+
+// slope is that of the filling line, with its relative error.
+func (f *Forecast) slope(relative float64) VentricleParameter {
+	half, why := f.own.slope*relative, "from a ramp study of 35 patients"
+	if f.own.slopeGiven {
+		why = "given"
+	}
+	return VentricleParameter{"slope", "fall of filling pressure with output", "mmHg s/mL", data.Estimate{
+		Value: f.own.slope, Total: data.Interval{Low: max(0, f.own.slope-half), High: f.own.slope + half}, Random: data.NoInterval(),
+		Identified: true, Why: fmt.Sprintf("%s, +-%.0f %%", why, 100*relative),
+	}, givenOr(f.own.slopeGiven, data.Assumed)}
+}
+
+// givenOr is the origin of what the case gives, or another.
+func givenOr(given bool, other data.Origin) data.Origin {
+	if given {
+		return data.Measured
+	}
+	return other
 }

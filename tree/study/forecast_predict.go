@@ -9,7 +9,6 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/casefile"
 	"afterbeat/fitting"
-	"afterbeat/tree/heart"
 	"afterbeat/tree/support"
 )
 
@@ -24,15 +23,29 @@ func Predict(ctx context.Context, c Comparison) (Forecast, error) {
 	if f.Pump, err = pumpOf(kase); err != nil {
 		return f, err
 	}
-	speeds, err := speedsOf(kase, f.Pump)
+	speeds, err := speedsOf(kase, f.Pump.Set)
 	if err != nil {
+		return f, err
+	}
+	if f.match, err = matchingOf(kase); err != nil {
+		return f, err
+	}
+	f.Matching = f.match.what
+	if f.modulation, err = f.modulationOf(kase); err != nil {
 		return f, err
 	}
 	f.Middle = middleOf(speeds)
 	for _, n := range speeds {
 		f.Speeds = append(f.Speeds, ForecastState{CoupledState: support.CoupledState{Speed: n}})
 	}
-	if f.Reason = c.Reason; f.Reason != "" {
+	period := 1.0 // of no beat, so that wrong choices are found all the same
+	if f.Reason = c.Reason; f.Reason == "" {
+		period = c.Fit.Beats.Flow.Period.Duration()
+	}
+	if f.own, err = ventricleOf(kase, period); err != nil {
+		return f, err
+	}
+	if f.Reason != "" {
 		return f.without(), nil
 	}
 	return f.predict(ctx)
@@ -72,22 +85,28 @@ func (f Forecast) predict(ctx context.Context) (Forecast, error) {
 	if err != nil {
 		return f, err
 	}
-	k, err := support.NewCoupled(coupling)
+	f.nominal = coupling
+	k, err := support.NewCoupled(f.supported(coupling))
 	if err != nil {
 		return f, err
 	}
-	if err := f.nominal(k, len(f.Comparison.Fit.Beats.Flow.Period.Samples)); err != nil {
+	if err := f.states(k, len(f.Comparison.Fit.Beats.Flow.Period.Samples)); err != nil {
 		return f, err
 	}
+	if f.Middle = f.middleMet(); f.Middle < 0 {
+		f.Reason = "at none of the speeds can be met what is to be matched; other speeds, or --match none"
+		return f.without(), nil
+	}
 	f.Mismatch = f.mismatch()
-	f.Held = held(coupling, f.Comparison.Answers[0].OutflowOrigin)
 	if err := f.intervals(ctx, d, coupling); err != nil {
 		return f, err
 	}
+	f.Held = f.held(f.Comparison.Answers[0].OutflowOrigin)
 	if f.Sensitivity, err = f.sensitivities(d, coupling); err != nil {
 		return f, err
 	}
-	coupling.Tolerance = forecastTolerance
+	coupling = f.supported(coupling)
+	coupling.Tolerance, coupling.Match = forecastTolerance, support.Match{Factor: coupling.Match.Factor}
 	if k, err = support.NewCoupled(coupling); err != nil {
 		return f, err
 	}
@@ -116,7 +135,8 @@ func (f *Forecast) drawing() (*drawing, support.Coupling, error) {
 		nominal:    patientOf(r.Model, r.Values, r.OutflowPressure, beats.Flow.Period),
 		slopeError: widths["filling-slope"],
 	}
-	if math.IsNaN(d.nominal.ejection) {
+	d.nominal.own = f.own
+	if math.IsNaN(d.nominal.ejection) && !f.own.whole {
 		return d, support.Coupling{}, fmt.Errorf("%w: the flow has no clear rise and fall to read an ejection time off", support.ErrNotMet)
 	}
 	if err := d.nominal.load.Check(); err != nil {
@@ -127,19 +147,18 @@ func (f *Forecast) drawing() (*drawing, support.Coupling, error) {
 		return d, support.Coupling{}, err
 	}
 	d.choice = ranges.nominal()
-	coupling, err := d.nominal.setUp(d.choice, heart.RampSlope, 0)
+	coupling, err := d.nominal.setUp(d.choice, f.own.slope, 0)
 	rng := newRand(d.seed, 999)
 	for range mostTries {
 		if err == nil {
 			break
 		}
 		d.choice = ranges.draw(rng.Float64)
-		coupling, err = d.nominal.setUp(d.choice, heart.RampSlope, 0)
+		coupling, err = d.nominal.setUp(d.choice, f.own.slope, 0)
 	}
-	if err == nil {
+	if err == nil && !f.own.whole {
 		coupling, err = d.relax()
 	}
-	coupling.Pump = f.Pump.Pump
 	return d, coupling, err
 }
 
@@ -148,17 +167,17 @@ func (f *Forecast) drawing() (*drawing, support.Coupling, error) {
 func (d *drawing) relax() (support.Coupling, error) {
 	low, high := d.forecast.Comparison.Fit.Beats.Pressure.Period.Extremes()
 	var err error
-	k := d.nominal.ventricle(d.choice, heart.RampSlope)
+	k := d.nominal.ventricle(d.choice, d.nominal.own.slope)
 	k.Tolerance = forecastTolerance
 	d.nominal.relaxation, err = support.RelaxTo(k, d.nominal.asked(d.choice), high-low)
 	if err != nil {
 		return k, err
 	}
-	return d.nominal.setUp(d.choice, heart.RampSlope, 0)
+	return d.nominal.setUp(d.choice, d.nominal.own.slope, 0)
 }
 
-// nominal fills the states with those of the nominal ventricle.
-func (f *Forecast) nominal(k *support.Coupled, samples int) error {
+// states fills the states with those of the nominal ventricle.
+func (f *Forecast) states(k *support.Coupled, samples int) error {
 	states, err := k.Sweep(append([]float64{0}, f.speeds()...))
 	if err != nil {
 		return err
@@ -174,9 +193,31 @@ func (f *Forecast) nominal(k *support.Coupled, samples int) error {
 	for i := range states {
 		f.state(i).take(drawnOf(&states[i]), native)
 	}
+	if f.modulation != nil {
+		if f.Modulated, err = f.modulation.nominal(k, samples, native); err != nil {
+			return err
+		}
+	}
 	f.ValveLimit = f.limit(k, states)
 	return nil
 }
+
+// middleMet is the index of the middle state, or of the next to it whose numbers
+// exist; -1 where there is none.
+func (f *Forecast) middleMet() int {
+	best := -1
+	for i := range f.Speeds {
+		if missing(&f.Speeds[i].CoupledState) != "" {
+			continue
+		}
+		if best < 0 || abs(i-f.Middle) < abs(best-f.Middle) {
+			best = i
+		}
+	}
+	return best
+}
+
+func abs(i int) int { return max(i, -i) }
 
 // state is the native state for 0, else that of a speed.
 func (f *Forecast) state(i int) *ForecastState {
@@ -197,7 +238,7 @@ func (f *Forecast) limit(k *support.Coupled, states []support.CoupledState) data
 		e.Value, e.Identified = math.NaN(), false
 		e.Why = fmt.Sprintf("the valve opens up to %.4g, twice the highest speed of the pump", f.farthest())
 	case math.IsNaN(e.Value):
-		e.Identified, e.Why = false, "no periodic state was found near it"
+		e.Identified, e.Why = false, "it was not found: no periodic state near it, or what is to be matched cannot be met there"
 	case e.Value == 0:
 		e.Value, e.Identified = math.NaN(), false
 		e.Why = "the valve does not open without a pump either"
@@ -209,6 +250,9 @@ func (f *Forecast) limit(k *support.Coupled, states []support.CoupledState) data
 func (s *ForecastState) take(now, native drawn) {
 	for _, e := range s.estimates() {
 		*e.into = data.Estimate{Value: e.of(now, native), Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: noDraws}
+		if why := missing(&s.CoupledState); why != "" {
+			e.into.Identified, e.into.Why = false, why
+		}
 	}
 	s.Against.Posing = support.CoupledPosing
 	s.ValveOpenDraws = 0
@@ -241,6 +285,7 @@ func (s *ForecastState) estimates() []drawnEstimate {
 		{&s.EEPressure, number(drawnEEP)},
 		{&s.SurplusEnergy, number(drawnSHE)},
 		{&s.FillingPress, number(drawnFilling)},
+		{&s.Resistance, retained(drawnResistance)},
 		{&s.ValveOpenTime, number(drawnOpen)},
 		{&s.PumpSwing, number(drawnSwing)},
 		{&s.PressureChange, change(drawnMean)},
@@ -285,19 +330,44 @@ func (f *Forecast) mismatch() []Mismatch {
 	}
 }
 
-// held lists what is the same at every speed.
-func held(k support.Coupling, outflow data.Origin) []support.Held {
+// held lists what is the same at every speed. What is not identified keeps its
+// interval.
+func (f *Forecast) held(outflow data.Origin) []ForecastHeld {
+	k := f.nominal
 	l := k.Load
-	all := []support.Held{{Quantity: "R", Value: l.R, Unit: "mmHg s/mL", Origin: data.Estimated}, {Quantity: "C", Value: l.C, Unit: "mL/mmHg", Origin: data.Estimated}}
+	still := func(v float64) data.Estimate {
+		return data.Estimate{Value: v, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: "held"}
+	}
+	var all []ForecastHeld
+	add := func(quantity, unit string, e data.Estimate, o data.Origin) {
+		all = append(all, ForecastHeld{quantity, unit, e, o})
+	}
+	if !f.match.byResistance() {
+		add("R", "mmHg s/mL", still(l.R*f.match.factor), data.Estimated)
+	}
+	add("C", "mL/mmHg", still(l.C), data.Estimated)
 	if l.Kind != support.WK2 {
-		all = append(all, support.Held{Quantity: "Zc", Value: l.Zc, Unit: "mmHg s/mL", Origin: data.Estimated})
+		add("Zc", "mmHg s/mL", still(l.Zc), data.Estimated)
 	}
 	if l.Kind == support.WK4S || l.Kind == support.WK4P {
-		all = append(all, support.Held{Quantity: "L", Value: l.L, Unit: "mmHg s2/mL", Origin: data.Estimated})
+		add("L", "mmHg s2/mL", still(l.L), data.Estimated)
 	}
-	return append(all,
-		support.Held{Quantity: "outflow pressure", Value: l.OutflowPressure, Unit: "mmHg", Origin: outflow},
-		support.Held{Quantity: "heart rate", Value: 60 / k.Ventricle.Period, Unit: "1/min", Origin: data.Measured},
-		support.Held{Quantity: "contractility, Emax", Value: k.Ventricle.Emax, Unit: "mmHg/mL", Origin: data.Estimated},
-	)
+	add("outflow pressure", "mmHg", still(l.OutflowPressure), outflow)
+	add("heart rate", "1/min", still(60/k.Ventricle.Period), data.Measured)
+	for _, p := range f.Ventricle {
+		if p.Symbol == "Emax" {
+			e := p.Estimate
+			if e.Identified {
+				e.Total, e.Random, e.Why = data.NoInterval(), data.NoInterval(), "held"
+			}
+			add("contractility, Emax", p.Unit, e, p.Origin)
+		}
+	}
+	switch f.match.what {
+	case MatchFlow:
+		add("mean flow", "L/min", still(litresPerMinute*k.Filling.Flow), data.Estimated)
+	case MatchPressure:
+		add("mean pressure", "mmHg", still(f.Native.Arterial.Mean), data.Estimated)
+	}
+	return all
 }

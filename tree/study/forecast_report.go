@@ -40,6 +40,8 @@ type CoupledReport struct {
 	PumpFlow    RangeReport    `json:"pump_flow"`
 	PumpSwing   EstimateReport `json:"pump_flow_swing"`
 	ValveFlow   ValveReport    `json:"valve_flow"`
+	Systemic    Number         `json:"systemic_flow"` // into the arteries, mL/s
+	Loop        Number         `json:"loop_flow"`     // back through the aortic valve, mL/s
 	Volume      VolumeReport   `json:"volume"`
 	StrokeWork  Number         `json:"stroke_work"`
 	BackFlow    bool           `json:"back_flow"`
@@ -80,14 +82,27 @@ type PublishedReport struct {
 
 // ForecastReport is what the coupled states have in common.
 type ForecastReport struct {
-	Reason      *string           `json:"reason"`
-	Draws       int               `json:"draws"`
-	MiddleSpeed Number            `json:"middle_speed"`
-	ValveLimit  EstimateReport    `json:"valve_limit"`
-	Mismatch    []MismatchReport  `json:"mismatch"`
-	Sensitivity []LeaningReport   `json:"sensitivity"`
-	Published   []PublishedReport `json:"published"`
-	Disproof    string            `json:"disproof"`
+	Reason      *string               `json:"reason"`
+	Draws       int                   `json:"draws"`
+	MiddleSpeed Number                `json:"middle_speed"`
+	ValveLimit  EstimateReport        `json:"valve_limit"`
+	Mismatch    []MismatchReport      `json:"mismatch"`
+	Sensitivity []LeaningReport       `json:"sensitivity"`
+	Published   []PublishedReport     `json:"published"`
+	Disproof    string                `json:"disproof"`
+	Match       string                `json:"match"`
+	Modulated   *ModulatedStudyReport `json:"modulated"`
+}
+
+// ModulatedStudyReport is what a modulated speed has beyond its states.
+type ModulatedStudyReport struct {
+	Words       string         `json:"words"`
+	Locked      int            `json:"locked_beats"` // 0: free
+	Window      Number         `json:"window_s"`
+	MeanSpeed   Number         `json:"mean_speed"`
+	BeatPulse   EstimateReport `json:"pulse_pressure_beat_mean"`
+	SteadyPulse EstimateReport `json:"pulse_pressure_at_mean_speed"`
+	Settled     bool           `json:"settled"`
 }
 
 // report puts the forecast into the report of a study: its states among the
@@ -95,7 +110,7 @@ type ForecastReport struct {
 func (f *Forecast) report(r *Report, site data.Site) {
 	out := ForecastReport{
 		Reason: reason(f.Reason), Draws: f.Draws, MiddleSpeed: nan, ValveLimit: estimateReport(f.ValveLimit),
-		Mismatch: []MismatchReport{}, Sensitivity: []LeaningReport{}, Published: []PublishedReport{}, Disproof: f.Disproof,
+		Mismatch: []MismatchReport{}, Sensitivity: []LeaningReport{}, Published: []PublishedReport{}, Disproof: f.Disproof, Match: string(f.Matching),
 	}
 	r.Forecast = &out
 	if f.Reason != "" {
@@ -116,7 +131,7 @@ func (f *Forecast) report(r *Report, site data.Site) {
 		r.Ventricle = append(r.Ventricle, VentricleReport{p.Symbol, p.Meaning, p.Unit, estimateReport(p.Estimate), p.Origin})
 	}
 	p := f.Pump
-	r.Pump = &PumpReport{p.Name, p.Origin, data.Assumed, Number(p.A), Number(p.B), Number(p.C), Number(p.Resistance), Number(p.Inertance), Number(p.Low), Number(p.High)}
+	r.Pump = &PumpReport{p.Name, p.Origin, givenOr(p.Given["a"], data.Assumed), Number(p.A), Number(p.B), Number(p.C), Number(p.Resistance), Number(p.Inertance), Number(p.Low), Number(p.High)}
 	for i := range len(f.Speeds) + 1 {
 		s := f.state(i)
 		r.Supported = append(r.Supported, s.stateReport(site))
@@ -124,6 +139,12 @@ func (f *Forecast) report(r *Report, site data.Site) {
 		if i > 0 {
 			r.Comparison = append(r.Comparison, f.comparisonReport(s))
 		}
+	}
+	if m := f.Modulated; m != nil {
+		out.Modulated = &ModulatedStudyReport{m.Words, m.Locked, Number(m.Window), Number(m.State.Speed), estimateReport(m.BeatPulse), estimateReport(m.Steady.PulsePressure), m.State.Settled}
+		state, against := m.State.stateReport(site), f.comparisonReport(&m.State)
+		state.Posing, against.Posing, state.Coupled = support.ModulatedPosing, support.ModulatedPosing, nil
+		r.Supported, r.Comparison = append(r.Supported, state), append(r.Comparison, against)
 	}
 }
 
@@ -133,7 +154,7 @@ func (f *Forecast) heartRate() float64 { return 60 / f.Comparison.Fit.Beats.Flow
 func (s *ForecastState) stateReport(site data.Site) StateReport {
 	r := StateReport{
 		Posing: support.CoupledPosing, Share: nan, Site: site,
-		Pressure: waveReport(beat.Measure(s.Waves.Pressure), s.Arterial), Flow: waveReport(beat.Measure(s.Waves.RootFlow), s.RootFlow),
+		Pressure: waveReport(s.Waves.Pressure, s.Arterial), Flow: waveReport(s.Waves.RootFlow, s.RootFlow),
 		PumpFlow: Number(s.CoupledState.PumpFlow.Mean),
 		EEP:      estimateReport(s.EEPressure), SHE: estimateReport(s.SurplusEnergy),
 		MeanPressure: estimateReport(s.MeanPressure), PulsePressure: estimateReport(s.PulsePressure),
@@ -144,16 +165,23 @@ func (s *ForecastState) stateReport(site data.Site) StateReport {
 		ValveOpen: estimateReport(s.ValveOpenTime), OpenDraws: Number(s.ValveOpenDraws),
 		PumpFlow: rangeReport(c.PumpFlow), PumpSwing: estimateReport(s.PumpSwing),
 		ValveFlow: ValveReport{Number(c.ValveFlow.Mean), Number(c.ValveFlow.Max), c.ValveOpened, Number(c.ValveOpen)},
-		Volume:    VolumeReport{Number(c.Volume.Min), Number(c.Volume.Max)}, StrokeWork: Number(c.StrokeWork),
+		Systemic:  Number(c.Flow()), Loop: Number(c.Loop),
+		Volume: VolumeReport{Number(c.Volume.Min), Number(c.Volume.Max)}, StrokeWork: Number(c.StrokeWork),
 		BackFlow: c.BackFlow(), Suction: c.Suction, Ventricular: rangeReport(c.Ventricular),
 	}
 	return r
 }
 
 // waveReport has the indices of the samples, with mean and extremes of the
-// continuous beat.
-func waveReport(m beat.Measures, whole support.Range) MeasuresReport {
-	r := measuresReport(m)
+// continuous beat; no indices where there are no samples.
+func waveReport(wave data.Period, whole support.Range) MeasuresReport {
+	r := MeasuresReport{
+		Harmonics: []Number{}, GoslingPI: nan, PourcelotRI: nan, SystolicRatio: nan, FormFactor: nan,
+		PowerIndex: nan, TimeToPeak: nan, MaxSlope: nan, Augmentation: nan, Remarks: map[beat.Index]string{},
+	}
+	if len(wave.Samples) > 0 {
+		r = measuresReport(beat.Measure(wave))
+	}
 	r.Mean, r.Min, r.Max, r.Amplitude = Number(whole.Mean), Number(whole.Min), Number(whole.Max), Number(whole.Swing())
 	return r
 }
@@ -175,8 +203,18 @@ func (s *ForecastState) powerReport(period float64) PowerReport {
 
 func (f *Forecast) comparisonReport(s *ForecastState) ComparisonReport {
 	r := ComparisonReport{Posing: support.CoupledPosing, Share: nan, Speed: Number(s.Speed), Root: rootReport(&s.Against)}
+	r.Matched = string(f.Matching)
 	for _, h := range f.Held {
-		r.Held = append(r.Held, HeldReport{h.Quantity, Number(h.Value), h.Unit, h.Origin})
+		r.Held = append(r.Held, heldReport(h))
+	}
+	r.Changed = []HeldReport{
+		heldReport(ForecastHeld{"filling pressure", "mmHg", s.FillingPress, data.Estimated}),
+		heldReport(ForecastHeld{"resistance R over the native one", "", s.Resistance, data.Estimated}),
 	}
 	return r
+}
+
+func heldReport(h ForecastHeld) HeldReport {
+	e := h.Estimate
+	return HeldReport{h.Quantity, Number(e.Value), h.Unit, h.Origin, Number(e.Total.Low), Number(e.Total.High), e.Identified}
 }

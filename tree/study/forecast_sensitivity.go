@@ -8,7 +8,6 @@ import (
 	"slices"
 
 	"afterbeat/fitting"
-	"afterbeat/tree/heart"
 	"afterbeat/tree/support"
 )
 
@@ -41,6 +40,9 @@ func (f *Forecast) sensitivities(d *drawing, nominal support.Coupling) ([]Foreca
 		if err != nil {
 			return nil, err
 		}
+		if math.IsNaN(left) { // what is matched cannot be met
+			continue
+		}
 		out = append(out, ForecastSensitivity{Assumption: m.assumption, Change: m.change, RetainedPulse: left, Difference: left - retained, PulsePressure: pulse, Beyond: m.beyond})
 	}
 	slices.SortStableFunc(out, func(a, b ForecastSensitivity) int {
@@ -52,7 +54,7 @@ func (f *Forecast) sensitivities(d *drawing, nominal support.Coupling) ([]Foreca
 // movedPulse is the pulse pressure at the middle speed, mmHg, and what it is of
 // the native one.
 func (f *Forecast) movedPulse(native support.Coupling, change func(*support.Coupling)) (pulse, retained float64, err error) {
-	native.Pump = f.Pump.Pump
+	native = f.supported(native)
 	at := func(c support.Coupling, speed float64) float64 {
 		k, e := support.NewCoupled(c)
 		if e != nil {
@@ -61,7 +63,7 @@ func (f *Forecast) movedPulse(native support.Coupling, change func(*support.Coup
 		}
 		s, e := k.At(speed)
 		err = errors.Join(err, e)
-		return s.PulsePressure()
+		return drawnOf(&s)[drawnPulse]
 	}
 	before := at(native, 0)
 	if change != nil {
@@ -73,7 +75,7 @@ func (f *Forecast) movedPulse(native support.Coupling, change func(*support.Coup
 
 // forecastMoves lists the assumptions moved.
 func (f *Forecast) forecastMoves(d *drawing, nominal support.Coupling) []forecastMove {
-	base := forecastMove{patient: d.nominal, choice: d.choice, slope: heart.RampSlope}
+	base := forecastMove{patient: d.nominal, choice: d.choice, slope: f.own.slope}
 	var all []forecastMove
 	move := func(assumption, change string, apply func(*forecastMove)) {
 		m := base
@@ -103,6 +105,11 @@ func (f *Forecast) forecastMoves(d *drawing, nominal support.Coupling) []forecas
 	}
 	move("filling slope", "0, constant filling", func(m *forecastMove) { m.slope, m.beyond = 0, true })
 	f.movesOfRanges(d, move)
+	if !f.own.whole {
+		for _, relaxation := range []float64{support.QuickestRelaxation, support.SlowestRelaxation} {
+			move("relaxation, Tr", fmt.Sprintf("%.2g Tes", relaxation), func(m *forecastMove) { m.patient.relaxation = relaxation })
+		}
+	}
 	mean := f.Speeds[f.Middle].Arterial.Mean
 	move("compliance", fmt.Sprintf("C at %.0f mmHg", mean), func(m *forecastMove) {
 		m.supported = func(k *support.Coupling) { k.Load.C *= complianceRatio(f.Native.Arterial.Mean, mean) }
@@ -127,6 +134,9 @@ func (f *Forecast) movesOfRanges(d *drawing, move func(assumption, change string
 		{"mitral valve, Rmv", "mmHg s/mL", ranges.rmv, func(c *choice) *float64 { return &c.rmv }},
 		{"aortic valve, Rav", "mmHg s/mL", ranges.rav, func(c *choice) *float64 { return &c.rav }},
 	} {
+		if one.r.low == one.r.high || f.own.whole && one.name == "end-diastolic volume" { // given, or it follows
+			continue
+		}
 		for _, end := range []float64{one.r.low, one.r.high} {
 			move(one.name, fmt.Sprintf("%.3g %s", end, one.unit), func(m *forecastMove) { *one.of(&m.choice) = end })
 		}

@@ -49,6 +49,9 @@ func genericA(t testing.TB) pump.Set {
 	return p
 }
 
+// setCalled is the choice of a set of coefficients.
+func setCalled(set string) map[string]string { return map[string]string{"set": set} }
+
 // recorded is the case of the patient: 24 beats of native pressure and flow at
 // the root, 200 samples a second, with noise.
 func (p coupledPatient) recorded(t testing.TB) (casefile.Case, folder) {
@@ -184,7 +187,7 @@ func TestForecastLiesWithinPublishedRanges(t *testing.T) {
 
 // A forecast that leaves the published ranges says so.
 func TestForecastOutsidePublishedRangesIsWarnedOf(t *testing.T) {
-	s := demoWith(t, func(c *casefile.Case) { c.Pump, c.Speed, c.Replicates = "generic B", nil, ptr(fewest) })
+	s := demoWith(t, func(c *casefile.Case) { c.Pump, c.Speed, c.Replicates = setCalled("generic B"), nil, ptr(fewest) })
 	outside := 0
 	for _, p := range s.Forecast.Published {
 		if p.Reason == "" && !p.Inside() {

@@ -47,6 +47,9 @@ func (f *Forecast) warnings() []data.Warning {
 			})
 		}
 	}
+	if f.Modulated != nil {
+		out = append(out, f.Modulated.warning()...)
+	}
 	return slices.Concat(out, f.volumesDisagree(), f.beyond())
 }
 

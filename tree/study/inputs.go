@@ -7,6 +7,7 @@ import (
 
 	"afterbeat/data"
 	"afterbeat/data/casefile"
+	"afterbeat/tree/support"
 )
 
 // Inputs is what a study starts from: the choices, the recording as read, and
@@ -15,6 +16,8 @@ type Inputs struct {
 	Case      casefile.Case
 	Recording *data.Recording
 	Excluded  []data.Span
+	// Modulation is what the file of a modulated speed holds; nil: none is named.
+	Modulation *support.Modulation
 }
 
 // Read reads the files that a case names. read returns the bytes of a file by
@@ -37,8 +40,21 @@ func Read(c casefile.Case, read func(name string) ([]byte, error)) (Inputs, erro
 	in.Recording, err = data.ReadCSV(c.Recording, bytes.NewReader(content), data.ReadOptions{
 		Time: c.Time, Rate: rate, Units: c.Unit,
 	})
-	if err != nil || c.Exclude == "" {
+	if err != nil {
 		return in, err
+	}
+	if name := c.Modulation["file"]; name != "" {
+		if content, err = read(name); err != nil {
+			return in, err
+		}
+		m, err := ReadModulation(baseName(name), content)
+		if err != nil {
+			return in, err
+		}
+		in.Modulation = &m
+	}
+	if c.Exclude == "" {
+		return in, nil
 	}
 	if content, err = read(c.Exclude); err != nil {
 		return in, err

@@ -13,6 +13,7 @@ import (
 	"afterbeat/data/casefile"
 	"afterbeat/data/fault"
 	"afterbeat/data/unit"
+	"afterbeat/tree/support"
 )
 
 // Intake is the recording made ready: calibrated, on an even clock, with the
@@ -38,13 +39,15 @@ type Intake struct {
 	// Span is what is used of the clock; Excluded are the stretches left out of it.
 	Span     data.Span
 	Excluded []data.Span
-	Warnings []data.Warning
+	// Modulation is that of the inputs.
+	Modulation *support.Modulation
+	Warnings   []data.Warning
 }
 
 // TakeIn makes a recording ready. It never changes the recording.
 func TakeIn(in Inputs) (Intake, error) {
 	c := in.Case
-	out := Intake{Recording: in.Recording, Case: c, Clock: in.Recording.Clock(), Excluded: in.Excluded}
+	out := Intake{Recording: in.Recording, Case: c, Clock: in.Recording.Clock(), Excluded: in.Excluded, Modulation: in.Modulation}
 	channels, err := corrected(in.Recording.Channels, c)
 	if err != nil {
 		return out, err

@@ -2,6 +2,7 @@ package study
 
 import (
 	"fmt"
+	"maps"
 	"path/filepath"
 	"slices"
 
@@ -31,7 +32,7 @@ func (s Study) Note() casenote.Note {
 		n.Sections = append(n.Sections, casenote.Section{Title: "Forecast", Words: []data.Text{data.Clean("Not computed when this note was made.")}})
 	}
 	if s.Comparison != nil {
-		n.Sections = append(n.Sections, s.Comparison.sections()...)
+		n.Sections = append(n.Sections, s.Comparison.sections(s.Forecast)...)
 	}
 	n.Reproduce = s.reproduce("study")
 	return n
@@ -74,6 +75,10 @@ func (s Study) reproduce(command string) []string {
 	c := s.Inputs.Case
 	if c.Exclude != "" {
 		c.Exclude = beside(c.Recording, c.Exclude)
+	}
+	if file := c.Modulation["file"]; file != "" {
+		c.Modulation = maps.Clone(c.Modulation)
+		c.Modulation["file"] = beside(c.Recording, file)
 	}
 	return c.Command(command, baseName(c.Recording))
 }

@@ -122,6 +122,11 @@ type HeldReport struct {
 	Value    Number      `json:"value"`
 	Unit     string      `json:"unit"`
 	Origin   data.Origin `json:"origin"`
+	// Low, High and Identified are the doubt of what is not fixed by the traces;
+	// null where it stands with the fit.
+	Low        Number `json:"low"`
+	High       Number `json:"high"`
+	Identified bool   `json:"identified"`
 }
 
 // ComparisonReport is the comparison of one supported state.
@@ -131,7 +136,11 @@ type ComparisonReport struct {
 	Speed          Number         `json:"speed"` // 1000/min; null where it is not
 	ByConstruction bool           `json:"by_construction"`
 	Held           []HeldReport   `json:"held"`
-	Root           RootComparison `json:"root"`
+	// Matched is what is made equal to the native state; Changed is what differs
+	// from it to make it so, or follows.
+	Matched string         `json:"matched"`
+	Changed []HeldReport   `json:"changed"`
+	Root    RootComparison `json:"root"`
 }
 
 // PowerReport is the power of the arterial side in one state, mmHg mL/s.

@@ -154,8 +154,9 @@ func comparisonReport(a support.Answer, i int) ComparisonReport {
 		Root: rootReport(&c),
 	}
 	for _, h := range a.Held() {
-		r.Held = append(r.Held, HeldReport{h.Quantity, Number(h.Value), h.Unit, h.Origin})
+		r.Held = append(r.Held, HeldReport{h.Quantity, Number(h.Value), h.Unit, h.Origin, nan, nan, true})
 	}
+	r.Matched, r.Changed = string(MatchFlow), []HeldReport{}
 	return r
 }
 

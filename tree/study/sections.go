@@ -133,8 +133,9 @@ func plain(v float64) casenote.Cell {
 	return casenote.Cell{Number: &casenote.Number{Estimate: e, Origin: data.Estimated}}
 }
 
-// sections set the native state beside the supported ones.
-func (c Comparison) sections() []casenote.Section {
+// sections set the native state beside the supported ones; of what is held, only
+// where no forecast says it for both.
+func (c Comparison) sections(f *Forecast) []casenote.Section {
 	if c.Reason != "" {
 		return []casenote.Section{{
 			Title: "Native against supported",
@@ -144,6 +145,9 @@ func (c Comparison) sections() []casenote.Section {
 	var out []casenote.Section
 	for _, a := range c.Answers {
 		out = append(out, a.Sections()...)
+	}
+	if f != nil && f.Reason == "" {
+		return append(out, f.heldSection())
 	}
 	return append(out, c.Answers[0].HeldSection())
 }

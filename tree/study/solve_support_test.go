@@ -46,7 +46,7 @@ Rc = 0.12
 Lc = 0.035
 `
 
-const modulation = "time_s,speed_1000_per_min\n0,8\n0.2,9\n0.4,10\n0.6,9\n"
+const threeSpeeds = "time_s,speed_1000_per_min\n0,8\n0.2,9\n0.4,10\n0.6,9\n"
 
 func solveSupport(t *testing.T, spec string) (SolvedSupport, error) {
 	t.Helper()
@@ -58,7 +58,7 @@ func solveSupport(t *testing.T, spec string) (SolvedSupport, error) {
 		if name != "speed.csv" {
 			return nil, &data.FileError{File: name, What: "cannot be read"}
 		}
-		return []byte(modulation), nil
+		return []byte(threeSpeeds), nil
 	})
 }
 
@@ -290,7 +290,7 @@ func TestWhatIsNoSupportSpec(t *testing.T) {
 }
 
 func TestReadModulation(t *testing.T) {
-	m, err := ReadModulation("speed.csv", []byte(modulation))
+	m, err := ReadModulation("speed.csv", []byte(threeSpeeds))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -315,7 +315,7 @@ func TestReadModulation(t *testing.T) {
 }
 
 func FuzzReadModulation(f *testing.F) {
-	f.Add([]byte(modulation))
+	f.Add([]byte(threeSpeeds))
 	f.Add([]byte("\ufefftime_s, speed_1000_per_min\n\"0\",8\n1,9\n"))
 	f.Fuzz(func(t *testing.T, content []byte) {
 		m, err := ReadModulation("speed.csv", content)

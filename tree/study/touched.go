@@ -43,8 +43,17 @@ func withoutFit(c casefile.Case) casefile.Case {
 // withoutForecast is the case without the choices that bear on the forecast
 // alone.
 func withoutForecast(c casefile.Case) casefile.Case {
-	c.EDVML, c.EF, c.Pump, c.Speed = nil, nil, "", nil
+	c.EDVML, c.EF, c.Pump, c.Ventricle, c.Speed, c.Match, c.HoldResistance = nil, nil, nil, nil, nil, "", nil
+	c.Modulation = only(c.Modulation, "file") // which is read with the recording
 	return c
+}
+
+// only keeps one entry of a table.
+func only(table map[string]string, name string) map[string]string {
+	if v, ok := table[name]; ok {
+		return map[string]string{name: v}
+	}
+	return nil
 }
 
 func same(a, b casefile.Case) bool { return reflect.DeepEqual(a, b) }

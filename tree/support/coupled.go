@@ -67,6 +67,7 @@ type Coupled struct {
 	haveLast bool
 	// lineKnown tells that the flow of the filling line is known.
 	lineKnown bool
+	trace     *Trace // of a modulation; nil: nobody asks
 }
 
 // NewCoupled checks a coupling, and settles the flow of its filling line. Errors

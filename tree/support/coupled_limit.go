@@ -46,5 +46,5 @@ func (k *Coupled) ValveLimit(opens, shut float64) (float64, error) {
 // was found there.
 func (k *Coupled) opens(speed float64) (opened, settled bool, err error) {
 	s, err := k.At(speed)
-	return s.ValveOpened, s.Settled, err
+	return s.ValveOpened, s.Settled && !s.Missed, err
 }

@@ -8,9 +8,9 @@ import (
 	"afterbeat/tree/heart"
 )
 
-// Match says what is made equal to a given value wherever the pump runs, and
-// Resistance says how. The zero Match makes nothing equal: output and pressure
-// follow from the filling line.
+// Match says what is made equal to a given value wherever the pump runs, and by
+// what. The zero Match makes nothing equal: output and pressure follow from the
+// filling line.
 type Match struct {
 	// Flow is a mean flow into the arteries, mL/s, met by another filling
 	// pressure than that of the line; 0: not matched.
@@ -18,6 +18,9 @@ type Match struct {
 	// Pressure is a mean arterial pressure, mmHg, met by another resistance R,
 	// at the filling pressure of the line; 0: not matched.
 	Pressure float64
+	// Factor is R with the pump running over that of the load; 0: 1. It does not
+	// go with a Pressure.
+	Factor float64
 }
 
 // highestFilling is the highest filling pressure at which a flow is looked for,
@@ -25,12 +28,24 @@ type Match struct {
 const highestFilling = 60
 
 // None tells that nothing is matched.
-func (m Match) None() bool { return m == Match{} }
+func (m Match) None() bool { return m.Flow == 0 && m.Pressure == 0 }
+
+// resistance is R with the pump running.
+func (m Match) resistance(r float64) float64 {
+	if m.Factor > 0 {
+		return r * m.Factor
+	}
+	return r
+}
 
 func (m Match) check() error {
 	switch {
 	case m.Flow != 0 && m.Pressure != 0:
 		return fmt.Errorf("mean flow and mean pressure cannot both be matched by one change")
+	case m.Pressure != 0 && m.Factor != 0:
+		return fmt.Errorf("a mean pressure is matched by the resistance, which a factor fixes: match the flow that belongs to the pressure")
+	case !(m.Factor >= 0) || math.IsInf(m.Factor, 0):
+		return fmt.Errorf("a factor of %v on the resistance is not above 0", m.Factor)
 	case !(m.Flow >= 0) || math.IsInf(m.Flow, 0):
 		return fmt.Errorf("a mean flow of %v mL/s to match is not above 0", m.Flow)
 	case !(m.Pressure >= 0) || math.IsInf(m.Pressure, 0):
@@ -95,8 +110,8 @@ func (a toPressure) Lowest() float64              { return 1 }
 func (a toPressure) Highest() float64             { return a.over / (leastResistance + a.inSeries) }
 func (a toPressure) Guess() float64               { return min(max(a.Lowest(), a.line.Flow), a.Highest()) }
 
-// seriesResistance is Z(0) - R.
-func (w Windkessel) seriesResistance() float64 {
+// SeriesResistance is Z(0) - R, mmHg s/mL.
+func (w Windkessel) SeriesResistance() float64 {
 	if w.Kind == WK3 || w.Kind == WK4S {
 		return w.Zc
 	}
@@ -110,11 +125,14 @@ func (k *Coupled) aim(speed float64) (open bool) {
 	was := s.line
 	s.line = onLine{k.Filling, k.Load.R}
 	open = k.Filling.Slope > 0
+	if speed > 0 {
+		s.line = onLine{k.Filling, k.Match.resistance(k.Load.R)}
+	}
 	if speed > 0 && k.Match.Flow > 0 {
-		s.line, open = toFlow{k.Match.Flow, k.Load.R, k.Filling.Pressure}, true
+		s.line, open = toFlow{k.Match.Flow, k.Match.resistance(k.Load.R), k.Filling.Pressure}, true
 	}
 	if speed > 0 && k.Match.Pressure > 0 {
-		s.line, open = toPressure{k.Filling, k.Match.Pressure - k.Load.OutflowPressure, k.Load.seriesResistance()}, true
+		s.line, open = toPressure{k.Filling, k.Match.Pressure - k.Load.OutflowPressure, k.Load.SeriesResistance()}, true
 	}
 	if s.line != was { // the last place means something else
 		s.known, k.haveLast = false, false

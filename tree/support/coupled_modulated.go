@@ -15,10 +15,15 @@ type Modulated struct {
 	Arterial              Range   // Pao, mmHg
 	PumpFlow              Range   // mL/s
 	ValveFlow             Range   // mL/s
+	RootFlow              Range   // Qav + Qp, mL/s
 	PulsePressure         float64 // max - min over the window, mmHg
 	PulsePressureBeatMean float64 // mean over the beats of their max - min, mmHg
 	EEP, SHE              float64 // mmHg, erg/cm³
 	Filling               float64 // mean of Pfill, mmHg
+	Resistance            float64 // R, mmHg s/mL
+	ValveOpened           bool    // in any beat of the window
+	ValveOpen             float64 // mean over the beats, s
+	Missed                bool    // what was to be matched is not
 	// Settled tells that the state came back after the locked beats, or that the
 	// measures of a free window were stable.
 	Settled bool
@@ -87,13 +92,28 @@ func (k *Coupled) locked(m *Modulation, beats int) (Modulated, error) {
 	s.impose(&o.start)
 	for i := range beats {
 		s.since = float64(i) * k.Ventricle.Period
-		var b books
+		b := books{trace: k.trace}
 		if !s.booked(&y, &b) {
 			return w.measures(false), nil
 		}
 		w.add(&b)
 	}
-	return w.measures(o.settled && s.cameBack(&y, &o.start)), nil
+	r := w.measures(o.settled && s.cameBack(&y, &o.start))
+	r.Missed, r.Resistance = o.missed, s.r
+	return r, nil
+}
+
+// ModulateTraced is [Coupled.Modulate], locked, with the signals of the window in
+// that many samples a beat. It panics on none.
+func (k *Coupled) ModulateTraced(m Modulation, locked, samples int) (Modulated, Trace, error) {
+	if samples < 1 || locked < 1 {
+		panic("support: a trace needs samples, and a modulation that is locked")
+	}
+	k.trace = newTrace(samples, locked, k.Ventricle.Period)
+	r, err := k.Modulate(m, locked)
+	t := *k.trace
+	k.trace = nil
+	return r, t, err
 }
 
 // The shortest and the longest window of a free modulation, in beats, and how
@@ -166,6 +186,7 @@ type window struct {
 	all   books
 	beats int
 	pulse float64 // sum of the pulse pressures of the beats, mmHg
+	open  float64 // sum of the times that the aortic valve is open, s
 }
 
 func (w *window) add(b *books) {
@@ -175,6 +196,8 @@ func (w *window) add(b *books) {
 	w.all.join(b)
 	w.beats++
 	w.pulse += b.of(sigPao).Swing()
+	open, _ := b.opening()
+	w.open += open
 }
 
 func (w *window) measures(settled bool) Modulated {
@@ -182,7 +205,7 @@ func (w *window) measures(settled bool) Modulated {
 		none := math.NaN()
 		nothing := Range{none, none, none}
 		return Modulated{
-			Window: none, Arterial: nothing, PumpFlow: nothing, ValveFlow: nothing,
+			Window: none, Arterial: nothing, PumpFlow: nothing, ValveFlow: nothing, RootFlow: nothing, ValveOpen: none,
 			PulsePressure: none, PulsePressureBeatMean: none, EEP: none, SHE: none, Filling: none,
 		}
 	}
@@ -192,6 +215,7 @@ func (w *window) measures(settled bool) Modulated {
 		Window: w.all.time, Arterial: p, PumpFlow: w.all.of(sigPump), ValveFlow: w.all.of(sigValve),
 		PulsePressure: p.Swing(), PulsePressureBeatMean: w.pulse / float64(w.beats),
 		EEP: p.Mean + surplus, SHE: unit.DynPerMmHg * surplus,
+		RootFlow: w.all.of(sigRoot), ValveOpened: w.open > 0, ValveOpen: w.open / float64(w.beats),
 		Filling: w.all.of(sigFill).Mean, Settled: settled,
 	}
 }

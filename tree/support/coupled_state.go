@@ -75,7 +75,7 @@ func (k *Coupled) stateOf(o orbit, speed float64, b *books) CoupledState {
 		Arterial: b.of(sigPao), PumpFlow: b.of(sigPump), ValveFlow: b.of(sigValve), RootFlow: b.of(sigRoot),
 		Volume: b.of(sigVolume), Ventricular: b.of(sigPlv), Filling: k.shooter.fill, Resistance: k.shooter.r, Missed: o.missed,
 		StrokeWork: b.power[powVentricle],
-		EEP: b.of(sigPao).Mean + surplus, SHE: unit.DynPerMmHg * surplus,
+		EEP:        b.of(sigPao).Mean + surplus, SHE: unit.DynPerMmHg * surplus,
 		Energy: CoupledEnergy{
 			Filling: b.power[powFilling], Ventricle: b.power[powVentricle], Pump: b.power[powHead],
 			Mitral: b.power[powMitral], Aortic: b.power[powAortic], Cannula: b.power[powCannula],

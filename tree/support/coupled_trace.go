@@ -22,10 +22,7 @@ func (k *Coupled) Trace(s CoupledState, n int) Trace {
 	if n < 1 {
 		panic(fmt.Sprintf("support: %d samples of a beat", n))
 	}
-	period := func() data.Period {
-		return data.Period{Samples: make([]float64, 0, n), Rate: float64(n) / k.Ventricle.Period}
-	}
-	t := &Trace{period(), period(), period(), period(), period()}
+	t := newTrace(n, 1, k.Ventricle.Period)
 	r := &k.shooter.run
 	r.drive = drive{running: s.Speed > 0, speed: s.Speed, fill: s.Filling}
 	b := books{trace: t}
@@ -35,15 +32,23 @@ func (k *Coupled) Trace(s CoupledState, n int) Trace {
 	return *t
 }
 
+// newTrace has room for n samples in each of a number of beats of a period, s.
+func newTrace(n, beats int, period float64) *Trace {
+	empty := func() data.Period {
+		return data.Period{Samples: make([]float64, 0, n*beats), Rate: float64(n) / period}
+	}
+	return &Trace{empty(), empty(), empty(), empty(), empty()}
+}
+
 // add samples the step just taken, its end excluded.
 func (t *Trace) add(r *run) {
 	s := &r.step
 	for {
-		at := float64(len(t.Arterial.Samples)) / t.Arterial.Rate
+		at := float64(len(t.Arterial.Samples))/t.Arterial.Rate - r.since
 		if at >= s.t+s.h || len(t.Arterial.Samples) == cap(t.Arterial.Samples) {
 			return
 		}
-		r.peek((at - s.t) / s.h)
+		r.peek(max(0, (at-s.t)/s.h))
 		i, y := &r.now, &s.y
 		for _, put := range []struct {
 			p *data.Period

@@ -20,6 +20,8 @@ const (
 	LateValvePosing Posing = "late-valve"
 	// CoupledPosing is no rule: ventricle, pump and load settle what each does.
 	CoupledPosing Posing = "coupled"
+	// ModulatedPosing is the same with a speed that changes over time.
+	ModulatedPosing Posing = "modulated"
 )
 
 // Posings lists the posings that take a share, in the order of help texts.

@@ -8,14 +8,108 @@ import (
 	"afterbeat/data/unit"
 )
 
-// Sections describe the answer for a note: the states, what is retained, and the
-// power; of an identity no more than the rule, since its numbers follow from it.
+// Sections describe the answer for a note: states, what is retained, and power in
+// one; of an identity no more than the rule, since its numbers follow from it.
 // What is held equal, the same for every posing, is [Answer.HeldSection].
 func (a Answer) Sections() []casenote.Section {
 	if a.Posing.ByConstruction() {
 		return []casenote.Section{{Title: fmt.Sprintf("By construction: %s", a.Posing), Words: texts(a.Posing.words())}}
 	}
-	return []casenote.Section{a.StateSection(), a.ComparisonSection(), a.PowerSection()}
+	return []casenote.Section{a.thinned().wholeSection()}
+}
+
+// mostRows is how many shares a table of a note has at most.
+const mostRows = 7
+
+// thinned has every second share and the half of them, where there are many.
+func (a Answer) thinned() Answer {
+	if len(a.Supported) <= mostRows {
+		return a
+	}
+	var supported []State
+	var comparisons []Comparison
+	for i, s := range a.Supported {
+		if i%2 == 0 || s.Share == 0.5 {
+			supported, comparisons = append(supported, s), append(comparisons, a.Comparisons[i])
+		}
+	}
+	a.Supported, a.Comparisons = supported, comparisons
+	return a
+}
+
+// wholeSection has all of a yardstick. What is the same in all states is a row.
+func (a Answer) wholeSection() casenote.Section {
+	u := a.units()
+	milliwatt := func(e data.Estimate) data.Estimate { return times(e, unit.MilliwattPerMmHgMLPerS) }
+	mine := func(of func(*Figures) data.Estimate) func(i int) data.Estimate {
+		return func(i int) data.Estimate {
+			if i < 0 {
+				return of(&a.Native.Figures)
+			}
+			return of(&a.Supported[i].Figures)
+		}
+	}
+	retained := func(r ratio) func(i int) data.Estimate {
+		return func(i int) data.Estimate {
+			if i < 0 {
+				return data.Exact(1)
+			}
+			return *a.Comparisons[i].fields()[r]
+		}
+	}
+	return casenote.Section{
+		Title: fmt.Sprintf("Yardstick: native and supported state, %s", a.Posing),
+		Words: texts(a.Posing.words(), "Retained is supported over native. Power is that of the arterial side, mean over the beat: power in is the steady part, the same in all states, and the pulsatile part. "+a.Native.pulsatileWords()),
+		Rows: []casenote.Row{
+			casenote.Quantity("mean pressure, all states", a.Native.MeanPressure, "mmHg", data.Estimated),
+			casenote.Quantity("steady power, all states", milliwatt(a.Native.SteadyPower), u.power, data.Estimated),
+		},
+		Tables: []casenote.Table{
+			a.shareTable(
+				shareColumn{"pulse pressure, mmHg", mine(func(f *Figures) data.Estimate { return f.PulsePressure })},
+				shareColumn{"retained pulse of pressure", retained(retainedPressure)},
+				shareColumn{"energy-equivalent pressure, mmHg", mine(func(f *Figures) data.Estimate { return f.EEP })},
+			),
+			a.shareTable(
+				shareColumn{"swing of root flow, " + u.flow, mine(func(f *Figures) data.Estimate { return f.FlowSwing })},
+				shareColumn{"retained swing of root flow", retained(retainedFlow)},
+				shareColumn{"Gosling PI, flow", mine(func(f *Figures) data.Estimate { return f.FlowPI })},
+			),
+			a.shareTable(
+				shareColumn{"surplus energy, erg/cm3", mine(func(f *Figures) data.Estimate { return f.SHE })},
+				shareColumn{"pulsatile part of power, " + u.power, mine(func(f *Figures) data.Estimate { return milliwatt(f.PulsatilePower) })},
+			),
+		},
+	}
+}
+
+// shareColumn is a column of a table of shares; i is -1 for the native state.
+type shareColumn struct {
+	header string
+	of     func(i int) data.Estimate
+}
+
+// shareTable has a row for the native state and one a supported state.
+func (a Answer) shareTable(columns ...shareColumn) casenote.Table {
+	t := casenote.Table{Header: []string{"share of pump"}}
+	for _, c := range columns {
+		t.Header = append(t.Header, c.header)
+	}
+	for i := -1; i < len(a.Supported); i++ {
+		name := "native"
+		if i >= 0 {
+			if a.Supported[i].Share == 0 { // the native state again
+				continue
+			}
+			name = shareName(a.Supported[i].Share)
+		}
+		cells := []casenote.Cell{{Words: data.Clean(name)}}
+		for _, c := range columns {
+			cells = append(cells, estimated(c.of(i)))
+		}
+		t.Rows = append(t.Rows, cells)
+	}
+	return t
 }
 
 // HeldSection says what is the same in all states, and what is not modelled.

@@ -98,7 +98,7 @@ func (r reading) fits(c casefile.Case) bool { return r.done && same(files(r.of),
 
 // files is the part of a case that bears on how its files are read.
 func files(c casefile.Case) casefile.Case {
-	return casefile.Case{Recording: c.Recording, Time: c.Time, Rate: c.Rate, Unit: c.Unit, Exclude: c.Exclude}
+	return casefile.Case{Recording: c.Recording, Time: c.Time, Rate: c.Rate, Unit: c.Unit, Exclude: c.Exclude, Modulation: modulationFile(c)}
 }
 
 // loaded takes over the files.
@@ -217,4 +217,12 @@ func (j job) words() string {
 	}
 	at := map[study.Stage]int{study.StageIntake: 2, study.StageBeats: 3, study.StageFit: 4, study.StageSupport: 5, study.StageForecast: 6}[j.stage]
 	return fmt.Sprintf("computing %s %d/6, esc cancels", j.stage, at)
+}
+
+// modulationFile is the part of a modulation that names a file.
+func modulationFile(c casefile.Case) map[string]string {
+	if file := c.Modulation["file"]; file != "" {
+		return map[string]string{"file": file}
+	}
+	return nil
 }

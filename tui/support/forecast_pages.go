@@ -7,7 +7,6 @@ import (
 
 	"afterbeat/data"
 	"afterbeat/tree/study"
-	"afterbeat/tree/support"
 	"afterbeat/tui"
 	"afterbeat/tui/layout"
 )
@@ -61,10 +60,10 @@ func heldPage(f *study.Forecast, a tui.Area, t tui.Theme) []string {
 	w := &writing{width: a.Width, theme: t}
 	w.title("Held equal, natively and at every speed")
 	for _, h := range f.Held {
-		w.row([]int{heldLabel}, h.Quantity, heldValue(f, h)+" "+h.Unit+", "+string(h.Origin))
+		w.row([]int{heldLabel}, h.Quantity, heldValue(h)+" "+h.Unit+", "+string(h.Origin))
 	}
 	w.gap()
-	w.words("Mean flow and mean pressure are not held: they follow, at each speed, from ventricle, pump and load. Filling pressure falls as output rises, along the line that stands with the ventricle (p).")
+	w.words(f.MatchWords())
 	w.gap()
 	w.words("Not modelled: reflexes and autoregulation, the right heart, the site of the graft, and that arteries stiffen with pressure. What some of it would do stands with what the forecast depends on (d).")
 	return w.lines
@@ -72,11 +71,9 @@ func heldPage(f *study.Forecast, a tui.Area, t tui.Theme) []string {
 
 // heldValue is a held value, with its doubt where it is one of the ventricle: it
 // may not be identified.
-func heldValue(f *study.Forecast, h support.Held) string {
-	for _, p := range f.Ventricle {
-		if strings.HasSuffix(h.Quantity, ", "+p.Symbol) {
-			return fullEstimate(p.Estimate)
-		}
+func heldValue(h study.ForecastHeld) string {
+	if !h.Identified {
+		return fullEstimate(h.Estimate)
 	}
 	return plain(h.Value)
 }
