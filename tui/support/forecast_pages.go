@@ -72,7 +72,7 @@ func heldPage(f *study.Forecast, a tui.Area, t tui.Theme) []string {
 // heldValue is a held value, with its doubt where it is one of the ventricle: it
 // may not be identified.
 func heldValue(h study.ForecastHeld) string {
-	if !h.Identified {
+	if !h.Identified || h.Total.Defined() {
 		return fullEstimate(h.Estimate)
 	}
 	return plain(h.Value)

@@ -32,7 +32,7 @@ func forecast(t testing.TB) study.Study {
 		t.Fatal("no set generic A")
 	}
 	f := study.Forecast{
-		Comparison: *s.Comparison, Pump: set, Native: inventedState(0), Middle: 2, Draws: 80,
+		Comparison: *s.Comparison, Pump: study.ForecastPump{Set: set}, Native: inventedState(0), Middle: 2, Draws: 80,
 		ValveLimit: spread(10, 0.08),
 		Ventricle: []study.VentricleParameter{
 			{Symbol: "Emax", Meaning: "end-systolic elastance", Unit: "mmHg/mL", Estimate: spread(1.21, 0.3), Origin: data.Estimated},
@@ -45,7 +45,12 @@ func forecast(t testing.TB) study.Study {
 			{Assumption: "outflow-pressure", Change: "+10 mmHg", RetainedPulse: 0.448, Difference: -0.052, PulsePressure: 17.9},
 		},
 		Mismatch:  []study.Mismatch{{Quantity: "pulse pressure", Unit: "mmHg", Measured: 40, Modelled: 42}},
-		Held:      []posing.Held{{Quantity: "contractility, Emax", Value: 1.21, Unit: "mmHg/mL", Origin: data.Estimated}, {Quantity: "wall, EDV", Value: 205, Unit: "mL", Origin: data.Assumed}},
+		Held: []study.ForecastHeld{
+			{Quantity: "contractility, Emax", Unit: "mmHg/mL", Estimate: spread(1.21, 0.3), Origin: data.Estimated},
+			{Quantity: "wall, EDV", Unit: "mL", Estimate: data.Estimate{
+				Value: 205, Total: data.Interval{Low: 110, High: 300}, Random: data.NoInterval(), Why: "arterial traces do not fix it; drawn evenly from this range",
+			}, Origin: data.Assumed},
+		},
 		Published: []study.PublishedCheck{{Name: "change of pulse pressure", Unit: "mmHg", At: "output +1.29 L/min, at 8.1", Value: -50, Low: -45, High: -5, Source: "8 patients"}, {Name: "pulse pressure", Unit: "mmHg", Value: math.NaN(), Low: 3, High: 31, Source: "13 patients", Reason: "the native output is higher"}},
 		Disproof:  "Measure the pulse pressure of the arterial line with the pump at 9000/min and nothing else changed: outside 17 to 23 mmHg the forecast is wrong.",
 		Warnings:  []data.Warning{{Code: data.CodePublished, Text: "change of pulse pressure is outside the published -45 to -5", Cure: "nothing by itself: patients differ"}},
@@ -267,7 +272,7 @@ func TestWhatTheForecastDependsOn(t *testing.T) {
 	says(t, b.View(), "Emax end-systolic elastance: 1.21 (0.85 to 1.57) mmHg/mL, estimated",
 		"not identified (110 to 300) mL, assumed", "arterial traces do not fix it", "invented, axial-like")
 	b.Press("h")
-	says(t, b.View(), "contractility, Emax 1.21 (0.85 to 1.57) mmHg/mL, estimated", "wall, EDV not identified (110 to 300) mL, assumed", "Mean flow and mean pressure are not held")
+	says(t, b.View(), "contractility, Emax 1.21 (0.85 to 1.57) mmHg/mL, estimated", "wall, EDV not identified (110 to 300) mL, assumed", "Mean flow and mean pressure are not matched")
 	says(t, b.Press("h").View(), "coupled speed 9")
 }
 
