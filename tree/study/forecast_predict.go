@@ -210,14 +210,15 @@ func (f *Forecast) middleMet() int {
 		if missing(&f.Speeds[i].CoupledState) != "" {
 			continue
 		}
-		if best < 0 || abs(i-f.Middle) < abs(best-f.Middle) {
+		if best < 0 || steps(i-f.Middle) < steps(best-f.Middle) {
 			best = i
 		}
 	}
 	return best
 }
 
-func abs(i int) int { return max(i, -i) }
+// steps is how far an index is away.
+func steps(i int) int { return max(i, -i) }
 
 // state is the native state for 0, else that of a speed.
 func (f *Forecast) state(i int) *ForecastState {

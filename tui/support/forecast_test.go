@@ -44,7 +44,7 @@ func forecast(t testing.TB) study.Study {
 			{Assumption: "filling slope", Change: "0, constant filling", RetainedPulse: 0.612, Difference: 0.112, PulsePressure: 24.5},
 			{Assumption: "outflow-pressure", Change: "+10 mmHg", RetainedPulse: 0.448, Difference: -0.052, PulsePressure: 17.9},
 		},
-		Mismatch:  []study.Mismatch{{Quantity: "pulse pressure", Unit: "mmHg", Measured: 40, Modelled: 42}},
+		Mismatch: []study.Mismatch{{Quantity: "pulse pressure", Unit: "mmHg", Measured: 40, Modelled: 42}},
 		Held: []study.ForecastHeld{
 			{Quantity: "contractility, Emax", Unit: "mmHg/mL", Estimate: spread(1.21, 0.3), Origin: data.Estimated},
 			{Quantity: "wall, EDV", Unit: "mL", Estimate: data.Estimate{
