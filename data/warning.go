@@ -31,6 +31,7 @@ const (
 	CodeManyRejected  Code = "many-rejected"
 	CodeIrregular     Code = "irregular-rhythm"
 	CodeFewBeats      Code = "few-beats"
+	CodeFaintPulse    Code = "faint-pulse"
 	CodeOpenBeat      Code = "beat-not-closed"
 	CodeDelay         Code = "delay-unknown"
 	CodeOutflow       Code = "outflow-pressure-assumed"
@@ -99,6 +100,7 @@ func WarningCodes() []WarningCode {
 		{CodeManyRejected, "a large part of the beats was not used"},
 		{CodeIrregular, "the intervals between beats vary"},
 		{CodeFewBeats, "few beats carry the average and its intervals"},
+		{CodeFaintPulse, "the pulse is small beside the noise"},
 		{CodeOpenBeat, "the average beat does not end where it began"},
 		{CodeDelay, "the delay between pressure and flow was not measured"},
 		{CodeOutflow, "the outflow pressure is an assumption"},

@@ -25,6 +25,19 @@
 // irregular rhythm shows no such peak; it is recognised by upstrokes that
 // resemble one another.
 //
+// # A faint pulse
+//
+// By the criteria of [Support] ([FindBy]) a pulse of a few mmHg is found in noise.
+// Where the slope has no period, that of the level is taken, less its running
+// mean. Onsets are then not looked for one by one: the trace is matched with the
+// average upstroke, which is averaged anew over what it matched (Woody 1967, Med
+// Biol Eng 5:539, from memory), and of the matches those are taken that follow one
+// another most evenly (dynamic programming after Ellis 2007, J New Music Res
+// 36:51, from memory). An irregular rhythm is searched as a native one.
+//
+// [Pulse.PulseToNoise] sets the amplitude of the average beat beside what single
+// beats differ from it. Under 2 there is no pulse, whatever the criteria.
+//
 // # Onsets
 //
 // Upstrokes are the peaks of the slope sum function of Zong, Heldt, Moody and

@@ -12,7 +12,7 @@ import (
 const (
 	lowestRate  = 20.0 // Hz: a pulse wave has no onset below
 	leastLength = 2.0  // s
-	leastBeats  = 2
+	leastBeats  = 1
 	// windowsAround is how many windows on either side share in the period.
 	windowsAround = 2
 	// silentWindows in a row without a period are a stretch without a pulse.
@@ -25,22 +25,32 @@ const (
 // as long as the pulse goes upwards. Where it finds none, Found is false and
 // Reason says why. A rate that is not positive panics.
 func Find(values []float64, rate float64, q unit.Quantity) Pulse {
+	return FindBy(Measured, values, rate, q)
+}
+
+// FindBy is [Find] by other criteria. By those of [Support] it finds a pulse of
+// a few mmHg in noise; what is less than twice the noise is no pulse.
+func FindBy(c Criteria, values []float64, rate float64, q unit.Quantity) Pulse {
 	if !(rate > 0) || math.IsInf(rate, 0) {
 		panic("beat: Find: rate must be positive")
 	}
-	p := Pulse{Quantity: q, Rate: rate, Unusable: holes(values), Period: math.NaN(), PeriodCV: math.NaN()}
+	p := Pulse{Criteria: c, Amplitude: math.NaN(), Noise: math.NaN(), Quantity: q, Rate: rate, Unusable: holes(values), Period: math.NaN(), PeriodCV: math.NaN()}
 	p.Systolic, p.Diastolic, p.Mean = math.NaN(), math.NaN(), math.NaN()
 	if p.Reason = unfit(values, rate, q); p.Reason != "" {
 		return p
 	}
-	onsets, reason := onsets(values, rate)
+	onsets, reason := onsets(c, values, rate)
 	if reason != "" {
 		p.Reason = reason
 		return p
 	}
 	p.Found = true
 	p.Beats = measure(values, onsets, rate)
-	reject(p.Beats, values)
+	reject(c, p.Beats, values)
+	p.Amplitude, p.Noise = pulseAndNoise(p.Beats, values)
+	if p.PulseToNoise() < leastPulseToNoise {
+		return p.none(fmt.Sprintf("the pulse, %.2g, is less than twice the noise, %.2g", p.Amplitude, p.Noise))
+	}
 	p.summarise()
 	return p
 }
@@ -72,20 +82,27 @@ func unfit(values []float64, rate float64, q unit.Quantity) string {
 }
 
 // onsets returns the onset of every beat, or says why there is no pulse.
-func onsets(values []float64, rate float64) (onsets []float64, reason string) {
+func onsets(c Criteria, values []float64, rate float64) (onsets []float64, reason string) {
 	t := newTrace(values, rate)
 	fs := t.rateOfCoarse()
 	windows, regular := t.periods()
+	if c == Support {
+		if faint, ok := t.faintPeriods(windows, regular); ok {
+			if onsets = t.steady(faint); len(onsets) > leastBeats {
+				return onsets, ""
+			}
+		}
+	}
 	y, ssf := t.slopeSum()
 	var ends []int
 	if regular {
 		ends = withoutNoise(y, t.upstrokes(ssf, periodAt(windows, fs)), windows, fs)
 	} else if ends = t.upstrokes(ssf, nil); !alike(y, ends, fs) {
-		return nil, fmt.Sprintf("no periodic component between %g and %g Hz", 1/longestPeriod, 1/shortestPeriod)
+		return nil, t.aperiodic(values)
 	}
 	onsets = t.feet(ends)
 	if len(onsets) < leastBeats+1 {
-		return nil, fmt.Sprintf("too few samples: %d onsets, and %d beats are needed", len(onsets), leastBeats)
+		return nil, fmt.Sprintf("too few samples: %d onsets, and a beat needs two", len(onsets))
 	}
 	return onsets, ""
 }

@@ -25,7 +25,12 @@ const (
 	neighbours       = 0.15 // and largest within this part of the period
 	valley           = 0.5  // and after a fall of r to this part of it
 	agreement        = 0.2  // two windows agree on the period within this part
-	silent           = 0.1  // s; the slope over a longer hole is taken as nil
+	// The search in the level of a faint pulse.
+	leastFaint   = 0.42 // of r, where most of manyWindows agree
+	manyWindows  = 3
+	bestOfFaint  = 0.7 // breathing that is left over favours some multiple of the period
+	levelDetrend = 1.0 // s, width of each of two running means
+	silent       = 0.1 // s; the slope over a longer hole is taken as nil
 )
 
 // window is a stretch of the coarse trace and its period, in s; 0 where it
@@ -38,10 +43,57 @@ type window struct {
 // periods finds the period of each window of the trace. ok tells whether the
 // windows make a pulse: two in a row that agree, or the only one.
 func (t *trace) periods() (windows []window, ok bool) {
-	z := t.slope()
+	return t.periodsOf(t.slope(), bestOfLags, least)
+}
+
+// faintPeriods looks for the period in the trace itself, less its running mean,
+// where the slope has none that is the same in most windows: noise has most of
+// its slope at high frequencies, a faint pulse has little there.
+func (t *trace) faintPeriods(windows []window, ok bool) ([]window, bool) {
+	if ok && commonPeriod(windows) {
+		return windows, true
+	}
+	limit := least
+	if len(windows) >= manyWindows {
+		limit = func(float64) float64 { return leastFaint }
+	}
+	faint, found := t.periodsOf(t.levels(), bestOfFaint, limit)
+	if found && commonPeriod(faint) {
+		return faint, true
+	}
+	return windows, ok && commonPeriod(windows)
+}
+
+// commonPeriod tells whether most windows have the same period, nearly.
+func commonPeriod(windows []window) bool {
+	usual := usualPeriod(windows)
+	n := 0
+	for _, w := range windows {
+		if math.Abs(w.period-usual) <= agreement*usual {
+			n++
+		}
+	}
+	return 2*n > len(windows)
+}
+
+// levels is the coarse trace, smoothed, less its running mean.
+func (t *trace) levels() []float64 {
+	fs := t.rateOfCoarse()
+	width := samplesIn(slopeSmoothing, fs)
+	z := smooth(smooth(t.coarse, width), width)
+	for i, m := range smooth(smooth(z, samplesIn(levelDetrend, fs)), samplesIn(levelDetrend, fs)) {
+		z[i] -= m
+	}
+	return z
+}
+
+// periodsOf finds the period of each window of z, which must have an r of at
+// least what least gives for the length of a window, and at least the part best of
+// the largest one.
+func (t *trace) periodsOf(z []float64, best float64, least func(seconds float64) float64) (windows []window, ok bool) {
 	fs := t.rateOfCoarse()
 	size := min(len(z), int(windowLength*fs))
-	a := newAutocorrelation(size)
+	a := newAutocorrelation(size, best)
 	for from := 0; ; from += max(1, size/2) {
 		from = min(from, len(z)-size)
 		w := window{from: from, to: from + size}
@@ -102,17 +154,18 @@ type autocorrelation struct {
 	padded   []float64
 	spectrum []complex128
 	sorted   []float64
+	best     float64   // part of the largest r that a period must reach
 	energy   []float64 // energy[i] = sum of the squares before i
 }
 
-func newAutocorrelation(size int) *autocorrelation {
+func newAutocorrelation(size int, best float64) *autocorrelation {
 	n := 1
 	for n < 2*size {
 		n *= 2
 	}
 	return &autocorrelation{
 		fft: fourier.NewFFT(n), padded: make([]float64, n), spectrum: make([]complex128, n/2+1),
-		sorted: make([]float64, size), energy: make([]float64, size+1),
+		sorted: make([]float64, size), best: best, energy: make([]float64, size+1),
 	}
 }
 
@@ -128,7 +181,7 @@ func (a *autocorrelation) period(z []float64, fs float64) (lag, r float64) {
 	lowest := rs[0]
 	for l := 1; l+1 < len(rs) && float64(l) <= longestPeriod*fs+1; l++ {
 		lowest = min(lowest, rs[l])
-		if rs[l] >= bestOfLags*highest && lowest <= valley*rs[l] && largestAround(rs, l) {
+		if rs[l] >= a.best*highest && lowest <= valley*rs[l] && largestAround(rs, l) {
 			if l < first {
 				return 0, 0
 			}

@@ -10,11 +10,14 @@ import (
 type Pulse struct {
 	Found    bool
 	Reason   string // why no pulse was found; empty otherwise
+	Criteria Criteria
 	Quantity unit.Quantity
 	Rate     float64 // Hz
 	Beats    []Beat  // in order of time, each beginning where the one before ended
 	Unusable []Run   // the stretches without a usable sample
-	// Period is the median interval of the used beats, s; NaN without any.
+	// Period is the median interval of the used beats, s; NaN without any. By the
+	// criteria of Support it is the median of the mean intervals of up to eight
+	// used beats in a row, since noise moves each onset.
 	Period float64
 	// PeriodCV is the standard deviation of the intervals of the used beats
 	// over their mean; NaN with fewer than two.
@@ -23,14 +26,20 @@ type Pulse struct {
 	// largest and smallest sample; Mean is the time average over the used
 	// beats. In the unit of the channel; NaN without a used beat.
 	Systolic, Diastolic, Mean float64
+	// Amplitude is that of the average beat, which noise does not lift, and Noise
+	// the standard deviation of single beats about it, both in the unit of the
+	// channel; NaN with fewer than two used beats.
+	Amplitude, Noise float64
 	// Rhythms has one entry where a pulse was found.
 	Rhythms []Rhythm
 }
 
 // Rhythm is one periodic component.
 type Rhythm struct {
-	Frequency      float64 // Hz
-	PulseAmplitude float64 // median over the used beats of max - min, unit of the channel
+	Frequency float64 // Hz
+	// PulseAmplitude is the median over the used beats of max - min, in the unit of
+	// the channel; by the criteria of Support it is that of the average beat.
+	PulseAmplitude float64
 }
 
 // Run is a stretch of samples, From <= i < To.
@@ -38,6 +47,15 @@ type Run struct{ From, To int }
 
 // HeartRate is 60/Period, in 1/min; NaN without a used beat.
 func (p Pulse) HeartRate() float64 { return 60 / p.Period }
+
+// PulseToNoise is Amplitude over Noise; NaN with fewer than two used beats.
+func (p Pulse) PulseToNoise() float64 { return p.Amplitude / p.Noise }
+
+// none is p without a pulse, and why.
+func (p Pulse) none(reason string) Pulse {
+	p.Found, p.Reason, p.Beats = false, reason, nil
+	return p
+}
 
 // Used counts the beats that can be used.
 func (p Pulse) Used() int { return len(used(p.Beats)) }
@@ -61,14 +79,54 @@ func (p *Pulse) summarise() {
 	good := used(p.Beats)
 	intervals := each(good, func(b Beat) float64 { return b.Interval })
 	p.Period = median(intervals)
+	if p.Criteria == Support {
+		p.Period = periodOfRuns(p.Beats)
+	}
 	p.PeriodCV = variation(intervals)
 	p.Systolic = median(each(good, func(b Beat) float64 { return b.Max }))
 	p.Diastolic = median(each(good, func(b Beat) float64 { return b.Min }))
 	p.Mean = timeAverage(good)
 	if len(good) > 0 {
 		amplitude := median(each(good, Beat.Amplitude))
+		if p.Criteria == Support && p.Amplitude > 0 {
+			amplitude = p.Amplitude
+		}
 		p.Rhythms = []Rhythm{{Frequency: 1 / p.Period, PulseAmplitude: amplitude}}
 	}
+}
+
+// mostInARow is how many used beats in a row share an interval.
+const mostInARow = 8
+
+// periodOfRuns is the median over all stretches of up to mostInARow used beats
+// in a row of their mean interval; stretches of fewer than half the most there
+// are do not count.
+func periodOfRuns(beats []Beat) float64 {
+	longest, run := 0, 0
+	for _, b := range beats {
+		if run++; b.Rejected != "" {
+			run = 0
+		}
+		longest = max(longest, run)
+	}
+	n := min(mostInARow, max(1, longest/2))
+	var means []float64
+	sum := 0.0
+	run = 0
+	for i, b := range beats {
+		if b.Rejected != "" {
+			run, sum = 0, 0
+			continue
+		}
+		sum += b.Interval
+		if run++; run > n {
+			sum -= beats[i-n].Interval
+		}
+		if run >= n {
+			means = append(means, sum/float64(n))
+		}
+	}
+	return median(means)
 }
 
 // timeAverage weighs the mean of each beat by its length.

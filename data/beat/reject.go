@@ -18,16 +18,32 @@ const (
 	leastShape    = 0.9 // correlation with the median beat
 	scatterShape  = 5.0 // robust standard deviations of the correlations
 	shapePoints   = 64
-	shapeBlock    = 60 // beats that share a median beat
+	// The same for a faint pulse (assumptions).
+	faintLeastFactor = 2.0
+	faintMostFactor  = 3.0
+	faintLeastShape  = 0.6
+	shapeBlock       = 60 // beats that share a median beat
 )
 
 // reject marks the beats that cannot be used, in the order of the reasons: one
 // that is out in time is not judged by its amplitude.
-func reject(beats []Beat, values []float64) {
+func reject(c Criteria, beats []Beat, values []float64) {
+	l := limitsOf(c)
 	rejectByTime(beats)
-	rejectByAmplitude(beats)
+	rejectByAmplitude(beats, l)
 	rejectByLevel(beats)
-	rejectByShape(beats, values)
+	rejectByShape(beats, values, l)
+}
+
+// limits are those that the criteria change.
+type limits struct{ leastFactor, mostFactor, leastShape float64 }
+
+// limitsOf relaxes amplitude and shape for a pulse in which noise has a part.
+func limitsOf(c Criteria) limits {
+	if c == Support {
+		return limits{faintLeastFactor, faintMostFactor, faintLeastShape}
+	}
+	return limits{leastFactor, mostFactor, leastShape}
 }
 
 // running is the median of x over the beats that count within reach of each
@@ -72,10 +88,10 @@ func rejectByTime(beats []Beat) {
 	}
 }
 
-func rejectByAmplitude(beats []Beat) {
+func rejectByAmplitude(beats []Beat, l limits) {
 	medians, spreads := running(beats, Beat.Amplitude, wideSpread)
 	for i, b := range beats {
-		factor := max(leastFactor, min(mostFactor, 1+scatterFactor*spreads[i]/medians[i]))
+		factor := max(l.leastFactor, min(l.mostFactor, 1+scatterFactor*spreads[i]/medians[i]))
 		ratio := b.Amplitude() / medians[i]
 		if b.Rejected == "" && (ratio > factor || ratio < 1/factor) {
 			beats[i].Rejected = Amplitude
@@ -96,7 +112,7 @@ func rejectByLevel(beats []Beat) {
 
 // rejectByShape compares the beats with the median beat of the shapeBlock or so
 // around them, since the shape changes slowly, with the heart rate for one.
-func rejectByShape(beats []Beat, values []float64) {
+func rejectByShape(beats []Beat, values []float64, l limits) {
 	var shapes [][]float64
 	var which []int
 	for i, b := range beats {
@@ -108,7 +124,7 @@ func rejectByShape(beats []Beat, values []float64) {
 	blocks := max(1, len(shapes)/shapeBlock)
 	for k := range blocks {
 		from, to := k*len(shapes)/blocks, (k+1)*len(shapes)/blocks
-		for _, odd := range oddShapes(shapes[from:to]) {
+		for _, odd := range oddShapes(shapes[from:to], l.leastShape) {
 			beats[which[from+odd]].Rejected = Shape
 		}
 	}
@@ -116,7 +132,7 @@ func rejectByShape(beats []Beat, values []float64) {
 
 // oddShapes lists those that are unlike the median of all. Fewer than three have
 // no odd one.
-func oddShapes(shapes [][]float64) []int {
+func oddShapes(shapes [][]float64, least float64) []int {
 	if len(shapes) < 3 {
 		return nil
 	}
@@ -126,7 +142,7 @@ func oddShapes(shapes [][]float64) []int {
 		r[k] = dot(s, middle)
 	}
 	m := median(r)
-	limit := min(leastShape, m-scatterShape*spread(r, m))
+	limit := min(least, m-scatterShape*spread(r, m))
 	var odd []int
 	for k := range r {
 		if r[k] < limit {

@@ -29,11 +29,17 @@ func (p Pulse) Section(channel data.Text, unit string) casenote.Section {
 	row := func(label string, e data.Estimate, unit string) {
 		s.Rows = append(s.Rows, casenote.Quantity(label, e, unit, data.Measured))
 	}
+	if p.Criteria == Support {
+		s.Rows = append(s.Rows, casenote.Words("looked for", "as a pulse on support: by what the upstrokes share, at the dominant period"))
+	}
 	row("heart rate", p.heartRate(good), "1/min")
 	row("systolic", medianOf(good, func(b Beat) float64 { return b.Max }), unit)
 	row("diastolic", medianOf(good, func(b Beat) float64 { return b.Min }), unit)
 	interval, why := meanInterval(good)
 	row("mean", estimate(p.Mean, interval, why), unit)
+	if !math.IsNaN(p.PulseToNoise()) {
+		s.Rows = append(s.Rows, casenote.Words("pulse over noise", fmt.Sprintf("%s (average beat over what single beats differ from it)", casenote.Format(p.PulseToNoise(), data.NoInterval()))))
+	}
 	s.Words = []data.Text{data.Clean("Intervals are of random error, widened for the likeness of neighbouring beats; calibration is not in them.")}
 	return s
 }

@@ -12,6 +12,7 @@ import (
 const (
 	fewBeats     = 8 // fewer carry no span fit
 	manyRejected = 1 / 3.0
+	faintPulse   = 7.0  // over the noise
 	irregularAll = 0.15 // CV of all intervals; one early beat among thirty makes 0.10
 	irregular    = 0.10 // CV of the intervals; at rest in sinus rhythm it is 0.02 to 0.08 (common practice)
 )
@@ -33,6 +34,11 @@ func (p Pulse) Warnings(channel data.Text) []data.Warning {
 		warn(data.CodeManyRejected, "choose a quieter span, or leave out the artefacts",
 			"%d of %d beats are not used: %s", r, len(p.Beats), Tally(p.Beats))
 	}
+	if p.PulseToNoise() < faintPulse {
+		warn(data.CodeFaintPulse, faintCure(p.Criteria),
+			"the pulse is %.2g times the noise: that of the average beat is %.3g, and noise lifts the systolic and lowers the diastolic value of single beats",
+			p.PulseToNoise(), p.Amplitude)
+	}
 	// Of all beats too: where the rhythm is worst, the used ones are the regular ones.
 	all := variation(each(whole(p.Beats), func(b Beat) float64 { return b.Interval }))
 	if p.PeriodCV > irregular || all > irregularAll {
@@ -44,6 +50,13 @@ func (p Pulse) Warnings(channel data.Text) []data.Warning {
 			"the intervals vary by %s (standard deviation over mean)", spread)
 	}
 	return out
+}
+
+func faintCure(by Criteria) string {
+	if by == Support {
+		return "take a longer span, and use the average beat"
+	}
+	return "look for beats with --beats support, and use the average beat"
 }
 
 // whole are the beats without an unusable sample.

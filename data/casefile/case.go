@@ -36,6 +36,7 @@ type Case struct {
 	Drop []float64 `key:"drop" value:"S" help:"a time inside a beat to leave out, on the file's own clock"`
 	Keep []float64 `key:"keep" value:"S" help:"a time inside a beat to use although a rule rejects it"`
 
+	Beats      string    `key:"beats" value:"measured|support" help:"how beats are looked for: support for a pulse of a few mmHg"`
 	OneBeat    bool      `key:"one_beat" help:"the recording is exactly one period"`
 	Model      string    `key:"model" value:"NAME|all" help:"model to fit"`
 	Replicates *int      `key:"replicates" value:"N" help:"replicates of the uncertainty"`

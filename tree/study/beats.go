@@ -57,6 +57,10 @@ func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 		return b, err
 	}
 	b.Delay = Delay{Value: seconds, Stated: stated, Auto: auto, Error: widths["delay"]}
+	by, err := criteria(t.Case)
+	if err != nil {
+		return b, err
+	}
 	pressure, flow, err := b.signals(widths)
 	if err != nil {
 		return b, err
@@ -65,7 +69,7 @@ func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 		if err := ctx.Err(); err != nil {
 			return b, err
 		}
-		b.Pulses = append(b.Pulses, pulse(ch, t.Grid.Rate, t.Case.OneBeat))
+		b.Pulses = append(b.Pulses, pulse(ch, t.Grid.Rate, by, t.Case.OneBeat))
 	}
 	said := b.Warnings
 	b.Warnings = nil
@@ -78,14 +82,18 @@ func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 }
 
 // pulse finds the beats of a channel that can have some.
-func pulse(ch data.Channel, rate float64, oneBeat bool) beat.Pulse {
+func pulse(ch data.Channel, rate float64, by beat.Criteria, oneBeat bool) beat.Pulse {
 	switch {
 	case !pulsatile(ch.Quantity):
 		return beat.Pulse{Reason: "not a pressure, flow or velocity"}
 	case oneBeat:
 		return onePulse(ch, rate)
 	}
-	return beat.Find(ch.Values, rate, ch.Quantity)
+	p := beat.FindBy(by, ch.Values, rate, ch.Quantity)
+	if !p.Found {
+		p.Reason = withOrigin(p.Reason, ch)
+	}
+	return p
 }
 
 // leastSamples is how few samples of a period a fit takes.
@@ -104,7 +112,7 @@ func onePulse(ch data.Channel, rate float64) beat.Pulse {
 	return beat.Pulse{
 		Found: true, Quantity: ch.Quantity, Rate: rate,
 		Beats:  []beat.Beat{{From: 0, To: len(ch.Values), Max: high, Min: low, Mean: whole.Mean()}},
-		Period: whole.Duration(), PeriodCV: math.NaN(),
+		Period: whole.Duration(), PeriodCV: math.NaN(), Amplitude: math.NaN(), Noise: math.NaN(),
 		Systolic: high, Diastolic: low, Mean: whole.Mean(),
 		Rhythms: []beat.Rhythm{{Frequency: 1 / whole.Duration(), PulseAmplitude: high - low}},
 	}

@@ -36,6 +36,9 @@ type PulseReport struct {
 	BeatsUsed     int            `json:"beats_used"`
 	BeatsRejected int            `json:"beats_rejected"`
 	Rhythms       []RhythmReport `json:"rhythms"`
+	// PulseToNoise is the amplitude of the average beat over the standard
+	// deviation of single beats about it.
+	PulseToNoise Number `json:"pulse_to_noise"`
 }
 
 // ChannelReport describes a channel. Systolic and diastolic are medians over
@@ -141,7 +144,7 @@ var nan = Number(math.NaN())
 
 func pulseReport(p beat.Pulse) PulseReport {
 	r := PulseReport{
-		Found: p.Found, Reason: reason(p.Reason), HeartRate: nan, Period: nan, PeriodCV: nan,
+		Found: p.Found, Reason: reason(p.Reason), HeartRate: nan, Period: nan, PeriodCV: nan, PulseToNoise: Number(p.PulseToNoise()),
 		BeatsUsed: p.Used(), BeatsRejected: p.Rejected(), Rhythms: []RhythmReport{},
 	}
 	if !p.Found {

@@ -8,6 +8,7 @@ import (
 	"strings"
 
 	"afterbeat/data"
+	"afterbeat/data/beat"
 	"afterbeat/data/casefile"
 	"afterbeat/data/unit"
 	"afterbeat/fitting"
@@ -169,6 +170,17 @@ func checkModel(c casefile.Case) error {
 		return nil
 	}
 	return &ChoiceError{Key: "model", What: fmt.Sprintf("%q is no model", data.Clean(c.Model)), Hint: "models: " + list(names)}
+}
+
+// criteria are those by which beats are looked for.
+func criteria(c casefile.Case) (beat.Criteria, error) {
+	switch by := beat.Criteria(c.Beats); by {
+	case "":
+		return beat.Measured, nil
+	case beat.Measured, beat.Support:
+		return by, nil
+	}
+	return "", &ChoiceError{Key: "beats", What: fmt.Sprintf("%q is no way to look for beats", data.Clean(c.Beats)), Hint: "measured, or support for a pulse of a few mmHg"}
 }
 
 // standardShares are the shares of a sweep where the case states none.

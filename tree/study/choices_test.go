@@ -36,6 +36,7 @@ func TestChoicesThatMakeNoSense(t *testing.T) {
 		{"angle_deg", "--angle-deg", "90 degrees", func(c *casefile.Case) { c.AngleDeg = ptr(90.0) }},
 		{"profile", "--profile", "factor", func(c *casefile.Case) { c.Profile = "1.5" }},
 		{"profile", "--profile", "factor", func(c *casefile.Case) { c.Profile = "womersley" }},
+		{"beats", "--beats", "support", func(c *casefile.Case) { c.Beats = "weak" }},
 		{"delay", "--delay", "seconds", func(c *casefile.Case) { c.Delay = "25" }},
 		{"delay", "--delay", "seconds", func(c *casefile.Case) { c.Delay = "nan" }},
 		{"delay", "--delay", "seconds", func(c *casefile.Case) { c.Delay = "late" }},
