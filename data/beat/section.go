@@ -32,14 +32,14 @@ func (p Pulse) Section(channel data.Text, unit string) casenote.Section {
 	if p.Criteria == Support {
 		s.Rows = append(s.Rows, casenote.Words("looked for", "as a pulse on support: by what the upstrokes share, at the dominant period"))
 	}
+	if !math.IsNaN(p.PulseToNoise()) {
+		s.Rows = append(s.Rows, casenote.Words("pulse over noise", fmt.Sprintf("%.2g (average beat over what single beats differ from it)", p.PulseToNoise())))
+	}
 	row("heart rate", p.heartRate(good), "1/min")
 	row("systolic", medianOf(good, func(b Beat) float64 { return b.Max }), unit)
 	row("diastolic", medianOf(good, func(b Beat) float64 { return b.Min }), unit)
 	interval, why := meanInterval(good)
 	row("mean", estimate(p.Mean, interval, why), unit)
-	if !math.IsNaN(p.PulseToNoise()) {
-		s.Rows = append(s.Rows, casenote.Words("pulse over noise", fmt.Sprintf("%s (average beat over what single beats differ from it)", casenote.Format(p.PulseToNoise(), data.NoInterval()))))
-	}
 	s.Words = []data.Text{data.Clean("Intervals are of random error, widened for the likeness of neighbouring beats; calibration is not in them.")}
 	return s
 }

@@ -41,6 +41,7 @@ angle_deg = 20
 profile = 1
 outflow_pressure = 0
 delay = 0.0125
+beats = "support"
 one_beat = true
 model = "wk3"
 replicates = 2000
@@ -88,8 +89,8 @@ func fullCase() Case {
 		Rate:   ptr(125.0), From: ptr(-1.5), To: ptr(0.0), Exclude: "artefacts.csv",
 		DiameterCM: ptr(2.1), AngleDeg: ptr(20.0), Profile: "1",
 		OutflowPressure: ptr(0.0), Delay: "0.0125",
-		Error:   map[string]string{"flow": "10%", "cardiac-output": "0.5"},
-		OneBeat: true, Model: "wk3", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
+		Error: map[string]string{"flow": "10%", "cardiac-output": "0.5"},
+		Beats: "support", OneBeat: true, Model: "wk3", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
 		EDVML: ptr(210.0), EF: ptr(0.25), Pump: map[string]string{"set": "generic A"}, Speed: []float64{8, 9.5},
 		Match: "flow", HoldResistance: ptr(0.9), Ventricle: map[string]string{"Pfill": "20", "activation": "hill"},
 		Modulation: map[string]string{"shape": "square", "low": "7.5", "locked": "2"},
@@ -114,8 +115,8 @@ func TestReadEveryKey(t *testing.T) {
 		}
 	}
 	for key, line := range map[string]int{
-		"recording": 2, "invert": 8, "rate": 10, "share": 23, "error.flow": 34, "error.cardiac-output": 35, "ventricle.Pfill": 36, "pump": 26,
-		"site": 38, "site.abp": 39, "site.q.1": 40, "unit.na=me": 43, "offset.abp": 47, "modulation.low": 50, "site.other": 0, "": 0,
+		"recording": 2, "invert": 8, "rate": 10, "share": 24, "error.flow": 35, "error.cardiac-output": 36, "ventricle.Pfill": 37, "pump": 27,
+		"site": 39, "site.abp": 40, "site.q.1": 41, "unit.na=me": 44, "offset.abp": 48, "modulation.low": 51, "site.other": 0, "": 0,
 	} {
 		if got := c.Line(key); got != line {
 			t.Errorf("line of %q is %d, want %d", key, got, line)
@@ -232,8 +233,8 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		Rate:   optional("rate"), From: optional("from"), To: optional("to"), Exclude: word.Draw(t, "exclude"),
 		DiameterCM: optional("diameter"), AngleDeg: optional("angle"), Profile: amount.Draw(t, "profile"),
 		OutflowPressure: optional("outflow"), Delay: amount.Draw(t, "delay"),
-		Error:   rapid.MapOfN(rapid.SampledFrom(Errors()), amount, 0, 3).Draw(t, "error"),
-		OneBeat: rapid.Bool().Draw(t, "one beat"), Model: word.Draw(t, "model"),
+		Error: rapid.MapOfN(rapid.SampledFrom(Errors()), amount, 0, 3).Draw(t, "error"),
+		Beats: word.Draw(t, "beats"), OneBeat: rapid.Bool().Draw(t, "one beat"), Model: word.Draw(t, "model"),
 		Replicates: rapid.Ptr(rapid.Int(), true).Draw(t, "replicates"), Seed: rapid.Ptr(rapid.Int(), true).Draw(t, "seed"),
 		Share: rapid.SliceOfN(rapid.Float64Range(0, 1), 0, 4).Draw(t, "share"),
 		EDVML: optional("volume"), EF: optional("fraction"), Pump: owned("pump", "set", "a", "b", "Rc", "lowest"), Speed: rapid.SliceOfN(num, 0, 3).Draw(t, "speed"),
