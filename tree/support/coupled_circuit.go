@@ -31,7 +31,8 @@ type circuit struct {
 	r, c, zc, l, pv  float64
 	parallel, series bool
 	pump             pump.Pump
-	atrial           bool // the pump draws from the atrium
+	atrial           bool  // the pump draws from the atrium
+	rest             *rest // of a tree, beyond the wk3 that stands for it; nil: lumped
 }
 
 // drive is what is done to the circuit over a beat.
@@ -103,14 +104,17 @@ func (c *circuit) look(t float64, y *vector, m mode, d *drive, i *instant) {
 	if c.series {
 		c.lookSeries(y, m, d, i)
 	} else {
-		c.lookDirect(y, m, d, i)
+		c.lookDirect(t, y, m, d, i)
 	}
 }
 
 // lookDirect solves the root for wk2, wk3 and wk4p, where Qav follows from the
 // pressures: Qav = (Plv - Pc + Zc QL - Zc Qp)/(Rav + Zc).
-func (c *circuit) lookDirect(y *vector, m mode, d *drive, i *instant) {
+func (c *circuit) lookDirect(t float64, y *vector, m mode, d *drive, i *instant) {
 	source := y[pc]
+	if c.rest != nil {
+		source += c.rest.at(t)
+	}
 	if c.parallel {
 		source -= c.zc * y[qx]
 	}

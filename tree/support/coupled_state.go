@@ -11,6 +11,7 @@ import (
 type CoupledState struct {
 	Speed   float64 // 1000/min; 0: no pump
 	Beats   int     // integrated to find it
+	Rounds  int     // of relaxation between heart and tree; 0: the load is lumped
 	Settled bool
 	// Missed tells that what was to be matched cannot be, at this speed: the
 	// state is the one that comes nearest.
@@ -47,11 +48,12 @@ func (s CoupledState) Flow() float64 { return s.PumpFlow.Mean + s.ValveFlow.Mean
 type CoupledEnergy struct {
 	Filling, Ventricle, Pump                float64 // sources
 	Mitral, Aortic, Cannula, Zc, R, Outflow float64 // sinks
+	Segments, TerminalR1, TerminalR2        float64 // sinks of a tree, in place of Zc and R
 }
 
 // Sinks is the energy that is lost or passed on in a beat, mmHg mL.
 func (e CoupledEnergy) Sinks() float64 {
-	return e.Mitral + e.Aortic + e.Cannula + e.Zc + e.R + e.Outflow
+	return e.Mitral + e.Aortic + e.Cannula + e.Zc + e.R + e.Segments + e.TerminalR1 + e.TerminalR2 + e.Outflow
 }
 
 // littleEnergy is less than the energy of a beat that means something, mmHg mL:
