@@ -75,12 +75,16 @@ func besides(spec string) func(name string) ([]byte, error) {
 
 const solveSupportHelp = casenote.Caution + `
 
-The periodic state of a ventricle, a lumped load and a pump. SPEC.toml holds
+The periodic state of a ventricle, a load and a pump. SPEC.toml holds
 
   speeds = [0, 8, 9]          # 1000/min; 0: no pump
   step = {from = 8, to = 9.5, beats = 40}   # may be absent
   modulation = "speed.csv"    # columns time_s,speed_1000_per_min: one period
   locked = 1                  # beats of its period; 0: free
+  tree = "tree.csv"           # in place of [load]: a table as of solve tree, with
+  density_g_mL = 1.06         # these three beside it
+  viscosity_poise = 0.035
+  outflow_pressure_mmHg = 5
 
   [ventricle]
   period_s = 0.8              # s

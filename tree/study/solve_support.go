@@ -2,6 +2,7 @@ package study
 
 import (
 	"afterbeat/data"
+	"afterbeat/tree"
 	"afterbeat/tree/support"
 )
 
@@ -12,6 +13,8 @@ type SolvedSupport struct {
 	File     string
 	Coupling support.Coupling // with the flow of the filling line settled
 	States   []support.CoupledState
+	Network  tree.Network          // where the load is a tree
+	Trees    []TreeState           // of the states, where the load is a tree
 	Step     *support.StepResponse // nil where none was asked for
 	Modular  *support.Modulated
 	Warnings []data.Warning
@@ -21,12 +24,16 @@ type SolvedSupport struct {
 // bytes of the modulation by the name that the spec gives it.
 func SolveSupport(file string, spec SupportSpec, read func(string) ([]byte, error)) (SolvedSupport, error) {
 	out := SolvedSupport{Spec: spec, File: file}
+	if spec.Tree != "" {
+		err := out.solveOnTree(read)
+		return out, err
+	}
 	coupling, err := spec.Coupling()
 	if err != nil {
 		return out, err
 	}
-	if len(spec.Speeds) == 0 && spec.Step == nil && spec.Modulation == "" {
-		return out, &data.FileError{File: file, What: "nothing is asked for", Hint: "add speeds = [0, 8, 9], a step or a modulation"}
+	if err := spec.asked(); err != nil {
+		return out, err
 	}
 	k, err := support.NewCoupled(coupling)
 	if err != nil {
@@ -45,8 +52,21 @@ func SolveSupport(file string, spec SupportSpec, read func(string) ([]byte, erro
 	return out, out.modulate(k, read)
 }
 
+// asked tells whether the spec asks for anything.
+func (s SupportSpec) asked() error {
+	if len(s.Speeds) == 0 && s.Step == nil && s.Modulation == "" {
+		return &data.FileError{File: s.file, What: "nothing is asked for", Hint: "add speeds = [0, 8, 9], a step or a modulation"}
+	}
+	return nil
+}
+
+// stepper is a coupling whose speed can change.
+type stepper interface {
+	Step(from, to float64, beats int) (support.StepResponse, error)
+}
+
 // follow answers for a step of speed.
-func (s *SolvedSupport) follow(k *support.Coupled) error {
+func (s *SolvedSupport) follow(k stepper) error {
 	step := s.Spec.Step
 	switch {
 	case step == nil:

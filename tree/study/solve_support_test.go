@@ -273,7 +273,11 @@ func TestWhatIsNoSupportSpec(t *testing.T) {
 		{"speeds = [0]\nfilling_lag_s = 0\n" + failingHeart + givenLoad, "filling_lag_s = 0", 2},
 		{"speeds = [0]\nfilling_lag_s = 3\n" + failingHeart + "filling_lag_s = 4\n" + givenLoad, "given twice", 2},
 		{"speeds = [0]\nviscosity_poise = 0.03\n" + failingHeart + givenLoad, "goes with a tree", 2},
-		{"speeds = [0]\ntree = \"a.csv\"\n" + failingHeart, "cannot be coupled yet", 2},
+		{"speeds = [0]\ntree = \"gone.csv\"\n" + failingHeart, "cannot be read", 0},
+		{"speeds = [0]\ntree = \"gone.csv\"\n" + failingHeart + givenLoad, "one of them", 15},
+		{"speeds = [0]\ntree = \"gone.csv\"\ndensity_g_mL = -1\n" + failingHeart, "density_g_mL = -1", 3},
+		{"tree = \"gone.csv\"\nmodulation = \"m.csv\"\n" + failingHeart, "modulation on a tree", 2},
+		{"tree = \"gone.csv\"\n" + failingHeart, "nothing is asked for", 0},
 		{"speeds = 0\n", "wrong kind", 1},
 		{"speeds = [0\n", "", 0},
 	} {

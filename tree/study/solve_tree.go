@@ -63,7 +63,8 @@ func SolveTree(file string, spec TreeSpec, read func(string) ([]byte, error)) (S
 	if out.Harmonics, err = spec.harmonics(len(out.Inflow.Samples)); err != nil {
 		return out, err
 	}
-	return out, out.solve()
+	err = out.solve()
+	return out, err
 }
 
 func (s *SolvedTree) solve() error {

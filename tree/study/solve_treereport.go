@@ -120,10 +120,15 @@ func (s SolvedTree) Report() SolvedTreeReport {
 }
 
 func (s SolvedTree) stateReport(state TreeState) SolvedTreeState {
-	r := SolvedTreeState{Segments: make([]SolvedSegment, len(state.Segments)), Energy: solvedTreeEnergy(state)}
+	return SolvedTreeState{Segments: solvedSegments(s.Network, state), Energy: solvedTreeEnergy(state)}
+}
+
+// solvedSegments are the segments of a state, in the order of the table.
+func solvedSegments(n tree.Network, state TreeState) []SolvedSegment {
+	out := make([]SolvedSegment, len(state.Segments))
 	for i, v := range state.Segments {
-		segment := s.Network.Segments[i]
-		r.Segments[i] = SolvedSegment{
+		segment := n.Segments[i]
+		out[i] = SolvedSegment{
 			ID: segment.ID, Name: segment.Name, Bed: segment.Bed,
 			Inlet:  SolvedEnd{solvedRange(v.InletPressure), solvedRange(v.InletFlow)},
 			Outlet: SolvedEnd{solvedRange(v.OutletPressure), solvedRange(v.OutletFlow)},
@@ -131,7 +136,7 @@ func (s SolvedTree) stateReport(state TreeState) SolvedTreeState {
 			Shear: SolvedShear{Number(v.Shear.Mean), Number(v.Shear.Amplitude), Number(v.Shear.Oscillatory)},
 		}
 	}
-	return r
+	return out
 }
 
 func solvedRange(r tree.Range) SolvedRange {

@@ -39,7 +39,7 @@ func (s SolvedSupport) givenSection() casenote.Section {
 			data.Clean("Ventricle, load and pump as given, in their periodic state; what is given is the same at every speed. A forecast only as far as what is given is that of a patient."),
 			data.Clean("Not modelled: reflexes and autoregulation (resistance may change by 20 % either way), the right heart, the site of the graft."),
 		},
-		Rows: []casenote.Row{casenote.Words("activation", string(v.Activation)), casenote.Words("load", string(l.Kind))},
+		Rows: []casenote.Row{casenote.Words("activation", string(v.Activation)), s.loadRow()},
 	}
 	add := func(name string, value float64, unit string) {
 		section.Rows = append(section.Rows, casenote.Quantity(name, data.Exact(value), unit, data.Assumed))
@@ -62,8 +62,14 @@ func (s SolvedSupport) givenSection() casenote.Section {
 	if f.Slope > 0 {
 		add("filling flow", f.Flow, "mL/s")
 	}
-	for _, name := range l.Kind.Symbols() {
-		add(name, l.Of(name), symbolUnit(name))
+	if s.Spec.Tree != "" {
+		add("tree's resistance", l.R+l.Zc, "mmHg s/mL")
+		add("tree's compliance", l.C, "mL/mmHg")
+		add("rho c/A of its root", l.Zc, "mmHg s/mL")
+	} else {
+		for _, name := range l.Kind.Symbols() {
+			add(name, l.Of(name), symbolUnit(name))
+		}
 	}
 	add("Pv", l.OutflowPressure, "mmHg")
 	if s.Spec.Pump != nil {
@@ -136,22 +142,43 @@ func (s SolvedSupport) energySection() casenote.Section {
 	}
 	return casenote.Section{
 		Title: "Power, mean over the beat",
-		Words: []data.Text{data.Clean("What filling, ventricle and pump give to the blood, and where it goes. The power that the pump's motor takes is more, and is not known here. Zc is a wave impedance: what is booked there travels on, and is no loss in blood.")},
+		Words: []data.Text{data.Clean("What filling, ventricle and pump give to the blood, and where it goes. The power that the pump's motor takes is more, and is not known here. What is booked in Zc, or in R1 of a terminal, is absorbed by waves that travel on, and is no loss in blood.")},
 		Tables: []casenote.Table{
 			s.speedTable("speed, 1000/min", []speedColumn{
 				{"from filling, mW", power(func(e support.CoupledEnergy) float64 { return e.Filling })},
 				{"from ventricle, mW", power(func(e support.CoupledEnergy) float64 { return e.Ventricle })},
 				{"from pump, mW", power(func(e support.CoupledEnergy) float64 { return e.Pump })},
 			}),
-			s.speedTable("speed, 1000/min", []speedColumn{
-				{"valves, mW", power(func(e support.CoupledEnergy) float64 { return e.Mitral + e.Aortic })},
-				{"cannulas, mW", power(func(e support.CoupledEnergy) float64 { return e.Cannula })},
-				{"Zc, mW", power(func(e support.CoupledEnergy) float64 { return e.Zc })},
-				{"R, mW", power(func(e support.CoupledEnergy) float64 { return e.R })},
-				{"outflow, mW", power(func(e support.CoupledEnergy) float64 { return e.Outflow })},
-			}),
+			s.speedTable("speed, 1000/min", s.sinkColumns(power)),
 		},
 	}
+}
+
+// sinkColumns is where energy goes, mW; power makes a column of an energy.
+func (s SolvedSupport) sinkColumns(power func(func(support.CoupledEnergy) float64) func(support.CoupledState) float64) []speedColumn {
+	columns := []speedColumn{
+		{"valves, mW", power(func(e support.CoupledEnergy) float64 { return e.Mitral + e.Aortic })},
+		{"cannulas, mW", power(func(e support.CoupledEnergy) float64 { return e.Cannula })},
+	}
+	if s.Spec.Tree != "" {
+		columns = append(columns,
+			speedColumn{"segments, mW", power(func(e support.CoupledEnergy) float64 { return e.Segments })},
+			speedColumn{"terminal R1, mW", power(func(e support.CoupledEnergy) float64 { return e.TerminalR1 })},
+			speedColumn{"terminal R2, mW", power(func(e support.CoupledEnergy) float64 { return e.TerminalR2 })})
+	} else {
+		columns = append(columns,
+			speedColumn{"Zc, mW", power(func(e support.CoupledEnergy) float64 { return e.Zc })},
+			speedColumn{"R, mW", power(func(e support.CoupledEnergy) float64 { return e.R })})
+	}
+	return append(columns, speedColumn{"outflow, mW", power(func(e support.CoupledEnergy) float64 { return e.Outflow })})
+}
+
+// loadRow names the load.
+func (s SolvedSupport) loadRow() casenote.Row {
+	if s.Spec.Tree != "" {
+		return casenote.Words("tree", baseName(s.Spec.Tree))
+	}
+	return casenote.Words("load", string(s.Coupling.Load.Kind))
 }
 
 // speedColumn is a column of a table with a row a speed.

@@ -35,10 +35,23 @@ type CoupledEnergyReport struct {
 	Mitral    Number `json:"mitral"`
 	Aortic    Number `json:"aortic"`
 	Cannula   Number `json:"cannula"`
-	Zc        Number `json:"Zc"`
-	R         Number `json:"R"`
-	Outflow   Number `json:"outflow"`
-	Balance   Number `json:"balance"`
+	*LumpedSinks
+	*TreeSinks
+	Outflow Number `json:"outflow"`
+	Balance Number `json:"balance"`
+}
+
+// LumpedSinks are the losses in a lumped load, mmHg mL a beat.
+type LumpedSinks struct {
+	Zc Number `json:"Zc"`
+	R  Number `json:"R"`
+}
+
+// TreeSinks are those in a tree.
+type TreeSinks struct {
+	Segments   Number `json:"segments"`
+	TerminalR1 Number `json:"terminal_r1"`
+	TerminalR2 Number `json:"terminal_r2"`
 }
 
 // SpeedReport is the periodic state at one speed.
@@ -62,19 +75,20 @@ type SpeedReport struct {
 	SHE        Number              `json:"she"`
 	BackFlow   bool                `json:"back_flow"`
 	Suction    bool                `json:"suction"`
+	Segments   []SolvedSegment     `json:"segments,omitempty"`
 }
 
 func speedReport(s support.CoupledState) SpeedReport {
 	e := s.Energy
 	r := SpeedReport{
-		Speed: Number(s.Speed), Beats: s.Beats, Settled: s.Settled,
+		Speed: Number(s.Speed), Beats: s.Beats, Rounds: s.Rounds, Settled: s.Settled,
 		Arterial: rangeReport(s.Arterial), PumpFlow: rangeReport(s.PumpFlow),
 		ValveFlow: ValveReport{Number(s.ValveFlow.Mean), Number(s.ValveFlow.Max), s.ValveOpened, Number(s.ValveOpen)},
 		Volume:    VolumeReport{Number(s.Volume.Min), Number(s.Volume.Max)},
 		Filling:   Number(s.Filling), StrokeWork: Number(s.StrokeWork),
 		Energy: CoupledEnergyReport{
 			Number(e.Filling), Number(e.Ventricle), Number(e.Pump), Number(e.Mitral), Number(e.Aortic), Number(e.Cannula),
-			Number(e.Zc), Number(e.R), Number(e.Outflow), Number(e.Balance()),
+			&LumpedSinks{Number(e.Zc), Number(e.R)}, nil, Number(e.Outflow), Number(e.Balance()),
 		},
 		EEP: Number(s.EEP), SHE: Number(s.SHE), BackFlow: s.BackFlow(), Suction: s.Suction,
 	}
@@ -118,8 +132,14 @@ type SupportReport struct {
 // Report is what --json prints.
 func (s SolvedSupport) Report() SupportReport {
 	r := SupportReport{Head: head(), Speeds: []SpeedReport{}, Warnings: warningReports(s.Warnings)}
-	for _, state := range s.States {
-		r.Speeds = append(r.Speeds, speedReport(state))
+	for i, state := range s.States {
+		speed := speedReport(state)
+		if len(s.Trees) > 0 {
+			e := state.Energy
+			speed.Energy.LumpedSinks, speed.Energy.TreeSinks = nil, &TreeSinks{Number(e.Segments), Number(e.TerminalR1), Number(e.TerminalR2)}
+			speed.Segments = solvedSegments(s.Network, s.Trees[i])
+		}
+		r.Speeds = append(r.Speeds, speed)
 	}
 	if step := s.Step; step != nil {
 		r.Step = &StepReport{numbers(step.BeatEnd), numbers(step.Arterial), numbers(step.Flow), numbers(step.Filling)}

@@ -143,9 +143,6 @@ func (g *given) of(name string, v *float64) float64 {
 // Coupling is what the spec describes.
 func (s SupportSpec) Coupling() (support.Coupling, error) {
 	var c support.Coupling
-	if s.Tree != "" {
-		return c, s.refuse("", "tree", "a tree cannot be coupled yet: give a lumped load in a table [load]")
-	}
 	for key, v := range map[string]*float64{"density_g_mL": s.Density, "viscosity_poise": s.Viscosity, "outflow_pressure_mmHg": s.OutflowPressure} {
 		if v != nil {
 			return c, s.refuse("", key, "%s goes with a tree, and there is none", key)
@@ -155,6 +152,25 @@ func (s SupportSpec) Coupling() (support.Coupling, error) {
 		return c, err
 	}
 	if err := s.load(&c); err != nil {
+		return c, err
+	}
+	if err := s.pump(&c); err != nil {
+		return c, err
+	}
+	return c, s.lag(&c)
+}
+
+// treeCoupling is what the spec describes of heart and pump, where the load is a
+// tree.
+func (s SupportSpec) treeCoupling() (support.Coupling, error) {
+	var c support.Coupling
+	switch {
+	case s.Load != nil:
+		return c, s.refuse("load", "", "a table [load] and a tree: one of them")
+	case s.Modulation != "":
+		return c, s.refuse("", "modulation", "a modulation on a tree cannot be solved yet: give a lumped load in a table [load]")
+	}
+	if err := s.ventricle(&c); err != nil {
 		return c, err
 	}
 	if err := s.pump(&c); err != nil {

@@ -86,6 +86,17 @@ func NewCoupledTree(c Coupling, n tree.Network) (*CoupledTree, error) {
 	return k, nil
 }
 
+// aboveBand is the power of the root flow last read at frequencies that the
+// tree does not see, Zc |Q|², mmHg mL/s: less than a hundredth of a milliwatt. It
+// is booked in the segments, where such waves fade.
+func (k *CoupledTree) aboveBand() float64 {
+	power := 0.0
+	for _, q := range k.spectrum[len(k.beyond):] {
+		power += 2 * k.Load.Zc * (real(q)*real(q) + imag(q)*imag(q))
+	}
+	return power
+}
+
 // plan prepares transforms, the solver of the tree and the rest.
 func (k *CoupledTree) plan(load *tree.Load) error {
 	period := k.Ventricle.Period
@@ -200,6 +211,11 @@ func (k *CoupledTree) describe(o orbit, speed float64, rounds int, flow []float6
 		RootFlow:     data.Period{Samples: flow, Rate: float64(k.samples) / k.Ventricle.Period},
 	}
 	state.Rounds = rounds
+	// The samples have the mean of the continuous flow, which kinks at the valve.
+	shift := state.Flow() - state.RootFlow.Mean()
+	for j := range flow {
+		flow[j] += shift
+	}
 	solved, err := k.solver.Solve(state.RootFlow)
 	if err != nil {
 		return state, err
@@ -211,6 +227,7 @@ func (k *CoupledTree) describe(o orbit, speed float64, rounds int, flow []float6
 		term, _ := ledger.Term(name)
 		*into = term.Total() * period
 	}
+	e.Segments += k.aboveBand() * period
 	e.Zc, e.R = 0, 0
 	state.Warnings = k.warnings(&state.CoupledState)
 	return state, nil
