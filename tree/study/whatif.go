@@ -73,14 +73,19 @@ func (f Fit) moved(ctx context.Context, i int, all []move) ([]WhatIf, error) {
 	return out, nil
 }
 
-// Modelled is the pressure that an estimate's R and C make of the average flow,
-// as wk2; false where the estimate or the flow does not allow it.
-func (f Fit) Modelled(e estimate.Estimate) (data.Period, bool) {
+// LoadOf is the wk2 that an estimate's R and C make; false where it has none.
+func (f Fit) LoadOf(e estimate.Estimate) (fitting.Lumped, bool) {
 	wk2, ok := fitting.ByName("wk2")
-	if !ok || !(e.R > 0 && e.C > 0) || f.Beats.Flow.Count == 0 {
+	return fitting.Lumped{Model: wk2, Values: fitting.Values{R: e.R, C: e.C}}, ok && e.R > 0 && e.C > 0
+}
+
+// Modelled is the pressure that [Fit.LoadOf] makes of the average flow; false
+// where the estimate or the flow does not allow it.
+func (f Fit) Modelled(e estimate.Estimate) (data.Period, bool) {
+	load, ok := f.LoadOf(e)
+	if !ok || f.Beats.Flow.Count == 0 {
 		return data.Period{}, false
 	}
-	load := fitting.Lumped{Model: wk2, Values: fitting.Values{R: e.R, C: e.C}}
 	return fitting.Respond(load, f.Beats.Flow.Period, outflow(f.Beats)), true
 }
 

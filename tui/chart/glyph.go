@@ -5,8 +5,9 @@ import "github.com/guptarohit/asciigraph"
 // Glyph is what a curve is made of.
 type Glyph int
 
-// The glyphs. Only Line and Stars have a colour. Dots are not joined, and never
-// cover another curve: they are for a cloud of many series behind one.
+// The glyphs. Only Line and Stars have a colour. Dots and Points are not joined.
+// Dots never cover another curve: they are for a cloud of many series behind one;
+// Points cover all: they are for single values that a curve runs through.
 const (
 	ByOrder Glyph = iota // Line for the first series, Stars for the second, Circles, Crosses, then Dots
 	Line
@@ -14,6 +15,7 @@ const (
 	Circles
 	Crosses
 	Dots
+	Points
 )
 
 // of resolves ByOrder for series k, counted from 0.
@@ -39,7 +41,7 @@ func (g Glyph) key(t Theme) string {
 	switch g {
 	case Stars:
 		return "*"
-	case Circles:
+	case Circles, Points:
 		return "o"
 	case Crosses:
 		return "+"

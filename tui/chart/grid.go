@@ -56,6 +56,12 @@ func (g grid) series(values []float64, y Axis, glyph Glyph, t Theme) {
 	switch {
 	case glyph == Dots:
 		g.dots(heights[:len(values)])
+	case glyph == Points:
+		for c, h := range heights[:len(values)] {
+			if !math.IsNaN(h) {
+				*g.at(c, g.lines-1-int(h)) = cell{char: 'o', curve: true}
+			}
+		}
 	case drawn:
 		g.curve(heights, glyph, t)
 	}

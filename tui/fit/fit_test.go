@@ -15,6 +15,7 @@ import (
 	"afterbeat/data/casefile"
 	"afterbeat/data/casenote"
 	"afterbeat/fitting"
+	"afterbeat/fitting/harmonic"
 	"afterbeat/tree/study"
 	"afterbeat/tui"
 	"afterbeat/tui/fit"
@@ -51,6 +52,8 @@ func TestGolden(t *testing.T) {
 	screentest.Golden(t, "opened", views(s, "down", "enter"))
 	screentest.Golden(t, "estimator", views(s, "right", "right", "right"))
 	screentest.Golden(t, "recommendation", views(s, "r"), small)
+	screentest.Golden(t, "impedance", views(s, "z"))
+	screentest.Golden(t, "waves", views(s, "w"))
 	screentest.Golden(t, "table", views(s, "t"), small)
 	screentest.Golden(t, "flow", views(s, "f"), small)
 	screentest.Golden(t, "pressure-only", views(screentest.Pressure(t, "aortic_pressure", true)), small)
@@ -225,6 +228,37 @@ func TestAnyNumberOpens(t *testing.T) {
 	says(t, b.View(), "of decay", "ln(P - Pv) = a - t/tau", "none: this method gives no interval")
 }
 
+// The impedance has a point a harmonic that is shown, and the model over them;
+// the waves open into what is read off them.
+func TestImpedanceAndWaves(t *testing.T) {
+	s := computed(t)
+	shown := harmonic.Shown(s.Fit.Impedance)
+	b := screentest.New(fit.New(), s, tui.Area{Width: 160, Height: 46}, tui.Theme{ASCII: true}).Press("z")
+	says(t, b.View(), fmt.Sprintf("wk3 beat: |Z| at %d of %d harmonics", len(shown), len(s.Fit.Impedance)), "phase, degrees")
+	points := 0
+	for _, line := range strings.Split(b.View(), "\n")[1:24] {
+		if _, curves, ok := strings.Cut(line, "|"); ok {
+			points += strings.Count(curves, "o")
+		} else if _, curves, ok = strings.Cut(line, "+"); ok && !strings.Contains(line, "Hz") {
+			points += strings.Count(curves, "o")
+		}
+	}
+	if points != 2*len(shown) {
+		t.Errorf("%d points of %d harmonics, twice:\n%s", points, len(shown), b.View())
+	}
+	first := b.View()
+	if b.Press("left").View() == first || !strings.Contains(b.View(), "wk2 beat: |Z|") {
+		t.Error("another model has the same impedance")
+	}
+	b.Press("w")
+	says(t, b.View(), "Reflection "+casenote.Format(s.Fit.Waves.Magnitude.Value, s.Fit.Waves.Magnitude.Random)+" (", "P+", "P-")
+	b.Press("enter", "k")
+	for range 9 {
+		b.Press("j")
+	}
+	says(t, b.View(), "> return time", "foot of the forward wave", "no systematic error is in it")
+}
+
 // Every model of package fitting has its equation here.
 func TestEveryModelHasItsEquation(t *testing.T) {
 	s := computed(t)
@@ -338,7 +372,7 @@ func TestEscClosesANumber(t *testing.T) {
 }
 
 func TestEveryKeyIsListedWithAllItsNames(t *testing.T) {
-	for _, keys := range [][]string{nil, {"enter"}, {"r"}, {"t"}, {"f"}, {"v"}, {"]"}, {"left", "left"}} {
+	for _, keys := range [][]string{nil, {"enter"}, {"r"}, {"t"}, {"f"}, {"z"}, {"w"}, {"v"}, {"]"}, {"left", "left"}} {
 		screentest.NamesAll(t, open(computed(t), keys...).Screen)
 	}
 }

@@ -9,6 +9,7 @@ import (
 	tea "github.com/charmbracelet/bubbletea"
 
 	"afterbeat/data"
+	"afterbeat/fitting/harmonic"
 	"afterbeat/tree/study"
 	"afterbeat/tui"
 	_ "afterbeat/tui/background"
@@ -300,8 +301,10 @@ func (m Model) has(p picture) bool {
 		return false
 	case p == ofFlow:
 		return m.fit.Beats.Flow.Count > 0 && m.fit.Beats.Pressure.Count > 0
-	case p == ofImpedance, p == ofWaves:
-		return false
+	case p == ofImpedance:
+		return len(harmonic.Shown(m.fit.Impedance)) > 0
+	case p == ofWaves:
+		return len(m.fit.Waves.Forward.Samples) > 0
 	}
 	return true
 }

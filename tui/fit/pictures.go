@@ -18,8 +18,9 @@ import (
 // pictures are the curves of all models and of the flow, drawn within the
 // bounds that the models share, so that a step from model to model draws nothing.
 type pictures struct {
-	items []string // one a way; the measured pressure alone where there is none
-	flow  string
+	items       []string // one a way; the measured pressure alone where there is none
+	impedances  []string // one a way
+	flow, waves string
 }
 
 // picturesMsg brings pictures that were asked for.
@@ -62,7 +63,7 @@ func (m Model) drawing() drawing {
 }
 
 func (d drawing) pictures() pictures {
-	out := pictures{flow: d.flow()}
+	out := pictures{flow: d.flow(), waves: d.waves(), impedances: d.impedances()}
 	for i, one := range d.items {
 		out.items = append(out.items, d.item(i, one))
 	}

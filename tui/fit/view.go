@@ -44,6 +44,10 @@ func (m Model) drawnNow() string {
 	switch {
 	case m.picture == ofFlow:
 		return m.pictures.flow
+	case m.picture == ofWaves:
+		return m.pictures.waves
+	case m.picture == ofImpedance && m.shown < len(m.pictures.impedances):
+		return m.pictures.impedances[m.shown]
 	case m.moved > 0 && m.moved <= len(w.pictures):
 		return w.pictures[m.moved-1]
 	case m.shown < len(m.pictures.items):

@@ -105,7 +105,7 @@ func (m Model) explained() []explain.Number {
 		}
 		out = append(out, n)
 	}
-	return out
+	return append(out, m.readOffWaves()...)
 }
 
 // leads are the errors that a number's doubt comes from, the largest first: each
