@@ -76,7 +76,10 @@ func holdBudget(t *testing.T, theme tui.Theme) {
 		{"1 j 2", 2000}, // j: the trace of another channel
 		{"n n p", 600},
 		{"3", 2000},
-		{"left right ]", 600},
+		{"left right ] ] left [ esc", 600},
+		{"z", 2000}, // another picture
+		{"left right", 600},
+		{"w w enter j esc", 2000},
 		{"4 5", 2000},
 		{"up down", 600},
 		{"6 j", 2000}, // j: every line of the note moves

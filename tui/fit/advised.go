@@ -14,7 +14,7 @@ func (m Model) advised() []string {
 	width := m.area.Width
 	lines := layout.Wrap(layout.Clean(m.advice(), m.theme), width)
 	if m.fits() > 0 {
-		lines = append(lines, "", fmt.Sprintf("%-10s%9s%9s%9s%10s", "", "AICc", "BIC", "delta", "rms mmHg"))
+		lines = append(lines, "", fmt.Sprintf("%-10s%9s%9s%9s%10s", "", "AICc", "BIC", "dAICc", "rms mmHg"))
 	}
 	for _, one := range m.items {
 		if one.fitted() {
@@ -25,7 +25,7 @@ func (m Model) advised() []string {
 		}
 	}
 	if m.fits() > 0 {
-		lines = append(lines, layout.Wrap(layout.Clean("delta: AICc less the lowest of the basis. Lower is better; the person decides.", m.theme), width)...)
+		lines = append(lines, layout.Wrap(layout.Clean("dAICc: AICc less the lowest of the basis. Lower is better; the person decides.", m.theme), width)...)
 		lines = append(lines, "")
 	}
 	for _, one := range m.items {

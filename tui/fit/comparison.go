@@ -44,9 +44,9 @@ func (m Model) comparison(p plan) []string {
 func (m Model) comparisonHead(width int) string {
 	switch full := width >= fullWidth; {
 	case m.item().fitted() && full:
-		return fmt.Sprintf("  %-5s%8s%8s%7s%9s", m.item().group, "AICc", "BIC", "delta", "rms mmHg")
+		return fmt.Sprintf("  %-5s%8s%8s%7s%9s", m.item().group, "AICc", "BIC", "dAICc", "rms mmHg")
 	case m.item().fitted():
-		return fmt.Sprintf("  %-5s%5s%8s", m.item().group, "delta", "rms")
+		return fmt.Sprintf("  %-5s%5s%8s", m.item().group, "dAICc", "rms")
 	case full:
 		return fmt.Sprintf("  %-16s%7s%7s%7s", "other ways", "R", "C", "tau s")
 	}

@@ -234,7 +234,7 @@ func TestImpedanceAndWaves(t *testing.T) {
 	s := computed(t)
 	shown := harmonic.Shown(s.Fit.Impedance)
 	b := screentest.New(fit.New(), s, tui.Area{Width: 160, Height: 46}, tui.Theme{ASCII: true}).Press("z")
-	says(t, b.View(), fmt.Sprintf("wk3 beat: |Z| at %d of %d harmonics", len(shown), len(s.Fit.Impedance)), "phase, degrees")
+	says(t, b.View(), fmt.Sprintf("|Z| at %d of %d harmonics", len(shown), len(s.Fit.Impedance)), "phase, degrees")
 	points := 0
 	for _, line := range strings.Split(b.View(), "\n")[1:24] {
 		if _, curves, ok := strings.Cut(line, "|"); ok {
@@ -247,7 +247,7 @@ func TestImpedanceAndWaves(t *testing.T) {
 		t.Errorf("%d points of %d harmonics, twice:\n%s", points, len(shown), b.View())
 	}
 	first := b.View()
-	if b.Press("left").View() == first || !strings.Contains(b.View(), "wk2 beat: |Z|") {
+	if b.Press("left").View() == first || !strings.Contains(b.View(), "> wk2") {
 		t.Error("another model has the same impedance")
 	}
 	b.Press("w")

@@ -32,7 +32,7 @@ func (d drawing) impedance(i int, shown []harmonic.Harmonic) string {
 	x := chart.Axis{Low: 0, High: shown[len(shown)-1].Frequency, Name: "frequency", Unit: "Hz"}
 	one := d.items[i]
 	modulus := spectrum{
-		title: fmt.Sprintf("%s: |Z| at %d of %d harmonics", one.title(), len(shown), len(d.fit.Impedance)),
+		title: d.impedanceTitle(one, shown),
 		unit:  unitOf(d.fit, "R"), of: harmonic.Harmonic.Modulus, scatter: func(h harmonic.Harmonic) float64 { return h.ModulusSD },
 		load: cmplx.Abs,
 	}
@@ -48,15 +48,25 @@ func (d drawing) impedance(i int, shown []harmonic.Harmonic) string {
 		if columns, above = p.Area(d.plan.width, d.plan.plot); columns == 0 {
 			return ""
 		}
-		p.Series = modulus.series(shown, p, columns, above, d.load(one), one.name)
+		p.Series = modulus.series(shown, p, columns, above, d.load(one), "model")
 		return p.Draw(d.plan.width, d.plan.plot, d.theme)
 	}
-	s.Main.Series = modulus.series(shown, s.Main, columns, above, d.load(one), one.name)
+	s.Main.Series = modulus.series(shown, s.Main, columns, above, d.load(one), "model")
 	s.Lower.Series = phase.series(shown, s.Lower, columns, below, d.load(one), "")
 	for k := range s.Lower.Series {
 		s.Lower.Series[k].Name = ""
 	}
 	return s.Draw(d.plan.width, d.plan.plot, d.theme)
+}
+
+// impedanceTitle says what is drawn. It names the way only where no list beside
+// the numbers does: on a slow line every byte that stays is one less to send.
+func (d drawing) impedanceTitle(one item, shown []harmonic.Harmonic) string {
+	title := fmt.Sprintf("|Z| at %d of %d harmonics", len(shown), len(d.fit.Impedance))
+	if d.plan.beside {
+		return title
+	}
+	return one.title() + ": " + title
 }
 
 // load is the impedance of a way at a frequency, rad/s; nil where it has none.
