@@ -39,6 +39,7 @@ type Case struct {
 	Beats      string    `key:"beats" value:"measured|support" help:"how beats are looked for: support for a pulse of a few mmHg"`
 	OneBeat    bool      `key:"one_beat" help:"the recording is exactly one period"`
 	Model      string    `key:"model" value:"NAME|all" help:"model to fit"`
+	Basis      string    `key:"basis" value:"beat|span" help:"what the fit that goes downstream is fitted to, the average beat or the whole span"`
 	Replicates *int      `key:"replicates" value:"N" help:"replicates of the uncertainty"`
 	Seed       *int      `key:"seed" value:"N" help:"seed of the replicates"`
 	Share      []float64 `key:"share" value:"0..1" help:"share of the flow that the pump takes"`

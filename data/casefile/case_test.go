@@ -56,7 +56,7 @@ hold_resistance = 0.9
 drop = [3.5]
 keep = [7, 8.25]
 remark = "worth a second look"
-
+basis = "span"
 error.flow = "10 %"
 error.cardiac-output = 0.5
 ventricle = { Pfill = 20, activation = "hill" }
@@ -90,7 +90,7 @@ func fullCase() Case {
 		DiameterCM: ptr(2.1), AngleDeg: ptr(20.0), Profile: "1",
 		OutflowPressure: ptr(0.0), Delay: "0.0125",
 		Error: map[string]string{"flow": "10%", "cardiac-output": "0.5"},
-		Beats: "support", OneBeat: true, Model: "wk3", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
+		Beats: "support", OneBeat: true, Model: "wk3", Basis: "span", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
 		EDVML: ptr(210.0), EF: ptr(0.25), Pump: map[string]string{"set": "generic A"}, Speed: []float64{8, 9.5},
 		Match: "flow", HoldResistance: ptr(0.9), Ventricle: map[string]string{"Pfill": "20", "activation": "hill"},
 		Modulation: map[string]string{"shape": "square", "low": "7.5", "locked": "2"},
@@ -234,7 +234,7 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		DiameterCM: optional("diameter"), AngleDeg: optional("angle"), Profile: amount.Draw(t, "profile"),
 		OutflowPressure: optional("outflow"), Delay: amount.Draw(t, "delay"),
 		Error: rapid.MapOfN(rapid.SampledFrom(Errors()), amount, 0, 3).Draw(t, "error"),
-		Beats: word.Draw(t, "beats"), OneBeat: rapid.Bool().Draw(t, "one beat"), Model: word.Draw(t, "model"),
+		Beats: word.Draw(t, "beats"), OneBeat: rapid.Bool().Draw(t, "one beat"), Model: word.Draw(t, "model"), Basis: word.Draw(t, "basis"),
 		Replicates: rapid.Ptr(rapid.Int(), true).Draw(t, "replicates"), Seed: rapid.Ptr(rapid.Int(), true).Draw(t, "seed"),
 		Share: rapid.SliceOfN(rapid.Float64Range(0, 1), 0, 4).Draw(t, "share"),
 		EDVML: optional("volume"), EF: optional("fraction"), Pump: owned("pump", "set", "a", "b", "Rc", "lowest"), Speed: rapid.SliceOfN(num, 0, 3).Draw(t, "speed"),

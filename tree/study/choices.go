@@ -160,14 +160,14 @@ func delayOf(c casefile.Case) (seconds float64, stated, auto bool, err error) {
 	return d, true, false, nil
 }
 
-// checkModel refuses a model that there is not.
+// checkModel refuses a model, or a basis, that there is not.
 func checkModel(c casefile.Case) error {
 	names := []string{"all"}
 	for _, m := range fitting.Models() {
 		names = append(names, m.Name)
 	}
 	if c.Model == "" || slices.Contains(names, c.Model) {
-		return nil
+		return checkBasis(c)
 	}
 	return &ChoiceError{Key: "model", What: fmt.Sprintf("%q is no model", data.Clean(c.Model)), Hint: "models: " + list(names)}
 }
@@ -181,6 +181,15 @@ func criteria(c casefile.Case) (beat.Criteria, error) {
 		return by, nil
 	}
 	return "", &ChoiceError{Key: "beats", What: fmt.Sprintf("%q is no way to look for beats", data.Clean(c.Beats)), Hint: "measured, or support for a pulse of a few mmHg"}
+}
+
+// checkBasis refuses a basis that there is not.
+func checkBasis(c casefile.Case) error {
+	names := []string{fitting.BasisBeat, fitting.BasisSpan}
+	if c.Basis == "" || slices.Contains(names, c.Basis) {
+		return nil
+	}
+	return &ChoiceError{Key: "basis", What: fmt.Sprintf("%q is no basis of a fit", data.Clean(c.Basis)), Hint: "bases: " + list(names)}
 }
 
 // standardShares are the shares of a sweep where the case states none.

@@ -115,7 +115,7 @@ func (f Fit) conclude(ctx context.Context, d fitting.Beats) (Fit, error) {
 	if f.named() {
 		wanted = f.Beats.Intake.Case.Model
 	}
-	f.Chosen = slices.IndexFunc(f.Results, func(r fitting.Result) bool { return r.Model.Name == wanted })
+	f.Chosen = pick(f.Results, wanted, f.Beats.Intake.Case.Basis)
 	f.Impedance = impedance(f.Beats)
 	f.Estimators = estimators(f.Beats, f.Impedance)
 	f.Waves = f.waves()

@@ -77,6 +77,9 @@ func (f Fit) choiceSection() casenote.Section {
 		if f.named() {
 			by = "by the person"
 		}
+		if f.BasisMissed() {
+			by += "; the basis chosen was not fitted"
+		}
 		s.Rows = append(s.Rows, casenote.Words("used below", f.Results[f.Chosen].Model.Name+", "+by))
 	}
 	return s

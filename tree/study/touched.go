@@ -36,6 +36,7 @@ func withoutWords(c casefile.Case) casefile.Case {
 // follows from it, but on nothing before.
 func withoutFit(c casefile.Case) casefile.Case {
 	c = withoutForecast(c)
+	c.Basis = ""
 	c.Model, c.OutflowPressure, c.Replicates, c.Seed = "", nil, nil, nil
 	return c
 }

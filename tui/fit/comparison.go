@@ -118,7 +118,10 @@ func (m Model) used() string {
 	}
 	r := m.fit.Results[m.fit.Chosen]
 	used := r.Model.Name + " " + r.Basis
-	if m.study.Inputs.Case.Model == r.Model.Name {
+	switch {
+	case m.fit.BasisMissed():
+		used += ", no " + m.study.Inputs.Case.Basis
+	case m.study.Inputs.Case.Model == r.Model.Name:
 		used += ", chosen"
 	}
 	return used

@@ -161,14 +161,14 @@ func TestChoosingIsExplicitAndTakenBack(t *testing.T) {
 	}
 	b.Press("c")
 	got := changes(t, b)
-	if len(got) != 1 || got[0].Model != "wk2" || s.Inputs.Case.Model != "" {
+	if len(got) != 1 || got[0].Model != "wk2" || got[0].Basis != s.Fit.Results[s.Fit.Chosen].Basis || s.Inputs.Case.Model != "" {
 		t.Fatalf("asked for %v", got)
 	}
 	chosen := screentest.Demo(t, func(c *casefile.Case) { c.Model = "wk2" })
 	b.Show(chosen)
 	says(t, b.View(), "wk2 beat (1 of", "Recommended: wk3", "in use wk2 beat, chosen")
 	b.Press("c")
-	if got = changes(t, b); len(got) != 2 || got[1].Model != "" {
+	if got = changes(t, b); len(got) != 2 || got[1].Model != "" || got[1].Basis != "" {
 		t.Fatalf("asked for %v", got)
 	}
 	b.Show(s)
