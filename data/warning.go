@@ -63,6 +63,7 @@ const (
 	CodeDrift         Code = "drift"
 	CodeHum           Code = "hum"
 	CodeNotMatched    Code = "not-matched"
+	CodeCuff          Code = "cuff-calibrated"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -90,6 +91,7 @@ func WarningCodes() []WarningCode {
 		{CodeSpikes, "single samples stand far out of their neighbours"},
 		{CodeDrift, "the level of the trace rises or falls all through the recording"},
 		{CodeHum, "the mains is in the trace"},
+		{CodeCuff, "a pressure was calibrated by a cuff, whose error every interval carries"},
 		{CodeGuessedRole, "a channel was chosen from its name"},
 		{CodeStandIn, "pressure of a limb, or of an unnamed artery, stands in for the root's"},
 		{CodeRegional, "the fit is the load of one vascular bed, not of the body"},

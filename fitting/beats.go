@@ -29,6 +29,7 @@ type Beats struct {
 type Systematic struct {
 	Flow            float64 // of the scale of flow, relative: 0.25 for 25 %
 	PressureScale   float64 // of the scale of pressure, relative
+	PressurePivot   float64 // mmHg: the pressure that an error of scale leaves as it is, no width
 	PressureOffset  float64 // mmHg
 	Delay           float64 // of pressure behind flow, s
 	OutflowPressure float64 // mmHg
@@ -90,7 +91,7 @@ func (b Beats) check() error {
 	if !(b.Rate > 0) || math.IsInf(b.Rate, 0) || !finite(b.OutflowPressure) {
 		return fmt.Errorf("fitting: rate %v Hz, outflow pressure %v mmHg", b.Rate, b.OutflowPressure)
 	}
-	for _, v := range []float64{b.BreathPeriod, b.Systematic.Flow, b.Systematic.PressureScale, b.Systematic.PressureOffset, b.Systematic.Delay, b.Systematic.OutflowPressure} {
+	for _, v := range []float64{b.BreathPeriod, b.Systematic.Flow, b.Systematic.PressureScale, b.Systematic.PressureOffset, b.Systematic.Delay, b.Systematic.OutflowPressure, math.Abs(b.Systematic.PressurePivot)} {
 		if !finite(v) || v < 0 {
 			return fmt.Errorf("fitting: breath period and errors must be 0 or more: %v", v)
 		}

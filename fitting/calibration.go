@@ -28,13 +28,15 @@ const leastScale = 0.05
 // are given.
 func (s Systematic) draw(rng *rand.Rand, pv float64) Calibration {
 	normal := func(halfWidth float64) float64 { return halfWidth / z95 * rng.NormFloat64() }
-	return Calibration{
+	c := Calibration{
 		FlowScale:       max(leastScale, 1+normal(s.Flow)),
 		PressureScale:   max(leastScale, 1+normal(s.PressureScale)),
 		PressureOffset:  normal(s.PressureOffset),
 		Delay:           normal(s.Delay),
 		OutflowPressure: pv + normal(s.OutflowPressure),
 	}
+	c.PressureOffset += s.PressurePivot * (1 - c.PressureScale)
+	return c
 }
 
 // z95 is the half-width of the 95 % interval of a normal distribution, in

@@ -18,7 +18,10 @@ type Case struct {
 	Unit   map[string]string  `key:"unit" value:"NAME=UNIT" help:"unit of a column"`
 	Scale  map[string]float64 `key:"scale" value:"NAME=FACTOR" help:"factor on a column"`
 	Offset map[string]float64 `key:"offset" value:"NAME=VALUE" help:"added to a column after scaling, in its own unit"`
-	Invert []string           `key:"invert" value:"NAME" help:"change the sign of a column"`
+	// Calibrate holds what a cuff read: systolic/diastolic, or mean:M/D.
+	Calibrate      map[string]string  `key:"calibrate" value:"NAME=SYS/DIA" help:"what a cuff read, mmHg, to calibrate a column of pressure by; or NAME=mean:MEAN/DIA"`
+	SensorHeightCM map[string]float64 `key:"sensor_height_cm" value:"NAME=CM" help:"height of the sensor of a column of pressure above the heart"`
+	Invert         []string           `key:"invert" value:"NAME" help:"change the sign of a column"`
 
 	Rate    *float64 `key:"rate" value:"HZ" help:"sampling rate, where there is no time column"`
 	From    *float64 `key:"from" value:"S" help:"begin of the span used, on the file's own clock"`
@@ -69,6 +72,6 @@ func (c Case) Line(key string) int { return c.lines[key] }
 func Errors() []string {
 	return []string{
 		"cardiac-output", "flow", "pressure-scale", "pressure-offset",
-		"diameter", "angle", "delay", "outflow-pressure", "filling-slope",
+		"diameter", "angle", "delay", "outflow-pressure", "filling-slope", "cuff",
 	}
 }

@@ -75,16 +75,21 @@ abp = -3
 shape = "square"
 low = 7.5
 locked = 2
+[calibrate]
+abp = "mean:93/80"
+[sensor_height_cm]
+abp = 12.5
 `
 
 func fullCase() Case {
 	return Case{
 		Recording: "../a b.csv", Label: "pilot-07",
 		Time: "t", Pressure: "abp", Flow: "q", Velocity: "v",
-		Site:   map[string]string{"abp": "root", "q.1": "lvot"},
-		Unit:   map[string]string{"na=me": "mL/s"},
-		Scale:  map[string]float64{"abp": 1.05},
-		Offset: map[string]float64{"abp": -3},
+		Site:      map[string]string{"abp": "root", "q.1": "lvot"},
+		Unit:      map[string]string{"na=me": "mL/s"},
+		Scale:     map[string]float64{"abp": 1.05},
+		Offset:    map[string]float64{"abp": -3},
+		Calibrate: map[string]string{"abp": "mean:93/80"}, SensorHeightCM: map[string]float64{"abp": 12.5},
 		Invert: []string{"q", "v"},
 		Rate:   ptr(125.0), From: ptr(-1.5), To: ptr(0.0), Exclude: "artefacts.csv",
 		DiameterCM: ptr(2.1), AngleDeg: ptr(20.0), Profile: "1",
@@ -229,6 +234,7 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		Time:      word.Draw(t, "time"), Pressure: word.Draw(t, "pressure"), Flow: word.Draw(t, "flow"), Velocity: word.Draw(t, "velocity"),
 		Site: rapid.MapOfN(word, value, 0, 3).Draw(t, "site"), Unit: rapid.MapOfN(word, value, 0, 3).Draw(t, "unit"),
 		Scale: rapid.MapOfN(word, num, 0, 3).Draw(t, "scale"), Offset: rapid.MapOfN(word, num, 0, 3).Draw(t, "offset"),
+		Calibrate: rapid.MapOfN(word, value, 0, 2).Draw(t, "calibrate"), SensorHeightCM: rapid.MapOfN(word, num, 0, 2).Draw(t, "height"),
 		Invert: rapid.SliceOfN(word, 0, 3).Draw(t, "invert"),
 		Rate:   optional("rate"), From: optional("from"), To: optional("to"), Exclude: word.Draw(t, "exclude"),
 		DiameterCM: optional("diameter"), AngleDeg: optional("angle"), Profile: amount.Draw(t, "profile"),

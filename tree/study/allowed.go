@@ -43,7 +43,11 @@ func reversed(b Beats) []data.Warning {
 }
 
 func uncalibrated(ch data.Channel, unit string) string {
-	return fmt.Sprintf("%s is in %s, without a scale: state --unit %s=%s with --scale and --offset", ch.Name, ch.Unit.Name, ch.Name, unit)
+	said := fmt.Sprintf("%s is in %s, without a scale: state --unit %s=%s with --scale and --offset", ch.Name, ch.Unit.Name, ch.Name, unit)
+	if unit == "mmHg" {
+		said += fmt.Sprintf(", or --calibrate %s=SYS/DIA", ch.Name)
+	}
+	return said
 }
 
 // checkOutflow refuses an outflow pressure that the mean pressure does not

@@ -22,6 +22,7 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 	widths, _ := halfWidths(b.Intake.Case) // checked when the beats were cut
 	against := data.Estimate{Value: pv, Total: around(pv, widths["outflow-pressure"]), Random: data.NoInterval(), Identified: true}
 	s.Rows = append(s.Rows, casenote.Quantity("outflow pressure", against, "mmHg", origin(b.Intake.Case.OutflowPressure != nil)))
+	pressure := b.Intake.pressureErrors(widths)
 	for _, k := range errorKinds() {
 		w := widths[k.name]
 		if k.name == "delay" {
@@ -37,6 +38,20 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 			}
 		case "filling-slope": // stands with the ventricle
 			continue
+		case "cuff":
+			if !pressure.FromCuff {
+				continue
+			}
+		case "pressure-scale":
+			if pressure.FromCuff {
+				s.Rows = append(s.Rows, casenote.Words("95 % error, "+k.name, fmt.Sprintf("+-%.3g %% about %.4g mmHg (from the cuff's)", 100*pressure.Scale, pressure.Pivot)))
+				continue
+			}
+		case "pressure-offset":
+			if pressure.FromCuff {
+				s.Rows = append(s.Rows, casenote.Words("95 % error, "+k.name, fmt.Sprintf("+-%.3g mmHg (from the cuff's)", pressure.Offset)))
+				continue
+			}
 		case "diameter", "angle":
 			if !parts {
 				continue

@@ -48,6 +48,7 @@ const (
 	defaultDelayError    = 0.010
 	defaultOutflowError  = 10.0 // mmHg
 	defaultSlopeError    = 0.60 // relative, of the filling slope
+	defaultCuffError     = 10.0 // mmHg, of each of the two pressures of a cuff (an assumption; ISO 81060-2 allows a mean error of 5 and a standard deviation of 8, from memory)
 )
 
 // errorKind says how the half-width of one systematic error is written.
@@ -77,6 +78,7 @@ func errorKinds() []errorKind {
 		{"delay", false, "s", defaultDelayError},
 		{"outflow-pressure", false, "mmHg", defaultOutflowError},
 		{"filling-slope", true, "%", defaultSlopeError},
+		{"cuff", false, "mmHg", defaultCuffError},
 	}
 }
 

@@ -5,6 +5,7 @@ import (
 	"slices"
 
 	"afterbeat/data"
+	"afterbeat/data/beat"
 	"afterbeat/data/fault"
 )
 
@@ -17,6 +18,22 @@ func (t Intake) faults(ch data.Channel) []fault.Finding {
 	values := slices.Clone(ch.Values)
 	t.mask(values)
 	return fault.Find(fault.Trace{Values: values, Rate: t.Grid.Rate, Quantity: ch.Quantity, Unit: unitOfValues(ch), Name: ch.Name})
+}
+
+// madeReady is a channel without what its faults make unusable, short holes filled,
+// and nothing outside the span.
+func (t Intake) madeReady(ch data.Channel) readyChannel {
+	r := readyChannel{faults: t.faults(ch)}
+	whole, filled := beat.Bridge(withoutFaults(ch.Values, r.faults), t.Grid.Rate)
+	r.values, r.filled = slices.Clone(whole), filled
+	t.mask(r.values)
+	return r
+}
+
+type readyChannel struct {
+	values []float64
+	filled int
+	faults []fault.Finding
 }
 
 // withoutFaults is the values with NaN where a fault makes them unusable.

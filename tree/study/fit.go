@@ -153,6 +153,7 @@ func fitData(b Beats) (fitting.Beats, error) {
 	if err != nil {
 		return fitting.Beats{}, err
 	}
+	pressure := b.Intake.pressureErrors(widths)
 	return fitting.Beats{
 		Rate:            b.Ensemble.Rate,
 		Pressure:        b.Ensemble.Beats[0],
@@ -163,8 +164,9 @@ func fitData(b Beats) (fitting.Beats, error) {
 		PerArea:         b.FlowInfo.PerArea,
 		Systematic: fitting.Systematic{
 			Flow:            b.FlowInfo.Error,
-			PressureScale:   widths["pressure-scale"],
-			PressureOffset:  widths["pressure-offset"],
+			PressureScale:   pressure.Scale,
+			PressurePivot:   pressure.Pivot,
+			PressureOffset:  pressure.Offset,
 			Delay:           b.Delay.Error,
 			OutflowPressure: widths["outflow-pressure"],
 		},

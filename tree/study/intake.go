@@ -9,7 +9,6 @@ import (
 	"strings"
 
 	"afterbeat/data"
-	"afterbeat/data/beat"
 	"afterbeat/data/casefile"
 	"afterbeat/data/fault"
 	"afterbeat/data/unit"
@@ -37,7 +36,9 @@ type Intake struct {
 	// between columns. The beats of every channel can be looked at all the same.
 	Ambiguous *data.AmbiguousError
 	// Span is what is used of the clock; Excluded are the stretches left out of it.
-	Span     data.Span
+	Span data.Span
+	// Cuffs are the calibrations by a cuff, by channel.
+	Cuffs    map[int]Cuff
 	Excluded []data.Span
 	// Modulation is that of the inputs.
 	Modulation *support.Modulation
@@ -62,6 +63,11 @@ func TakeIn(in Inputs) (Intake, error) {
 	if err != nil {
 		return out, err
 	}
+	cuffs, err := cuffs(channels, c)
+	if err != nil {
+		return out, err
+	}
+	out.Cuffs = map[int]Cuff{}
 	if out.Span, err = span(in.Recording, c); err != nil {
 		return out, err
 	}
@@ -75,14 +81,21 @@ func TakeIn(in Inputs) (Intake, error) {
 	out.Grid = grid
 	for i, cal := range calibrations {
 		channels[i].Values = calibrated(values[i], cal.scale, cal.shift)
-		found := out.faults(channels[i])
-		whole, filled := beat.Bridge(withoutFaults(channels[i].Values, found), grid.Rate)
-		channels[i].Values = slices.Clone(whole)
-		out.mask(channels[i].Values)
-		out.Faults, out.Filled = append(out.Faults, found), append(out.Filled, filled)
+		ready := out.madeReady(channels[i])
+		if cuff, ok := cuffs[i]; ok {
+			if cuff, err = cuff.against(ready.values, grid.Rate); err != nil {
+				return out, err
+			}
+			out.Cuffs[i] = cuff
+			channels[i].Values = calibrated(channels[i].Values, cuff.Scale, cuff.Shift)
+			channels[i].Unit = unit.Internal(unit.Pressure)
+			ready = out.madeReady(channels[i])
+		}
+		channels[i].Values = ready.values
+		out.Faults, out.Filled = append(out.Faults, ready.faults), append(out.Filled, ready.filled)
 	}
 	out.Channels = channels
-	out.Warnings = slices.Concat(in.Recording.Warnings, guesses(out), out.faultWarnings(), siteWarnings(out))
+	out.Warnings = slices.Concat(out.readWarnings(), guesses(out), out.faultWarnings(), out.cuffWarnings(), siteWarnings(out))
 	return out, nil
 }
 
@@ -133,6 +146,16 @@ func calibrations(channels []data.Channel, c casefile.Case) ([]calibration, erro
 			return nil, noColumn("offset."+name, err, channels)
 		}
 		out[i].shift = c.Offset[name] * channels[i].Unit.Factor
+	}
+	for _, name := range sorted(c.SensorHeightCM) {
+		i, err := data.FindChannel(channels, name, "--sensor-height-cm")
+		if err != nil {
+			return nil, noColumn("sensor_height_cm."+name, err, channels)
+		}
+		if channels[i].Quantity != unit.Pressure {
+			return nil, &ChoiceError{Key: "sensor_height_cm." + name, What: "the column is no pressure", Hint: "height matters to pressures only"}
+		}
+		out[i].shift += hydrostatic(channels[i].Site) * c.SensorHeightCM[name]
 	}
 	for _, name := range c.Invert {
 		i, err := data.FindChannel(channels, name, "--invert")

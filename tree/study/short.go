@@ -52,12 +52,13 @@ func (b Beats) measuredRows() []casenote.Row {
 	if b.Pressure.Count > 0 {
 		c := indexColumn{beat.Measure(b.Pressure.Period), b.Ensemble.LeaveOut(next), 0}
 		next++
-		scale, offset := widths["pressure-scale"], widths["pressure-offset"]
+		errors := b.Intake.pressureErrors(widths)
 		if !b.Intake.Channels[b.Intake.Selection.Pressure].Unit.Calibrated {
-			scale, offset = 0, 0 // they are those of a calibration
+			errors = pressureErrors{} // they are those of a calibration
 		}
-		mean := withSystematic(c.estimate(indexRow{of: func(m beat.Measures) float64 { return m.Mean }}), scale, offset)
-		pulse := withSystematic(c.estimate(indexRow{of: func(m beat.Measures) float64 { return m.Amplitude }}), scale, 0)
+		mean := withSystematic(c.estimate(indexRow{of: func(m beat.Measures) float64 { return m.Mean - errors.Pivot }}), errors.Scale, errors.Offset)
+		mean = raised(mean, errors.Pivot)
+		pulse := withSystematic(c.estimate(indexRow{of: func(m beat.Measures) float64 { return m.Amplitude }}), errors.Scale, 0)
 		rows = append(rows,
 			casenote.Quantity("mean pressure", mean, b.pressureUnit(), data.Measured),
 			casenote.Quantity("pulse pressure", pulse, b.pressureUnit(), data.Measured))
@@ -68,6 +69,14 @@ func (b Beats) measuredRows() []casenote.Row {
 		rows = append(rows, casenote.Quantity("mean flow", withSystematic(mean, b.FlowInfo.Error, 0), "L/min", data.Measured))
 	}
 	return rows
+}
+
+// raised is the estimate with v added.
+func raised(e data.Estimate, v float64) data.Estimate {
+	e.Value += v
+	e.Total = data.Interval{Low: e.Total.Low + v, High: e.Total.High + v}
+	e.Random = data.Interval{Low: e.Random.Low + v, High: e.Random.High + v}
+	return e
 }
 
 // withSystematic adds a relative and an absolute 95 % half-width of systematic

@@ -12,6 +12,7 @@ import (
 	"afterbeat/data"
 	"afterbeat/data/casefile"
 	"afterbeat/data/casenote"
+	"afterbeat/data/fault"
 	"afterbeat/data/unit"
 	"afterbeat/tree/study"
 	"afterbeat/tui/chart"
@@ -71,7 +72,11 @@ func makeReady(number int, in study.Inputs) ready {
 		r.selection, r.warnings = taken.Selection, taken.Warnings
 	}
 	for i, ch := range channels {
-		r.channels = append(r.channels, r.channel(ch, in, i, number, grid))
+		var faults []fault.Finding
+		if i < len(taken.Faults) {
+			faults = taken.Faults[i]
+		}
+		r.channels = append(r.channels, r.channel(ch, in, i, number, grid, faults))
 	}
 	return r
 }
@@ -110,7 +115,7 @@ func asRead(rec *data.Recording) ([]data.Channel, data.Grid) {
 	return channels, grid
 }
 
-func (r ready) channel(ch data.Channel, in study.Inputs, i, number int, grid data.Grid) channel {
+func (r ready) channel(ch data.Channel, in study.Inputs, i, number int, grid data.Grid, faults []fault.Finding) channel {
 	c := channel{Channel: ch, unit: ch.Unit.Name, used: r.role(i)}
 	if ch.Unit.Calibrated {
 		c.unit = unit.Internal(ch.Quantity).Name
@@ -120,7 +125,7 @@ func (r ready) channel(ch data.Channel, in study.Inputs, i, number int, grid dat
 	c.upsideDown = ch.Quantity == unit.Pressure && c.used != "" && mean(ch.Values) < 0
 	c.source = trace.Source{
 		ID: fmt.Sprintf("intake %d %d", number, i), Name: ch.Name.String(), Unit: c.unit,
-		Grid: grid, Values: ch.Values, Marks: r.marks(ch.Values, grid, in),
+		Grid: grid, Values: ch.Values, Marks: r.marks(ch.Values, grid, in, faults),
 	}
 	return c
 }
@@ -180,7 +185,7 @@ func inWords(c data.Clock) string {
 }
 
 // marks tell what of a channel cannot be used, and where the span ends.
-func (r ready) marks(values []float64, grid data.Grid, in study.Inputs) []chart.Mark {
+func (r ready) marks(values []float64, grid data.Grid, in study.Inputs, faults []fault.Finding) []chart.Mark {
 	first, last := grid.At(0), grid.At(max(len(values)-1, 0))
 	outside := chart.Mark{Char: '-'}
 	ends := []chart.Mark{{Char: '['}, {Char: ']'}}
@@ -194,7 +199,18 @@ func (r ready) marks(values []float64, grid data.Grid, in study.Inputs) []chart.
 		outside.Spans = append(outside.Spans, data.Span{From: r.span.To, To: last})
 		ends[1].At = []float64{r.span.To}
 	}
-	missing := chart.Mark{Char: '?', Spans: holes(values, grid)}
+	faulty := chart.Mark{Char: '!'}
+	for _, f := range faults {
+		if f.Unusable {
+			for _, run := range f.Runs {
+				faulty.Spans = append(faulty.Spans, data.Span{From: grid.At(run.From), To: grid.At(run.To - 1)})
+			}
+		}
+	}
+	if len(faulty.Spans) > 0 {
+		faulty.Name = "unusable"
+	}
+	missing := chart.Mark{Char: '?', Spans: without(holes(values, grid), faulty.Spans)}
 	if len(missing.Spans) > 0 {
 		missing.Name = "missing"
 	}
@@ -202,7 +218,14 @@ func (r ready) marks(values []float64, grid data.Grid, in study.Inputs) []chart.
 	if len(in.Excluded) > 0 {
 		excluded.Name = "left out"
 	}
-	return append([]chart.Mark{outside, excluded, missing}, ends...)
+	return append([]chart.Mark{outside, excluded, missing, faulty}, ends...)
+}
+
+// without are the spans that overlap none of the others.
+func without(spans, others []data.Span) []data.Span {
+	return slices.DeleteFunc(spans, func(s data.Span) bool {
+		return slices.ContainsFunc(others, func(o data.Span) bool { return s.From <= o.To && o.From <= s.To })
+	})
 }
 
 // holes are the stretches of samples without a value.
@@ -236,7 +259,7 @@ func same(a, b casefile.Case) bool {
 	of := func(c casefile.Case) casefile.Case {
 		return casefile.Case{
 			Pressure: c.Pressure, Flow: c.Flow, Velocity: c.Velocity, Site: c.Site, Unit: c.Unit,
-			Scale: c.Scale, Offset: c.Offset, Invert: c.Invert, From: c.From, To: c.To,
+			Scale: c.Scale, Offset: c.Offset, Invert: c.Invert, Calibrate: c.Calibrate, SensorHeightCM: c.SensorHeightCM, From: c.From, To: c.To,
 			DiameterCM: c.DiameterCM, AngleDeg: c.AngleDeg, Delay: c.Delay, OutflowPressure: c.OutflowPressure,
 		}
 	}

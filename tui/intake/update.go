@@ -164,17 +164,10 @@ func (m Model) askCalibration() Model {
 	inFile := m.ready.channels[m.chosen].Unit.Name
 	m.question = ask(ofCalibration, "calibrate "+m.name(), now.String(), func(text string) (string, bool) {
 		c, err := parseCalibration(text)
-		switch {
-		case err != nil:
+		if err != nil {
 			return err.Error(), false
-		case !c.hasScale && !c.hasOffset:
-			return `as in the file; for instance "scale 1.02 offset -3"`, true
 		}
-		answer := fmt.Sprintf("becomes %g x value", c.scale)
-		if c.hasOffset {
-			answer += fmt.Sprintf(" %+g %s", c.offset, inFile)
-		}
-		return answer, true
+		return c.answer(inFile), true
 	})
 	return m
 }
@@ -219,7 +212,7 @@ func (m Model) typed(msg tea.KeyMsg) (Model, tea.Cmd) {
 	if of == ofCalibration {
 		k, _ := parseCalibration(text)
 		said := "calibration of " + m.name() + " as in the file"
-		if k.hasScale || k.hasOffset {
+		if k.String() != "" {
 			said = "calibration of " + m.name() + ": " + k.String()
 		}
 		return m.change(said, m.names().calibrate(c, m.chosen, k))
