@@ -64,6 +64,8 @@ const (
 	CodeHum           Code = "hum"
 	CodeNotMatched    Code = "not-matched"
 	CodeCuff          Code = "cuff-calibrated"
+	CodeLine          Code = "pressure-line"
+	CodeFiltered      Code = "filtered-flow"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -91,6 +93,8 @@ func WarningCodes() []WarningCode {
 		{CodeSpikes, "single samples stand far out of their neighbours"},
 		{CodeDrift, "the level of the trace rises or falls all through the recording"},
 		{CodeHum, "the mains is in the trace"},
+		{CodeFiltered, "the flow was low-pass filtered more than the pressure"},
+		{CodeLine, "the natural frequency and damping of the pressure line, from a fast flush; or that they are unknown"},
 		{CodeCuff, "a pressure was calibrated by a cuff, whose error every interval carries"},
 		{CodeGuessedRole, "a channel was chosen from its name"},
 		{CodeStandIn, "pressure of a limb, or of an unnamed artery, stands in for the root's"},

@@ -63,6 +63,16 @@
 // times as high as all else within 8 Hz: harmonics of a regular heart come in rows,
 // a mains line stands alone.
 //
+// # The pressure line
+//
+// A line filled with fluid is a mass on a spring with a damper. A fast flush that is
+// let go of shows its natural frequency f and damping zeta (Gardner 1981, Anesthesiology
+// 54:227, from memory): the rings after it are fitted, once the pulse that goes on
+// underneath is taken off (the stretch elsewhere in the trace whose beats agree best
+// with those after the flush). Rings of the height A, A' one half period apart would say
+// the same, zeta = ln(A/A')/sqrt(pi² + ln²(A/A')), f = f_ring/sqrt(1 - zeta²); the fit
+// uses all samples. A trace without a flush tells nothing of its line.
+//
 // # Recalibration of a finger cuff
 //
 // A volume clamp finds its set point anew by holding the cuff at two or more

@@ -71,6 +71,7 @@ func Find(t Trace) []Finding {
 		}
 		out = append(out, found...)
 	}
+	add(t.flushed(s)...)
 	add(t.spikes(s)...)
 	held, period := t.held()
 	add(held...)

@@ -129,7 +129,8 @@ func TestClipped(t *testing.T) {
 
 func TestClippedNowAndThenIsLeftOut(t *testing.T) {
 	trace := supported(200, 60)
-	for from := 1000; from < 11000; from += 3000 { // a flush to the end of the scale
+	trace.Quantity = unit.Flow                     // a pressure would have been flushed
+	for from := 1000; from < 11000; from += 3000 { // to the end of the scale
 		for i := from; i < from+60; i++ {
 			trace.Values[i] = 300
 		}

@@ -8,7 +8,7 @@ import (
 // scale is the yardstick of a trace.
 type scale struct {
 	pulse     float64 // see the package's page; 0 where there is none
-	low, high float64 // 2nd and 98th percentile of all
+	low, high float64 // quartiles, over the windows, of their 2nd and 98th percentiles
 	step      float64 // between neighbouring levels; 0 where levels cannot be told
 }
 
@@ -21,20 +21,22 @@ const (
 // measure takes the yardstick of a trace from a part of its samples.
 func measure(values []float64, rate float64) scale {
 	n := max(2, int(windowOfPulse*rate))
-	var ranges []float64
+	var ranges, lows, highs []float64
 	for from := 0; from+n <= len(values) || from == 0; from += n {
 		some := sample(values[from:min(from+n, len(values))], fewInWindow)
 		if len(some) >= fewInWindow/4 || from == 0 && len(some) > 1 {
-			ranges = append(ranges, quantile(some, 0.98)-quantile(some, 0.02))
+			low, high := quantile(some, 0.02), quantile(some, 0.98)
+			ranges, lows, highs = append(ranges, high-low), append(lows, low), append(highs, high)
 		}
 	}
 	s := scale{pulse: median(ranges)}
 	if math.IsNaN(s.pulse) {
 		s.pulse = 0
 	}
-	some := sample(values, fewInAll)
-	s.low, s.high = quantile(some, 0.02), quantile(some, 0.98)
-	s.step = stepOf(some)
+	slices.Sort(lows)
+	slices.Sort(highs)
+	s.low, s.high = quantile(lows, 0.25), quantile(highs, 0.75)
+	s.step = stepOf(sample(values, fewInAll))
 	return s
 }
 

@@ -78,6 +78,9 @@ func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 		return b, err
 	}
 	b.Warnings = slices.Concat(said, b.Warnings, implausible(b))
+	if b.Reason == "" {
+		b.Warnings = slices.Concat(b.Warnings, b.lineWarnings(), b.filtered())
+	}
 	return b, nil
 }
 
