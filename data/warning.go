@@ -66,6 +66,8 @@ const (
 	CodeCuff          Code = "cuff-calibrated"
 	CodeLine          Code = "pressure-line"
 	CodeFiltered      Code = "filtered-flow"
+	CodeAliased       Code = "aliased-velocity"
+	CodeWallFilter    Code = "wall-filter"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -93,6 +95,8 @@ func WarningCodes() []WarningCode {
 		{CodeSpikes, "single samples stand far out of their neighbours"},
 		{CodeDrift, "the level of the trace rises or falls all through the recording"},
 		{CodeHum, "the mains is in the trace"},
+		{CodeAliased, "a Doppler scale has folded the velocity; it was unfolded"},
+		{CodeWallFilter, "low velocities are cut off by a wall filter: indices are bounds"},
 		{CodeFiltered, "the flow was low-pass filtered more than the pressure"},
 		{CodeLine, "the natural frequency and damping of the pressure line, from a fast flush; or that they are unknown"},
 		{CodeCuff, "a pressure was calibrated by a cuff, whose error every interval carries"},

@@ -21,6 +21,7 @@ type Case struct {
 	// Calibrate holds what a cuff read: systolic/diastolic, or mean:M/D.
 	Calibrate      map[string]string  `key:"calibrate" value:"NAME=SYS/DIA" help:"what a cuff read, mmHg, to calibrate a column of pressure by; or NAME=mean:MEAN/DIA"`
 	SensorHeightCM map[string]float64 `key:"sensor_height_cm" value:"NAME=CM" help:"height of the sensor of a column of pressure above the heart"`
+	VelocityRange  map[string]float64 `key:"velocity_range" value:"NAME=RANGE" help:"whole range of a Doppler scale, to unfold a velocity by, in the column's own unit"`
 	Invert         []string           `key:"invert" value:"NAME" help:"change the sign of a column"`
 
 	Rate    *float64 `key:"rate" value:"HZ" help:"sampling rate, where there is no time column"`

@@ -79,6 +79,8 @@ locked = 2
 abp = "mean:93/80"
 [sensor_height_cm]
 abp = 12.5
+[velocity_range]
+v = 128
 `
 
 func fullCase() Case {
@@ -90,8 +92,9 @@ func fullCase() Case {
 		Scale:     map[string]float64{"abp": 1.05},
 		Offset:    map[string]float64{"abp": -3},
 		Calibrate: map[string]string{"abp": "mean:93/80"}, SensorHeightCM: map[string]float64{"abp": 12.5},
-		Invert: []string{"q", "v"},
-		Rate:   ptr(125.0), From: ptr(-1.5), To: ptr(0.0), Exclude: "artefacts.csv",
+		VelocityRange: map[string]float64{"v": 128},
+		Invert:        []string{"q", "v"},
+		Rate:          ptr(125.0), From: ptr(-1.5), To: ptr(0.0), Exclude: "artefacts.csv",
 		DiameterCM: ptr(2.1), AngleDeg: ptr(20.0), Profile: "1",
 		OutflowPressure: ptr(0.0), Delay: "0.0125",
 		Error: map[string]string{"flow": "10%", "cardiac-output": "0.5"},
@@ -234,7 +237,7 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		Time:      word.Draw(t, "time"), Pressure: word.Draw(t, "pressure"), Flow: word.Draw(t, "flow"), Velocity: word.Draw(t, "velocity"),
 		Site: rapid.MapOfN(word, value, 0, 3).Draw(t, "site"), Unit: rapid.MapOfN(word, value, 0, 3).Draw(t, "unit"),
 		Scale: rapid.MapOfN(word, num, 0, 3).Draw(t, "scale"), Offset: rapid.MapOfN(word, num, 0, 3).Draw(t, "offset"),
-		Calibrate: rapid.MapOfN(word, value, 0, 2).Draw(t, "calibrate"), SensorHeightCM: rapid.MapOfN(word, num, 0, 2).Draw(t, "height"),
+		Calibrate: rapid.MapOfN(word, value, 0, 2).Draw(t, "calibrate"), SensorHeightCM: rapid.MapOfN(word, num, 0, 2).Draw(t, "height"), VelocityRange: rapid.MapOfN(word, num, 0, 2).Draw(t, "range"),
 		Invert: rapid.SliceOfN(word, 0, 3).Draw(t, "invert"),
 		Rate:   optional("rate"), From: optional("from"), To: optional("to"), Exclude: word.Draw(t, "exclude"),
 		DiameterCM: optional("diameter"), AngleDeg: optional("angle"), Profile: amount.Draw(t, "profile"),

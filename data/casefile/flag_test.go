@@ -10,7 +10,7 @@ import (
 
 func TestArguments(t *testing.T) {
 	want := strings.Split("afterbeat study ./-a.csv --label pilot-07 --time t --pressure abp --flow q --velocity v "+
-		"--site abp=root --site q.1=lvot --unit na=me=mL/s --scale abp=1.05 --offset abp=-3 --calibrate abp=mean:93/80 --sensor-height-cm abp=12.5 --invert q --invert v "+
+		"--site abp=root --site q.1=lvot --unit na=me=mL/s --scale abp=1.05 --offset abp=-3 --calibrate abp=mean:93/80 --sensor-height-cm abp=12.5 --velocity-range v=128 --invert q --invert v "+
 		"--rate 125 --from -1.5 --to 0 --exclude artefacts.csv --diameter-cm 2.1 --angle-deg 20 --profile 1 "+
 		"--outflow-pressure 0 --delay 0.0125 --error cardiac-output=0.5 --error flow=10% --drop 3.5 --keep 7 --keep 8.25 --beats support --one-beat --model wk3 --basis span "+
 		"--replicates 2000 --seed -7 --share 0 --share 0.25 --share 1 --edv-ml 210 --ef 0.25", " ")

@@ -73,6 +73,17 @@
 // the same, zeta = ln(A/A')/sqrt(pi² + ln²(A/A')), f = f_ring/sqrt(1 - zeta²); the fit
 // uses all samples. A trace without a flush tells nothing of its line.
 //
+// # Doppler
+//
+// A velocity beyond the end of its scale comes in again at the other end (aliasing).
+// Adding the range of the scale back at every jump of more than half of it is exact if
+// the true velocity never steps so far. The range, where nobody states it, is the
+// median of the jumps less the step that the velocity would have made; only jumps of
+// 60 % of the range of the trace count, some up and some down, and none over half of
+// the scale may be left. A wall filter sets speeds under its own to 0: the trace comes
+// out of zeros by a step at least 2.5 times the next one, where a velocity that starts
+// from rest makes two alike.
+//
 // # Recalibration of a finger cuff
 //
 // A volume clamp finds its set point anew by holding the cuff at two or more

@@ -71,6 +71,11 @@ func Find(t Trace) []Finding {
 		}
 		out = append(out, found...)
 	}
+	if folded := t.aliased(); len(folded) > 0 {
+		t.Values = Unwrap(t.Values, folded[0].Number)
+		s = measure(t.Values, t.Rate)
+		add(folded...)
+	}
 	add(t.flushed(s)...)
 	add(t.spikes(s)...)
 	held, period := t.held()
@@ -82,6 +87,7 @@ func Find(t Trace) []Finding {
 	add(t.quantised(s)...)
 	add(t.recalibrated(s)...)
 	add(t.clipped(s, period)...)
+	add(t.wallFiltered(s, period)...)
 	add(t.drift(s)...)
 	add(t.hum(s)...)
 	return out

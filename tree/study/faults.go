@@ -24,7 +24,13 @@ func (t Intake) faults(ch data.Channel) []fault.Finding {
 // and nothing outside the span.
 func (t Intake) madeReady(ch data.Channel) readyChannel {
 	r := readyChannel{faults: t.faults(ch)}
-	whole, filled := beat.Bridge(withoutFaults(ch.Values, r.faults), t.Grid.Rate)
+	values := ch.Values
+	for _, f := range r.faults {
+		if f.Code == data.CodeAliased {
+			values = fault.Unwrap(values, f.Number)
+		}
+	}
+	whole, filled := beat.Bridge(withoutFaults(values, r.faults), t.Grid.Rate)
 	r.values, r.filled = slices.Clone(whole), filled
 	t.mask(r.values)
 	return r

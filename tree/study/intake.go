@@ -80,6 +80,9 @@ func TakeIn(in Inputs) (Intake, error) {
 	}
 	out.Grid = grid
 	for i, cal := range calibrations {
+		if cal.fold > 0 {
+			values[i] = fault.Unwrap(values[i], cal.fold)
+		}
 		channels[i].Values = calibrated(values[i], cal.scale, cal.shift)
 		ready := out.madeReady(channels[i])
 		if cuff, ok := cuffs[i]; ok {
@@ -157,6 +160,19 @@ func calibrations(channels []data.Channel, c casefile.Case) ([]calibration, erro
 		}
 		out[i].shift += hydrostatic(channels[i].Site) * c.SensorHeightCM[name]
 	}
+	for _, name := range sorted(c.VelocityRange) {
+		key := "velocity_range." + name
+		i, err := data.FindChannel(channels, name, "--velocity-range")
+		switch {
+		case err != nil:
+			return nil, noColumn(key, err, channels)
+		case channels[i].Quantity != unit.Velocity:
+			return nil, &ChoiceError{Key: key, What: "the column is no velocity", Hint: "only a Doppler scale folds"}
+		case !(c.VelocityRange[name] > 0):
+			return nil, &ChoiceError{Key: key, What: "a range is above 0", Hint: "from the lower to the upper end of the scale"}
+		}
+		out[i].fold = c.VelocityRange[name] * channels[i].Unit.Factor
+	}
 	for _, name := range c.Invert {
 		i, err := data.FindChannel(channels, name, "--invert")
 		if err != nil {
@@ -177,8 +193,11 @@ func noColumn(key string, err error, channels []data.Channel) error {
 	return &ChoiceError{Key: key, What: err.Error(), Hint: "columns: " + list(names)}
 }
 
-// calibration turns a value into scale times itself plus shift.
-type calibration struct{ scale, shift float64 }
+// calibration unfolds a value, then makes it scale times itself plus shift.
+type calibration struct {
+	scale, shift float64
+	fold         float64 // range of the scale that folded the values; 0 where none did
+}
 
 func sorted[V any](m map[string]V) []string { return slices.Sorted(maps.Keys(m)) }
 

@@ -22,6 +22,7 @@ func changes() map[string]struct {
 		"recording": {"b.csv", StageIntake}, "exclude": {"ex.csv", StageIntake}, "time": {"time_s", StageIntake}, "rate": {"100", StageIntake},
 		"unit": {"ao_mmHg=kPa", StageIntake}, "scale": {"ao_mmHg=1.1", StageIntake}, "offset": {"ao_mmHg=3", StageIntake}, "invert": {"lvot_velocity", StageIntake},
 		"calibrate":        {"ao_mmHg=120/80", StageIntake},
+		"velocity_range":   {"lvot_velocity=400", StageIntake},
 		"sensor_height_cm": {"ao_mmHg=10", StageIntake},
 		"pressure":         {"ao_mmHg", StageIntake}, "flow": {"ao_flow_mL_s", StageIntake}, "velocity": {"lvot_velocity_cm_s", StageIntake}, "site": {"ao_mmHg=radial", StageIntake},
 		"from": {"1", StageIntake}, "to": {"10", StageIntake}, "drop": {"5", StageIntake}, "keep": {"5", StageIntake},

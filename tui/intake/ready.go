@@ -259,7 +259,7 @@ func same(a, b casefile.Case) bool {
 	of := func(c casefile.Case) casefile.Case {
 		return casefile.Case{
 			Pressure: c.Pressure, Flow: c.Flow, Velocity: c.Velocity, Site: c.Site, Unit: c.Unit,
-			Scale: c.Scale, Offset: c.Offset, Invert: c.Invert, Calibrate: c.Calibrate, SensorHeightCM: c.SensorHeightCM, From: c.From, To: c.To,
+			Scale: c.Scale, Offset: c.Offset, Invert: c.Invert, Calibrate: c.Calibrate, SensorHeightCM: c.SensorHeightCM, VelocityRange: c.VelocityRange, From: c.From, To: c.To,
 			DiameterCM: c.DiameterCM, AngleDeg: c.AngleDeg, Delay: c.Delay, OutflowPressure: c.OutflowPressure,
 		}
 	}
