@@ -55,6 +55,7 @@ type Case struct {
 	Pump           map[string]string `key:"pump" value:"NAME" plain:"set" entries:"set=text,name=text,a,b,c,Rc,Lc,lowest,highest,inlet=text" help:"set of pump coefficients; or a=, b=, c=, Rc=, Lc=, lowest=, highest= (speeds), name=, inlet=ventricle or atrium"`
 	Ventricle      map[string]string `key:"ventricle" value:"WHAT=VALUE" entries:"activation=text,Emax,Emin,Tes,Tr,V0,Pfill,Rmv,Rav,Rar,filling_slope" help:"what is known of the ventricle: V0=, Pfill=, Rmv=, Rav=, Rar= (leak), filling_slope=; or Emax=, Emin=, Tes=, Tr= together"`
 	Speed          []float64         `key:"speed" value:"N" help:"speed of the pump, 1000/min"`
+	Quote          *float64          `key:"quote" value:"N" help:"the speed that the note quotes in short, 1000/min; else the middle one"`
 	Match          string            `key:"match" value:"flow|pressure|none" help:"what is made equal to the native state: mean flow, by the filling pressure; mean pressure, by the resistance"`
 	HoldResistance *float64          `key:"hold_resistance" value:"FACTOR" help:"resistance on support over the native one; then a matched pressure is met by the filling pressure"`
 	Modulation     map[string]string `key:"modulation" value:"FILE" plain:"file" entries:"file=text,shape=text,low,high,rise_s,duty,phase,period_s,locked" help:"speed over one period: a file with time_s,speed_1000_per_min; or shape=sine or square, low=, high= (1000/min), rise_s=, duty=, phase=, locked= (beats; 0: free, of period_s=)"`

@@ -51,6 +51,7 @@ edv_ml = 210
 ef = 0.25
 pump = "generic A"
 speed = [8, 9.5]
+quote = 8
 match = "flow"
 hold_resistance = 0.9
 drop = [3.5]
@@ -100,7 +101,7 @@ func fullCase() Case {
 		Error: map[string]string{"flow": "10%", "cardiac-output": "0.5"},
 		Beats: "support", OneBeat: true, Model: "wk3", Basis: "span", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
 		EDVML: ptr(210.0), EF: ptr(0.25), Pump: map[string]string{"set": "generic A"}, Speed: []float64{8, 9.5},
-		Match: "flow", HoldResistance: ptr(0.9), Ventricle: map[string]string{"Pfill": "20", "activation": "hill"},
+		Quote: ptr(8.0), Match: "flow", HoldResistance: ptr(0.9), Ventricle: map[string]string{"Pfill": "20", "activation": "hill"},
 		Modulation: map[string]string{"shape": "square", "low": "7.5", "locked": "2"},
 		Drop:       []float64{3.5}, Keep: []float64{7, 8.25}, Remark: "worth a second look",
 	}
@@ -123,8 +124,8 @@ func TestReadEveryKey(t *testing.T) {
 		}
 	}
 	for key, line := range map[string]int{
-		"recording": 2, "invert": 8, "rate": 10, "share": 24, "error.flow": 35, "error.cardiac-output": 36, "ventricle.Pfill": 37, "pump": 27,
-		"site": 39, "site.abp": 40, "site.q.1": 41, "unit.na=me": 44, "offset.abp": 48, "modulation.low": 51, "site.other": 0, "": 0,
+		"recording": 2, "invert": 8, "rate": 10, "share": 24, "error.flow": 36, "error.cardiac-output": 37, "ventricle.Pfill": 38, "pump": 27,
+		"site": 40, "site.abp": 41, "site.q.1": 42, "unit.na=me": 45, "offset.abp": 49, "modulation.low": 52, "site.other": 0, "": 0,
 	} {
 		if got := c.Line(key); got != line {
 			t.Errorf("line of %q is %d, want %d", key, got, line)
@@ -248,7 +249,7 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		Share: rapid.SliceOfN(rapid.Float64Range(0, 1), 0, 4).Draw(t, "share"),
 		EDVML: optional("volume"), EF: optional("fraction"), Pump: owned("pump", "set", "a", "b", "Rc", "lowest"), Speed: rapid.SliceOfN(num, 0, 3).Draw(t, "speed"),
 		Ventricle: owned("ventricle", "activation", "Emax", "V0"), Modulation: owned("modulation", "file", "low", "locked"),
-		Match: word.Draw(t, "match"), HoldResistance: optional("hold"),
+		Quote: optional("quote"), Match: word.Draw(t, "match"), HoldResistance: optional("hold"),
 	}
 })
 

@@ -51,6 +51,7 @@ type Forecast struct {
 	match      matching
 	modulation *modulation
 	own        ownVentricle
+	drawn      *drawing         // what the draws are made from; nil: no forecast
 	nominal    support.Coupling // natively
 }
 

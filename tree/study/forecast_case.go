@@ -57,6 +57,19 @@ func middleOf(speeds []float64) int {
 	return best
 }
 
+// quoted is the index of the speed that the note quotes, and the speeds with it
+// among them: that of the case, else the middle one.
+func quoted(c casefile.Case, speeds []float64) (int, []float64) {
+	if c.Quote == nil {
+		return middleOf(speeds), speeds
+	}
+	if !slices.Contains(speeds, *c.Quote) {
+		speeds = append(slices.Clone(speeds), *c.Quote)
+		slices.Sort(speeds)
+	}
+	return slices.Index(speeds, *c.Quote), speeds
+}
+
 // freeRange is a range within which a parameter is drawn, evenly.
 type freeRange struct{ low, high float64 }
 

@@ -34,7 +34,9 @@ func Predict(ctx context.Context, c Comparison) (Forecast, error) {
 	if f.modulation, err = f.modulationOf(kase); err != nil {
 		return f, err
 	}
-	f.Middle = middleOf(speeds)
+	if f.Middle, speeds = quoted(kase, speeds); kase.Quote != nil && !(*kase.Quote > 0 && *kase.Quote <= f.farthest()) {
+		return f, &ChoiceError{Key: "quote", What: fmt.Sprintf("%v is no speed above 0 and up to %g", *kase.Quote, f.farthest()), Hint: "in 1000/min, for instance --quote 9"}
+	}
 	for _, n := range speeds {
 		f.Speeds = append(f.Speeds, ForecastState{CoupledState: support.CoupledState{Speed: n}})
 	}
@@ -85,7 +87,7 @@ func (f Forecast) predict(ctx context.Context) (Forecast, error) {
 	if err != nil {
 		return f, err
 	}
-	f.nominal = coupling
+	f.nominal, f.drawn = coupling, d
 	k, err := support.NewCoupled(f.supported(coupling))
 	if err != nil {
 		return f, err

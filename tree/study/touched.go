@@ -44,7 +44,7 @@ func withoutFit(c casefile.Case) casefile.Case {
 // withoutForecast is the case without the choices that bear on the forecast
 // alone.
 func withoutForecast(c casefile.Case) casefile.Case {
-	c.EDVML, c.EF, c.Pump, c.Ventricle, c.Speed, c.Match, c.HoldResistance = nil, nil, nil, nil, nil, "", nil
+	c.EDVML, c.EF, c.Pump, c.Ventricle, c.Speed, c.Quote, c.Match, c.HoldResistance = nil, nil, nil, nil, nil, nil, "", nil
 	c.Modulation = only(c.Modulation, "file") // which is read with the recording
 	return c
 }

@@ -144,7 +144,11 @@ func (m Model) coupledBody(p plan) []string {
 	}
 	lines := layout.Lines(m.picture, p.plot)
 	if p.figures > 0 {
-		lines = append(lines, m.coupledFigures(p.figures-1)...)
+		figures := m.coupledFigures
+		if m.moved.at != 0 {
+			figures = m.movedFigures
+		}
+		lines = append(lines, figures(p.figures-1)...)
 	}
 	return lines
 }

@@ -135,8 +135,10 @@ func (m Model) coupledPicture(p plan) string {
 }
 
 func (m Model) coupledWaves(p plan) string {
+	unit := "mmHg"
 	t, of := m.curves.coupled.pressure, func(w support.Waves) data.Period { return w.Pressure }
 	if m.flow {
+		unit = "mL/s"
 		t, of = m.curves.coupled.flow, func(w support.Waves) data.Period { return w.RootFlow }
 	}
 	plot := t.plot(t.name)
@@ -145,7 +147,7 @@ func (m Model) coupledWaves(p plan) string {
 		return plot.Table(p.width, p.plot, m.theme.Chart())
 	}
 	plot.Series = []chart.Series{{Name: "native", Values: t.native}, {Name: "supported", Values: t.supported[0][m.at]}}
-	return plot.Draw(p.width, p.plot, m.theme.Chart())
+	return m.withMoved(plot, p, unit, of).Draw(p.width, p.plot, m.theme.Chart())
 }
 
 // overSpeed draws two quantities over the speed, below the line of words on the

@@ -289,7 +289,7 @@ func TestForecastSurvives(t *testing.T) {
 	}
 	empty := study.Forecast{Comparison: *s.Comparison}
 	studies := []study.Study{s, odd(one), odd(bare), odd(empty), computed(t), refused(computed(t), "it cannot be \u202e so"), {}}
-	screentest.Survives(t, func() tui.Screen { return support.New() }, studies, "left", "right", "up", "down", "+", "-", "w", "e", "m", "h", "f", "t", "v", "d", "p")
+	screentest.Survives(t, func() tui.Screen { return support.New() }, studies, "left", "right", "up", "down", "+", "-", "w", "e", "m", "h", "f", "t", "v", "d", "p", "]", "[", "n")
 }
 
 // The forecast of the demo as it is computed.

@@ -14,6 +14,8 @@ type keyMap struct {
 	sweep, energy, indices key.Binding
 	held                   key.Binding
 	depends, ventricle     key.Binding
+	whatIf, whatIfBack     key.Binding
+	leave, quote           key.Binding
 }
 
 func newKeys() keyMap {
@@ -34,6 +36,11 @@ func newKeys() keyMap {
 
 		depends:   bind("d", "depends on", "d"),
 		ventricle: bind("p", "ventricle, pump", "p"),
+
+		whatIf:     bind("]", "what if", "]"),
+		whatIfBack: bind("[", "what-if back", "["),
+		leave:      bind("esc", "end what-if", "esc"),
+		quote:      bind("n", "quote in the note", "n"),
 	}
 }
 
@@ -55,6 +62,11 @@ func (m Model) bindings() keyMap {
 	k.table.SetEnabled(there && (v == waves || v == sweep || v == energy && !m.coupled()))
 	k.depends.SetEnabled(m.coupled())
 	k.ventricle.SetEnabled(m.coupled())
+	possible := m.coupled() && v == waves && !m.table && m.forecast.WhatIfs() > 0
+	k.whatIf.SetEnabled(possible)
+	k.whatIfBack.SetEnabled(possible)
+	k.leave.SetEnabled(m.moved.at != 0)
+	k.quote.SetEnabled(m.coupled() && !v.paged() && !m.quotes())
 	return m.helped(k)
 }
 
@@ -112,8 +124,8 @@ func (m Model) Keys() []key.Binding {
 		moves = "speed"
 	}
 	all := []key.Binding{
-		tui.Pair("j/k/-/+/down/up", moves, k.less, k.more), m.openNumber(), k.sweep, k.energy, k.depends, tui.Pair("left/right", "posing", k.previous, k.next),
-		k.flow, k.indices, k.held, k.ventricle, k.table, m.warnings.Keys.Open,
+		tui.Pair("j/k/-/+/down/up", moves, k.less, k.more), k.leave, m.openNumber(), k.sweep, k.energy, k.depends, tui.Pair("left/right", "posing", k.previous, k.next),
+		tui.Pair("[/]", "what if", k.whatIfBack, k.whatIf), k.quote, k.flow, k.indices, k.held, k.ventricle, k.table, m.warnings.Keys.Open,
 	}
 	if v := m.viewing(); v.paged() && m.there() {
 		all = append([]key.Binding{*k.views()[v]}, m.pageKeys.Bindings()...)

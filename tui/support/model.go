@@ -66,6 +66,7 @@ type Model struct {
 	pageKeys   page.Keys
 	warnings   warnlist.Model
 	numbers    explain.Model
+	moved      moved // a what-if
 }
 
 var _ tui.Screen = Model{}
@@ -88,7 +89,7 @@ func (m Model) Show(s study.Study) (tui.Screen, tea.Cmd) {
 		m.forecast = f
 	}
 	m.warnings = m.warnings.Hold(s.Warnings())
-	m.curves = curves{}
+	m.curves, m.moved = curves{}, moved{}
 	m.request++ // what is under way belongs to another study
 	m = m.placed()
 	m.numbers = m.numbers.Hold(m.explained())
@@ -195,35 +196,46 @@ func (m Model) placed() Model {
 
 // Update answers a key, or takes over curves that were asked for.
 func (m Model) Update(msg tea.Msg) (tui.Screen, tea.Cmd) {
+	var cmd tea.Cmd
 	switch msg := msg.(type) {
 	case curvesMsg:
 		if msg.request == m.request {
 			m.curves = msg.curves
 		}
+	case whatIfMsg:
+		m, cmd = m.takeWhatIf(msg)
 	case tea.KeyMsg:
-		m = m.press(msg)
+		m, cmd = m.press(msg)
 	}
-	return m.drawn(), nil
+	return m.drawn(), cmd
 }
 
-func (m Model) press(msg tea.KeyMsg) Model {
+func (m Model) press(msg tea.KeyMsg) (Model, tea.Cmd) {
 	if m.warnings.Open() || key.Matches(msg, m.warnings.Keys.Open) {
 		m.warnings = m.warnings.Update(msg)
-		return m
+		return m, nil
 	}
 	if m.numbers.Open() || key.Matches(msg, m.numbers.Keys.Open) {
 		m.numbers = m.numbers.Hold(m.explained()).Update(msg)
-		return m
+		return m, nil
 	}
 	switch k := m.bindings(); {
+	case key.Matches(msg, k.whatIf):
+		return m.moveBy(1)
+	case key.Matches(msg, k.whatIfBack):
+		return m.moveBy(-1)
+	case key.Matches(msg, k.leave):
+		m.moved = moved{}
+	case key.Matches(msg, k.quote):
+		return m, m.quote()
 	case key.Matches(msg, k.more):
-		return m.stepBy(1)
+		return m.stepBy(1), nil
 	case key.Matches(msg, k.less):
-		return m.stepBy(-1)
+		return m.stepBy(-1), nil
 	case key.Matches(msg, k.next):
-		return m.otherPosing(1)
+		return m.otherPosing(1), nil
 	case key.Matches(msg, k.previous):
-		return m.otherPosing(-1)
+		return m.otherPosing(-1), nil
 	case key.Matches(msg, k.flow) && m.viewing() == indices:
 		m.figured = !m.figured
 	case key.Matches(msg, k.flow):
@@ -231,9 +243,9 @@ func (m Model) press(msg tea.KeyMsg) Model {
 	case key.Matches(msg, k.table):
 		m.table = !m.table
 	default:
-		return m.look(msg, k)
+		return m.look(msg, k), nil
 	}
-	return m
+	return m, nil
 }
 
 // look opens a view, or leaves it for the waves, or moves through its page.
@@ -243,7 +255,7 @@ func (m Model) look(msg tea.KeyMsg, k keyMap) Model {
 		if !key.Matches(msg, *b) {
 			continue
 		}
-		m.view = v
+		m.view, m.moved = v, moved{}
 		if now == v {
 			m.view = waves
 		}
@@ -274,6 +286,7 @@ func (m Model) otherPosing(by int) Model {
 	if m.coupled() {
 		now = coupledPosing
 	}
+	m.moved = moved{}
 	m.posing = all[(slices.Index(all, now)+by+len(all))%len(all)]
 	return m.placed()
 }

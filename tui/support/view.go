@@ -24,7 +24,11 @@ func (m Model) View() string {
 	}
 	p := m.plan()
 	if m.coupled() {
-		lines := append(m.coupledHead(p), m.coupledBody(p)...)
+		head := m.coupledHead
+		if m.moved.at != 0 {
+			head = m.movedHead
+		}
+		lines := append(head(p), m.coupledBody(p)...)
 		return layout.Fit(append(lines, m.coupledStatus(p)), m.area)
 	}
 	lines := append(m.headline(p), m.notice()...)
