@@ -18,7 +18,7 @@ import (
 func demoForecast(t testing.TB, change func(*casefile.Case)) (Study, *Forecast) {
 	t.Helper()
 	s := demoWith(t, func(c *casefile.Case) {
-		c.Replicates, c.Speed = ptr(10), []float64{8, 9}
+		c.Replicates, c.Speed = ptr(6), []float64{8, 9}
 		change(c)
 	})
 	if s.Forecast.Reason != "" {
@@ -185,7 +185,7 @@ func TestSquareByHand(t *testing.T) {
 func TestOwnPump(t *testing.T) {
 	_, set := demoForecast(t, func(c *casefile.Case) {})
 	f := demoFolder(t)
-	f["own.afterbeat.toml"] = strings.Replace(f["demo.afterbeat.toml"], "[site]", "speed = [8, 9]\nreplicates = 10\nshare = [0.5]\n\n[pump]\nname = \"bench 7\"\na = 1.05\nb = 0.013\nc = 0.0006\nRc = 0.12\nLc = 0.035\nlowest = 6\nhighest = 12\n\n[site]", 1)
+	f["own.afterbeat.toml"] = strings.Replace(f["demo.afterbeat.toml"], "[site]", "speed = [8, 9]\nreplicates = 6\nshare = [0.5]\n\n[pump]\nname = \"bench 7\"\na = 1.05\nb = 0.013\nc = 0.0006\nRc = 0.12\nLc = 0.035\nlowest = 6\nhighest = 12\n\n[site]", 1)
 	c, err := casefile.Read("own.afterbeat.toml", []byte(f["own.afterbeat.toml"]))
 	if err != nil {
 		t.Fatal(err)
