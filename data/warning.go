@@ -68,6 +68,7 @@ const (
 	CodeFiltered      Code = "filtered-flow"
 	CodeAliased       Code = "aliased-velocity"
 	CodeWallFilter    Code = "wall-filter"
+	CodeSlowWander    Code = "slow-wander"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -133,5 +134,6 @@ func WarningCodes() []WarningCode {
 		{CodeFewDraws, "few of the drawn ventricles meet the native state, so that intervals are unsure"},
 		{CodeBeyondPump, "a speed lies outside the range in which the pump's coefficients make sense"},
 		{CodeNotMatched, "the mean flow or pressure that was to be matched cannot be met at a speed"},
+		{CodeSlowWander, "the residual wanders too slowly for the length of the recording: the interval of R is too narrow"},
 	}
 }

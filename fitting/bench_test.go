@@ -2,6 +2,7 @@ package fitting
 
 import (
 	"context"
+	"math/rand/v2"
 	"testing"
 )
 
@@ -82,5 +83,19 @@ func TestFitAllocatesNothing(t *testing.T) {
 	starts, flow, pressure := []int32{1, 20, 5, 5, 7}, make([]complex128, 101), make([]complex128, 101)
 	if got := testing.AllocsPerRun(20, func() { s.draw(starts, flow, pressure) }); got != 0 {
 		t.Errorf("a draw: %v allocations", got)
+	}
+}
+
+// BenchmarkFitSpan60 is a fit of wk3 to 60 beats at 200 Hz, with its intervals.
+func BenchmarkFitSpan60(b *testing.B) {
+	s := recorded(60, 0, rand.New(rand.NewPCG(1, 1)))
+	m := model(b, "wk3")
+	b.ReportAllocs()
+	for b.Loop() {
+		r, err := FitSpan(context.Background(), m, s, Settings{})
+		if err != nil {
+			b.Fatal(err)
+		}
+		sink = r.Values.R
 	}
 }

@@ -133,19 +133,6 @@ func studentMove(rng *rand.Rand, factor *mat.TriDense, unknowns []int, freedom i
 	return move
 }
 
-// moved are the parameters at (x, theta) + move, kept within their bounds.
-func (f *beatFit) moved(x [maxLinear]float64, theta [maxShapes]float64, move [maxUnknowns]float64) Values {
-	linear, shapes := f.model.Linear(), f.model.Shapes()
-	var shape [maxShapes]float64
-	for i := range linear {
-		x[i] = max(0, x[i]+move[i])
-	}
-	for s := range shapes {
-		shape[s] = math.Exp(max(f.search.low[s], min(f.search.high[s], theta[s]+move[linear+s])))
-	}
-	return f.model.Unpack(x[:linear], shape[:shapes])
-}
-
 // correlationTime is the integrated autocorrelation time of a residual in
 // samples, 1 + 2 sum rho_k up to the first rho_k <= 0; 1 for a residual of 0.
 func correlationTime(residual []float64) float64 {

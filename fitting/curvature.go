@@ -22,9 +22,9 @@ func newCurvature(m *moments, shape, x []float64) *curvature {
 	c := &curvature{n: linear + shapes}
 	var u, slope [maxUnknowns]complex128
 	for k, w := range m.omega {
-		m.Columns(w, shape, u[:linear])
+		m.columns(w, shape, u[:linear])
 		for s := range shapes {
-			m.Slopes(w, shape, s, slope[:linear])
+			m.slopes(w, shape, s, slope[:linear])
 			u[linear+s] = 0
 			for j, v := range x {
 				u[linear+s] += complex(v, 0) * slope[j]
@@ -37,13 +37,18 @@ func newCurvature(m *moments, shape, x []float64) *curvature {
 			}
 		}
 	}
+	c.bounds(x)
+	return c
+}
+
+// bounds takes in the factors of the columns, and which of them are free.
+func (c *curvature) bounds(x []float64) {
 	for i := range c.n {
 		c.x[i], c.free[i] = 1, true
-		if i < linear {
+		if i < len(x) {
 			c.x[i], c.free[i] = x[i], x[i] > 0
 		}
 	}
-	return c
 }
 
 // unfelt is the part of the model's mean square pressure that an unknown must

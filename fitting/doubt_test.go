@@ -129,7 +129,7 @@ func TestCalibrationUndoesWhatItSays(t *testing.T) {
 	f.moments.set(f.source.flow, f.source.pressure,
 		Calibration{FlowScale: 0.8, PressureScale: 1.1, PressureOffset: 3, Delay: late, OutflowPressure: 5})
 	f.search.run()
-	near(t, "calibrated", f.values(), Values{R: 1, C: 1.5, Zc: 0.05}, 1e-8)
+	near(t, "calibrated", f.standing(), Values{R: 1, C: 1.5, Zc: 0.05}, 1e-8)
 }
 
 // The replicates are what the intervals say, and carry the flow that was fitted.

@@ -29,29 +29,59 @@ func FitBeat(ctx context.Context, m Model, b Beats, s Settings) (Result, error) 
 	return r, err
 }
 
+// fitted is where a search ended, and what bends about it.
+type fitted struct {
+	model       Model
+	theta       [maxShapes]float64 // ln shape
+	low, high   [maxShapes]float64 // the range of theta
+	x           [maxLinear]float64
+	curvature   *curvature
+	converged   bool
+	pulse       bool // the flow has one
+	evaluations int
+}
+
+// shape is where the search ended, s.
+func (f *fitted) shape() (shape [maxShapes]float64) {
+	for i, t := range f.theta {
+		shape[i] = math.Exp(t)
+	}
+	return shape
+}
+
+// values are the parameters of the fit.
+func (f *fitted) values() Values { return f.moved(f.x, f.theta, [maxUnknowns]float64{}) }
+
+// moved are the parameters at (x, theta) + move, kept within their bounds.
+func (f *fitted) moved(x [maxLinear]float64, theta [maxShapes]float64, move [maxUnknowns]float64) Values {
+	linear, shapes := f.model.Linear(), f.model.Shapes()
+	var shape [maxShapes]float64
+	for i := range linear {
+		x[i] = max(0, x[i]+move[i])
+	}
+	for s := range shapes {
+		shape[s] = math.Exp(max(f.low[s], min(f.high[s], theta[s]+move[linear+s])))
+	}
+	return f.model.Unpack(x[:linear], shape[:shapes])
+}
+
 // beatFit is a fit to one average beat at work.
 type beatFit struct {
-	model   Model
+	fitted
 	beats   Beats
 	source  *source
 	moments *moments
 	search  *search
-	// The fit to the average beat: the search's end, and what bends about it.
-	theta     [maxShapes]float64
-	x         [maxLinear]float64
-	curvature *curvature
-	converged bool
-	pulse     bool // the flow has one
 }
 
 func newBeatFit(m Model, b Beats) *beatFit {
-	f := &beatFit{model: m, beats: b, source: newSource(b)}
-	f.moments = newMoments(m.Circuit, b.Samples(), b.Rate)
+	f := &beatFit{fitted: fitted{model: m}, beats: b, source: newSource(b)}
+	f.moments = newMoments(m, b.Samples(), b.Rate)
 	f.search = newSearch(f.moments)
 	f.moments.set(f.source.flow, f.source.pressure, asMeasured(b.OutflowPressure))
 	f.pulse = f.moments.pulsatile()
 	f.converged = f.search.run()
-	f.theta, f.x = f.search.theta, f.search.x
+	f.theta, f.x, f.low, f.high, f.evaluations = f.search.theta, f.search.x, f.search.low, f.search.high, f.search.evaluations
 	f.curvature = newCurvature(f.moments, f.search.shape[:m.Shapes()], f.x[:m.Linear()])
 	for i := range m.Shapes() {
 		f.curvature.free[m.Linear()+i] = f.search.low[i] < f.theta[i] && f.theta[i] < f.search.high[i]
@@ -79,8 +109,8 @@ func newSearch(m *moments) *search {
 	return s
 }
 
-// values are the parameters at which the search stands.
-func (f *beatFit) values() Values {
+// standing are the parameters at which the search stands.
+func (f *beatFit) standing() Values {
 	return f.model.Unpack(f.search.x[:f.model.Linear()], f.search.shape[:f.model.Shapes()])
 }
 
@@ -90,5 +120,23 @@ func (f *beatFit) refit() Values {
 	f.search.near, f.search.tolerance = true, blunt
 	f.search.theta = f.theta
 	f.search.run()
-	return f.values()
+	return f.standing()
+}
+
+// shifted are the parameters of another fit, moved, under a calibration: scales
+// act by their law, R, Zc and L going with pressure over flow, and what the rest
+// of the calibration does to the fit to the average beat is added.
+func (f *beatFit) shifted(of *fitted, c Calibration, move [maxUnknowns]float64) Values {
+	f.moments.set(f.source.flow, f.source.pressure, c)
+	f.refit()
+	x, theta := of.x, of.theta
+	linear, scale := f.model.Linear(), c.PressureScale/c.FlowScale
+	for i := range linear {
+		x[i] = scale*max(0, x[i]+move[i]) + f.search.x[i] - scale*f.x[i]
+		move[i] = 0
+	}
+	for s := range f.model.Shapes() {
+		theta[s] += f.search.theta[s] - f.theta[s]
+	}
+	return of.moved(x, theta, move)
 }

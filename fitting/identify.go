@@ -11,6 +11,14 @@ import (
 // judge decides which parameters the data determine, and adds the warnings and
 // the criteria of choice.
 func (f *beatFit) judge(r *Result) {
+	f.identify(r)
+	f.criteria(r)
+	f.outflow(r)
+	f.warn(r)
+}
+
+// identify decides which parameters the data determine.
+func (f *fitted) identify(r *Result) {
 	f.degenerate(r)
 	for i, s := range f.model.Parameters() {
 		p := &r.Parameters[i].Estimate
@@ -22,13 +30,10 @@ func (f *beatFit) judge(r *Result) {
 		doubtIf(total, onBound)
 	}
 	doubtIf(total, r.unsure(*total))
-	f.criteria(r)
-	f.outflow(r)
-	f.warn(r)
 }
 
 // degenerate marks the parameter of a fit that is another model in disguise.
-func (f *beatFit) degenerate(r *Result) {
+func (f *fitted) degenerate(r *Result) {
 	d, ok := f.model.Circuit.(interface {
 		degenerate(v Values) (parameter, why string)
 	})
@@ -73,7 +78,7 @@ func (r *Result) unsure(e data.Estimate) string {
 
 // undetermined is why the fit to the average beat does not determine a
 // parameter; empty where it does.
-func (f *beatFit) undetermined(s Symbol) string {
+func (f *fitted) undetermined(s Symbol) string {
 	i := s.index
 	if s.shape {
 		i += f.model.Linear()

@@ -52,15 +52,11 @@ type Circuit interface {
 	Source() string
 	// Parameters lists names and units in the order of reports.
 	Parameters() []Symbol
-	// Linear is the number of columns, at most 3.
-	Linear() int
+	// Elements are the columns, at most 3. They are not to be changed.
+	Elements() []Element
 	// Shapes is the number of nonlinear shape parameters, at most 2. All are
 	// times, s.
 	Shapes() int
-	// Columns writes c_j(w) to out, w in rad/s.
-	Columns(w float64, shape []float64, out []complex128)
-	// Slopes writes the derivatives of the columns with respect to ln shape[s].
-	Slopes(w float64, shape []float64, s int, out []complex128)
 	// Unpack turns factors of the columns and shapes into parameters. Where a
 	// factor of 0 leaves a parameter without effect, that parameter is 0.
 	Unpack(linear, shape []float64) Values

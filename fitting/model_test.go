@@ -73,7 +73,7 @@ func TestColumnsMakeTheImpedance(t *testing.T) {
 		}
 		columns, up, down, slope := make([]complex128, len(x)), make([]complex128, len(x)), make([]complex128, len(x)), make([]complex128, len(x))
 		for _, w := range []float64{0, 0.3, 7.8, 55, 900} {
-			m.Columns(w, shape, columns)
+			m.columns(w, shape, columns)
 			var z complex128
 			for j := range x {
 				z += complex(x[j], 0) * columns[j]
@@ -82,10 +82,10 @@ func TestColumnsMakeTheImpedance(t *testing.T) {
 				t.Errorf("%s at %v: columns make %v, the formula %v", m.Name, w, z, want)
 			}
 			for s := range shape {
-				m.Slopes(w, shape, s, slope)
+				m.slopes(w, shape, s, slope)
 				const h = 1e-5
-				m.Columns(w, moved(shape, s, math.Exp(h)), up)
-				m.Columns(w, moved(shape, s, math.Exp(-h)), down)
+				m.columns(w, moved(shape, s, math.Exp(h)), up)
+				m.columns(w, moved(shape, s, math.Exp(-h)), down)
 				for j := range x {
 					if d := (up[j] - down[j]) / (2 * h); cmplx.Abs(d-slope[j]) > 1e-9 {
 						t.Errorf("%s at %v: slope of column %d is %v, difference %v", m.Name, w, j, slope[j], d)

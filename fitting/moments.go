@@ -9,7 +9,7 @@ import "math"
 // At the Nyquist bin of an even N only real parts count (Q and D are real there,
 // and of a column the real part is taken).
 type moments struct {
-	Circuit
+	Model
 	omega     []float64 // rad/s
 	q, re, im []float64
 	total     float64 // sum of weight |D|²
@@ -18,13 +18,13 @@ type moments struct {
 	bendSum   float64 // sum of w² q below the Nyquist bin
 	riseSum   float64 // sum of w im below it
 	nyquist   bool    // the last bin is the Nyquist bin
-	columns   [2 * maxLinear]complex128
+	scratch   [2 * maxLinear]complex128
 }
 
-func newMoments(c Circuit, n int, rate float64) *moments {
+func newMoments(of Model, n int, rate float64) *moments {
 	bins := n/2 + 1
 	m := &moments{
-		Circuit: c, nyquist: n%2 == 0,
+		Model: of, nyquist: n%2 == 0,
 		omega: make([]float64, bins), q: make([]float64, bins), re: make([]float64, bins), im: make([]float64, bins),
 	}
 	for k := range m.omega {
@@ -86,9 +86,9 @@ func (m *moments) normal(shape []float64, to *normal) {
 func (m *moments) byColumns(shape []float64, to *normal) {
 	n, shapes := m.Linear(), m.Shapes()
 	*to = normal{n: n, total: m.total}
-	c, dc := m.columns[:n], m.columns[maxLinear:maxLinear+n]
+	c, dc := m.scratch[:n], m.scratch[maxLinear:maxLinear+n]
 	for k, w := range m.omega {
-		m.Columns(w, shape, c)
+		m.columns(w, shape, c)
 		m.onlyReal(k, c)
 		for i := range n {
 			for j := range n {
@@ -97,7 +97,7 @@ func (m *moments) byColumns(shape []float64, to *normal) {
 			to.b[i] += real(c[i])*m.re[k] + imag(c[i])*m.im[k]
 		}
 		for s := range shapes {
-			m.Slopes(w, shape, s, dc)
+			m.slopes(w, shape, s, dc)
 			m.onlyReal(k, dc)
 			for i := range n {
 				for j := range n {

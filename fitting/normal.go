@@ -21,6 +21,8 @@ type normal struct {
 	dg    [maxShapes][maxLinear][maxLinear]float64
 	db    [maxShapes][maxLinear]float64
 	total float64
+	// dtotal is the derivative of total, where free values have been put in.
+	dtotal [maxShapes]float64
 }
 
 // solve returns the x >= 0 that minimises S, and S there. With at most three
@@ -95,7 +97,7 @@ func (e *normal) stationary(set int) (x [maxLinear]float64, gain float64, ok boo
 // slope is the derivative of the minimum of S with respect to ln shape[s], at
 // the minimising x: that x moves too does not matter at a minimum.
 func (e *normal) slope(s int, x [maxLinear]float64) float64 {
-	sum := 0.0
+	sum := e.dtotal[s]
 	for i := range e.n {
 		for j := range e.n {
 			sum += x[i] * x[j] * e.dg[s][i][j]

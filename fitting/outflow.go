@@ -19,17 +19,27 @@ const zeroFlowPressure = 26.5
 // pressure, those left out that are the fit itself.
 func (f *beatFit) outflow(r *Result) {
 	f.search.near, f.search.tolerance = false, sharp
-	for _, pv := range []float64{0, zeroFlowPressure, r.OutflowPressure + 10} {
-		if pv == r.OutflowPressure {
-			continue
-		}
+	for _, pv := range otherOutflows(r.OutflowPressure) {
 		f.moments.set(f.source.flow, f.source.pressure, asMeasured(pv))
 		f.search.run()
-		v := f.values()
-		r.OutflowSensitivity = append(r.OutflowSensitivity, OutflowRow{
-			OutflowPressure: pv, Values: v, R: change(v.R, r.Values.R), C: change(v.C, r.Values.C),
-		})
+		r.addOutflow(pv, f.standing())
 	}
+}
+
+// otherOutflows are outflow pressures beside the one of a fit, mmHg.
+func otherOutflows(pv float64) (others []float64) {
+	for _, other := range []float64{0, zeroFlowPressure, pv + 10} {
+		if other != pv {
+			others = append(others, other)
+		}
+	}
+	return others
+}
+
+func (r *Result) addOutflow(pv float64, v Values) {
+	r.OutflowSensitivity = append(r.OutflowSensitivity, OutflowRow{
+		OutflowPressure: pv, Values: v, R: change(v.R, r.Values.R), C: change(v.C, r.Values.C),
+	})
 }
 
 func change(to, from float64) float64 {

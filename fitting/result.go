@@ -20,7 +20,7 @@ type Parameter struct {
 // are there, and must not be shown without saying so.
 type Result struct {
 	Model      Model
-	Basis      string // BasisBeat
+	Basis      string // BasisBeat, BasisSpan
 	Site       data.Site
 	PerArea    bool
 	Values     Values
@@ -42,7 +42,8 @@ type Result struct {
 	OutflowSensitivity []OutflowRow
 	Replicates         Replicates
 	Converged          bool
-	Evaluations        int // of the reduced sum of squares, in the fit to the average beat
+	Span               *SpanInfo // of a fit to the whole span; else nil
+	Evaluations        int       // of the reduced sum of squares, in the fit to the average beat
 	Warnings           []data.Warning
 }
 
@@ -66,35 +67,48 @@ func (r Result) Identified() bool {
 
 // result is the fit to the average beat, as yet without doubt.
 func (f *beatFit) result() Result {
-	r := Result{
-		Model: f.model, Basis: BasisBeat, Site: f.beats.Site, PerArea: f.beats.PerArea,
-		Values: f.values(), OutflowPressure: f.beats.OutflowPressure,
-		Evaluations: f.search.evaluations,
+	r := f.beats.blank(f.model, BasisBeat)
+	r.take(f.values())
+	r.Evaluations = f.evaluations
+	pressure, _ := f.beats.Average()
+	modelled := data.Period{Samples: make([]float64, len(pressure.Samples)), Rate: pressure.Rate}
+	spectrum := slices.Clone(f.source.flow)
+	for k := range spectrum {
+		spectrum[k] *= f.model.Impedance(r.Values, f.moments.omega[k])
 	}
-	for _, s := range f.model.Parameters() {
+	spectrum[0] += complex(r.OutflowPressure, 0)
+	f.source.plan.inverse(modelled.Samples, spectrum)
+	r.compare(pressure, modelled)
+	r.Converged = f.converged && finite(r.SumOfSquares)
+	return r
+}
+
+// blank is a result before there is one.
+func (b Beats) blank(m Model, basis string) Result {
+	return Result{Model: m, Basis: basis, Site: b.Site, PerArea: b.PerArea, OutflowPressure: b.OutflowPressure}
+}
+
+// take takes over the values, as yet without doubt.
+func (r *Result) take(v Values) {
+	r.Values = v
+	for _, s := range r.Model.Parameters() {
 		unit := s.Unit
 		if r.PerArea {
 			unit = s.PerArea
 		}
-		r.Parameters = append(r.Parameters, Parameter{Name: s.Name, Unit: unit, Estimate: plain(r.Values.Of(s.Name))})
+		r.Parameters = append(r.Parameters, Parameter{Name: s.Name, Unit: unit, Estimate: plain(v.Of(s.Name))})
 	}
-	r.TotalResistance = plain(f.model.Resistance(r.Values))
-	pressure, _ := f.beats.Average()
-	r.Modelled = data.Period{Samples: make([]float64, len(pressure.Samples)), Rate: pressure.Rate}
-	r.Residual = make([]float64, len(pressure.Samples))
-	modelled := slices.Clone(f.source.flow)
-	for k := range modelled {
-		modelled[k] *= f.model.Impedance(r.Values, f.moments.omega[k])
-	}
-	modelled[0] += complex(r.OutflowPressure, 0)
-	f.source.plan.inverse(r.Modelled.Samples, modelled)
-	for j, p := range pressure.Samples {
-		r.Residual[j] = p - r.Modelled.Samples[j]
+	r.TotalResistance = plain(r.Model.Resistance(v))
+}
+
+// compare sets the modelled average beat against the measured one.
+func (r *Result) compare(measured, modelled data.Period) {
+	r.Modelled, r.Residual = modelled, make([]float64, len(measured.Samples))
+	for j, p := range measured.Samples {
+		r.Residual[j] = p - modelled.Samples[j]
 		r.SumOfSquares += r.Residual[j] * r.Residual[j]
 	}
 	r.RMSE = math.Sqrt(r.SumOfSquares / float64(len(r.Residual)))
-	r.Converged = f.converged && finite(r.SumOfSquares)
-	return r
 }
 
 // plain is an estimate whose doubt is not known yet.

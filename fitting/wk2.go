@@ -13,19 +13,13 @@ type wk2 struct{}
 
 func (wk2) Source() string       { return "Frank 1899" }
 func (wk2) Parameters() []Symbol { return []Symbol{resistance, compliance} }
-func (wk2) Linear() int          { return 1 }
 func (wk2) Shapes() int          { return 1 }
+func (wk2) Elements() []Element  { return wk2Elements }
+
+var wk2Elements = []Element{{Relaxed: 1}}
 
 func (wk2) Equation() []string {
 	return []string{"P = Pv + Pd,  C dPd/dt = Q - Pd/R", "Z(w) = R/(1 + i w R C),  Z(0) = R"}
-}
-
-func (wk2) Columns(w float64, shape []float64, out []complex128) {
-	out[0] = relaxation(w, shape[0])
-}
-
-func (wk2) Slopes(w float64, shape []float64, _ int, out []complex128) {
-	out[0] = relaxationSlope(w, shape[0])
 }
 
 func (wk2) Unpack(x, shape []float64) Values {

@@ -15,19 +15,13 @@ type wk3 struct{}
 
 func (wk3) Source() string       { return "Westerhof 1969" }
 func (wk3) Parameters() []Symbol { return []Symbol{resistance, compliance, character} }
-func (wk3) Linear() int          { return 2 }
 func (wk3) Shapes() int          { return 1 }
+func (wk3) Elements() []Element  { return wk3Elements }
+
+var wk3Elements = []Element{{Relaxed: 1}, {Direct: 1}}
 
 func (wk3) Equation() []string {
 	return []string{"P = Pv + Pd + Zc Q,  C dPd/dt = Q - Pd/R", "Z(w) = Zc + R/(1 + i w R C),  Z(0) = R + Zc"}
-}
-
-func (wk3) Columns(w float64, shape []float64, out []complex128) {
-	out[0], out[1] = relaxation(w, shape[0]), 1
-}
-
-func (wk3) Slopes(w float64, shape []float64, _ int, out []complex128) {
-	out[0], out[1] = relaxationSlope(w, shape[0]), 0
 }
 
 func (wk3) Unpack(x, shape []float64) Values {

@@ -27,8 +27,10 @@ func (wk4p) Source() string { return "Stergiopulos 1999" }
 func (wk4p) Parameters() []Symbol {
 	return []Symbol{resistance, compliance, character, parallelInertance}
 }
-func (wk4p) Linear() int { return 2 }
-func (wk4p) Shapes() int { return 2 }
+func (wk4p) Shapes() int         { return 2 }
+func (wk4p) Elements() []Element { return wk4pElements }
+
+var wk4pElements = []Element{{Relaxed: 1}, {Direct: 1, Relaxed: -1, Shape: 1}}
 
 func (wk4p) Equation() []string {
 	return []string{
@@ -39,19 +41,6 @@ func (wk4p) Equation() []string {
 
 // parallelInertance goes to its bound with the second shape.
 var parallelInertance = Symbol{Name: "L", Meaning: "inertance", Unit: "mmHg s²/mL", PerArea: "mmHg s²/cm", shape: true, index: 1}
-
-func (wk4p) Columns(w float64, shape []float64, out []complex128) {
-	out[0], out[1] = relaxation(w, shape[0]), 1-relaxation(w, shape[1])
-}
-
-func (wk4p) Slopes(w float64, shape []float64, s int, out []complex128) {
-	out[0], out[1] = 0, 0
-	if s == 0 {
-		out[0] = relaxationSlope(w, shape[0])
-	} else {
-		out[1] = -relaxationSlope(w, shape[1])
-	}
-}
 
 func (wk4p) Unpack(x, shape []float64) Values {
 	return Values{R: x[0], C: complianceOf(shape[0], x[0]), Zc: x[1], L: shape[1] * x[1]}

@@ -20,8 +20,10 @@ func (wk4s) Source() string { return "Westerhof 1969 with L in series; Segers 20
 func (wk4s) Parameters() []Symbol {
 	return []Symbol{resistance, compliance, character, seriesInertance}
 }
-func (wk4s) Linear() int { return 3 }
-func (wk4s) Shapes() int { return 1 }
+func (wk4s) Shapes() int         { return 1 }
+func (wk4s) Elements() []Element { return wk4sElements }
+
+var wk4sElements = []Element{{Relaxed: 1}, {Direct: 1}, {Rise: 1}}
 
 func (wk4s) Equation() []string {
 	return []string{"P = Pv + Pd + Zc Q + L dQ/dt,  C dPd/dt = Q - Pd/R", "Z(w) = Zc + i w L + R/(1 + i w R C),  Z(0) = R + Zc"}
@@ -29,14 +31,6 @@ func (wk4s) Equation() []string {
 
 // seriesInertance goes to its bound with the third column.
 var seriesInertance = Symbol{Name: "L", Meaning: "inertance", Unit: "mmHg s²/mL", PerArea: "mmHg s²/cm", index: 2}
-
-func (wk4s) Columns(w float64, shape []float64, out []complex128) {
-	out[0], out[1], out[2] = relaxation(w, shape[0]), 1, complex(0, w)
-}
-
-func (wk4s) Slopes(w float64, shape []float64, _ int, out []complex128) {
-	out[0], out[1], out[2] = relaxationSlope(w, shape[0]), 0, 0
-}
 
 func (wk4s) Unpack(x, shape []float64) Values {
 	return Values{R: x[0], C: complianceOf(shape[0], x[0]), Zc: x[1], L: x[2]}
