@@ -46,8 +46,8 @@ func (r Result) title() string {
 }
 
 func (r Result) basisWords() string {
-	if r.Basis == BasisSpan {
-		return "the whole span"
+	if s := r.Span; s != nil {
+		return fmt.Sprintf("the whole span (%.4g s, runs without a gap: %d)", s.Duration, s.Runs)
 	}
 	return "the average beat"
 }
@@ -57,6 +57,8 @@ func (r Result) intervalWords() string {
 	switch r.IntervalMethod {
 	case IntervalBlocks:
 		return fmt.Sprintf("%s: 95 %%, %d replicates of blocks of successive beats", r.IntervalMethod, len(r.Replicates.Random))
+	case IntervalSpan:
+		return fmt.Sprintf("%s: 95 %%, from the residual in %d blocks of %.3g s, Student's t", r.IntervalMethod, r.Span.Blocks, r.Span.BlockLength)
 	case IntervalCovariance:
 		return r.IntervalMethod + ": 95 %, from the residual and its autocorrelation, few beats"
 	}

@@ -23,10 +23,10 @@ func FitSpan(ctx context.Context, m Model, s Span, set Settings) (Result, error)
 	if err := s.check(); err != nil {
 		return Result{}, err
 	}
-	if s.Count() < fewBeats || s.beatsInRuns() < fewBeats {
+	if s.beatsInRuns() < fewBeats {
 		return Result{}, ErrTooShort
 	}
-	f := newSpanFit(m, s)
+	f := newSpanFit(newBeatFit(m, s.Beats), s)
 	r := f.result()
 	err := f.doubt(ctx, &r, set.WithDefaults())
 	f.judge(&r)
@@ -57,8 +57,9 @@ type spanFit struct {
 	info     SpanInfo
 }
 
-func newSpanFit(m Model, s Span) *spanFit {
-	f := &spanFit{beat: newBeatFit(m, s.Beats), span: s, moments: newSpanMoments(m, s)}
+func newSpanFit(b *beatFit, s Span) *spanFit {
+	m := b.model
+	f := &spanFit{beat: b, span: s, moments: newSpanMoments(m, s)}
 	period := float64(s.Samples()) / s.Rate
 	best := f.searched(period)
 	linear := m.Linear()
@@ -102,7 +103,7 @@ func (f *spanFit) searched(period float64) *search {
 	}
 	var best *search
 	evaluations := part.evaluations
-	for _, theta := range [][maxShapes]float64{part.theta, f.beat.theta} {
+	for _, theta := range f.starts(part.theta) {
 		s := newSpanSearch(f.moments, period)
 		s.near, s.theta = true, theta
 		for i := range s.shapes {
@@ -117,6 +118,18 @@ func (f *spanFit) searched(period float64) *search {
 	}
 	best.evaluations = evaluations
 	return best
+}
+
+// starts are the place found on the first samples, and that of the fit to the
+// average beat where it is another one.
+func (f *spanFit) starts(found [maxShapes]float64) [][maxShapes]float64 {
+	all := [][maxShapes]float64{found}
+	for i := range f.beat.model.Shapes() {
+		if math.Abs(found[i]-f.beat.theta[i]) > gridStep {
+			return append(all, f.beat.theta)
+		}
+	}
+	return all
 }
 
 // result is the fit to the span, as yet without doubt.

@@ -10,6 +10,7 @@ import (
 	"afterbeat/data/beat"
 	"afterbeat/data/doppler"
 	"afterbeat/data/unit"
+	"afterbeat/fitting"
 )
 
 // Beats is the recording cut into beats, and the average beat.
@@ -30,6 +31,9 @@ type Beats struct {
 	Pressure, Flow beat.Average
 	FlowInfo       FlowInfo
 	Delay          Delay
+	// Runs are the samples of the used beats, as the fit to the whole span takes
+	// them; empty without a pressure and a flow, and where one beat is all there is.
+	Runs []fitting.Run
 	Reason         string // why there is no average beat; empty where there is one
 	Warnings       []data.Warning
 }
@@ -190,6 +194,9 @@ func (b *Beats) cut(pressure, flow []float64) {
 		b.Ensemble = beat.OneBeat(signals[0], t.Grid.Rate, signals[1:]...)
 	} else {
 		b.Ensemble = beat.Cut(b.Beats, t.Grid.Rate, delayed(signals, b.Delay.Value)...)
+		if len(signals) > 1 {
+			b.Runs = runs(b.Ensemble.Used, pressure, flow, b.Delay.Value*t.Grid.Rate)
+		}
 	}
 	b.average(pressure != nil, flow != nil)
 }

@@ -46,8 +46,8 @@ type Sensitivity struct {
 	Percent fitting.Values
 }
 
-// FitLoad fits every model to the average beat, and where there is no flow
-// estimates what the pressure alone allows. A model that the case names is the
+// FitLoad fits every model to the average beat and, where it is long enough, to the
+// whole span, and where there is no flow estimates what the pressure alone allows. A model that the case names is the
 // chosen one.
 func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 	f := Fit{Beats: b, Chosen: -1, Reason: b.Reason}
@@ -77,14 +77,11 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 	if err != nil {
 		return f, err
 	}
-	for _, m := range fitting.Models() {
-		r, err := fitting.FitBeat(ctx, m, beats, settings)
-		if err != nil {
-			return f, err
-		}
-		f.Results = append(f.Results, r)
+	span := fitting.Span{Beats: beats, Runs: b.Runs}
+	if f.Results, err = fitting.FitAll(ctx, fitting.Models(), span, settings); err != nil {
+		return f, err
 	}
-	return f.conclude(ctx, beats)
+	return f.conclude(ctx, span)
 }
 
 // fromPressureAlone estimates the time constant of diastole, all that a
@@ -104,7 +101,7 @@ func (f Fit) fromPressureAlone() Fit {
 }
 
 // conclude recommends, chooses, and moves the assumptions about the choice.
-func (f Fit) conclude(ctx context.Context, d fitting.Beats) (Fit, error) {
+func (f Fit) conclude(ctx context.Context, d fitting.Span) (Fit, error) {
 	var err error
 	if f.Delay, err = profiled(ctx, f.Beats); err != nil {
 		return f, err

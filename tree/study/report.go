@@ -32,7 +32,19 @@ type ModelReport struct {
 	BIC             Number                    `json:"bic"`
 	CriterionReason *string                   `json:"criterion_reason"`
 	Converged       bool                      `json:"converged"`
+	Span            *SpanReport               `json:"span"` // null for the average beat
 	Warnings        []WarningReport           `json:"warnings"`
+}
+
+// SpanReport says what a fit to the whole span rests on.
+type SpanReport struct {
+	Runs            int    `json:"runs"`
+	Samples         int    `json:"samples"`
+	Duration        Number `json:"duration_s"`
+	RMSE            Number `json:"rmse_mmHg"`
+	CorrelationTime Number `json:"correlation_time_s"` // null where the residual does not forget
+	Blocks          int    `json:"blocks"`
+	BlockLength     Number `json:"block_s"`
 }
 
 // EstimatorReport is one way to R, C or tau beside the fits.

@@ -32,8 +32,8 @@ func (s Study) FitReport() FitReport {
 	if f.Beats.FlowInfo.Channel >= 0 {
 		r.FlowUnit = reason(f.Beats.flowUnit())
 	}
-	for i, one := range f.Results {
-		if f.named() && i != f.Chosen {
+	for _, one := range f.Results {
+		if f.named() && one.Model != f.Results[f.Chosen].Model {
 			continue
 		}
 		r.Fits = append(r.Fits, modelReport(one))
@@ -73,6 +73,11 @@ func modelReport(r fitting.Result) ModelReport {
 	}
 	for _, p := range r.Parameters {
 		out.Parameters[p.Name] = estimateReport(p.Estimate)
+	}
+	if s := r.Span; s != nil {
+		out.Span = &SpanReport{
+			s.Runs, s.Samples, Number(s.Duration), Number(s.RMSE), Number(s.CorrelationTime), s.Blocks, Number(s.BlockLength),
+		}
 	}
 	return out
 }

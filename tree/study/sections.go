@@ -46,7 +46,9 @@ func (f Fit) sections() []casenote.Section {
 	settings = settings.WithDefaults()
 	out := []casenote.Section{f.Beats.assumptionSection(int(settings.Seed), settings.Replicates)}
 	for _, r := range f.Results {
-		out = append(out, r.Section())
+		if r.Basis == f.Results[len(f.Results)-1].Basis { // the table has those of the average beat beside
+			out = append(out, r.Section())
+		}
 	}
 	if len(f.Results) > 0 {
 		out = append(out, f.choiceSection())
@@ -80,18 +82,35 @@ func (f Fit) choiceSection() casenote.Section {
 		if f.BasisMissed() {
 			by += "; the basis chosen was not fitted"
 		}
-		s.Rows = append(s.Rows, casenote.Words("used below", f.Results[f.Chosen].Model.Name+", "+by))
+		s.Rows = append(s.Rows, casenote.Words("used below", f.Results[f.Chosen].Model.Name+", basis "+f.Results[f.Chosen].Basis+", "+by))
 	}
 	return s
 }
 
 func (f Fit) modelTable() casenote.Table {
-	t := casenote.Table{Header: []string{"model", "rms residual, mmHg", "AICc", "BIC"}}
+	names := f.Results[len(f.Results)-1].Model.Parameters()
+	t := casenote.Table{Header: []string{"model", "basis"}}
+	for _, p := range names {
+		t.Header = append(t.Header, p.Name+", "+f.unitOf(p.Name))
+	}
+	t.Header = append(t.Header, "rms, mmHg", "AICc", "BIC")
 	for _, r := range f.Results {
 		if math.IsNaN(r.AICc) {
 			t.Foot = "AICc and BIC undefined: " + r.CriterionReason + "."
 		}
-		t.Rows = append(t.Rows, []casenote.Cell{{Words: data.Clean(r.Model.Name)}, plain(r.RMSE), plain(r.AICc), plain(r.BIC)})
+		row := []casenote.Cell{{Words: data.Clean(r.Model.Name)}, {Words: data.Clean(r.Basis)}}
+		for _, s := range names {
+			p, ok := r.Parameter(s.Name)
+			switch {
+			case !ok:
+				row = append(row, casenote.Cell{Words: data.Clean("-")})
+			case !p.Identified:
+				row = append(row, casenote.Cell{Words: data.Clean("not id.")})
+			default:
+				row = append(row, casenote.Cell{Number: &casenote.Number{Estimate: p.Estimate, Origin: data.Estimated}})
+			}
+		}
+		t.Rows = append(t.Rows, append(row, plain(r.RMSE), plain(r.AICc), plain(r.BIC)))
 	}
 	return t
 }

@@ -4,17 +4,18 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"slices"
 
 	"afterbeat/fitting"
 )
 
 // sensitivities moves one assumption at a time about a fit: the outflow
-// pressure by 10 mmHg, the delay by 10 ms, the output by 20 %. Each is a fit to
-// the average beat of its own, without replicates.
-func sensitivities(ctx context.Context, r fitting.Result, b fitting.Beats) ([]Sensitivity, error) {
+// pressure by 10 mmHg, the delay by 10 ms, the output by 20 %. Each is a fit of its
+// own on the same basis.
+func sensitivities(ctx context.Context, r fitting.Result, d fitting.Span) ([]Sensitivity, error) {
 	var out []Sensitivity
 	for _, move := range moves() {
-		moved, err := refit(ctx, r.Model, b, move)
+		moved, err := refit(ctx, r, d, move)
 		if err != nil {
 			return out, err
 		}
@@ -70,16 +71,37 @@ func pressureMove(assumption, unit string, size float64, to func(c *fitting.Cali
 	return move{assumption, fmt.Sprintf("%+.3g %s", size, unit), size, to}
 }
 
-// refit fits a model to the average beat as it would be with one assumption
+// refit fits the model of a result on its basis as it would be with one assumption
 // moved. The delay moves the flow, so that pressures stay where they are.
-func refit(ctx context.Context, m fitting.Model, b fitting.Beats, to move) (fitting.Result, error) {
-	pressure, flow := b.Average()
-	c := fitting.Calibration{FlowScale: 1, PressureScale: 1, OutflowPressure: b.OutflowPressure}
+func refit(ctx context.Context, was fitting.Result, d fitting.Span, to move) (fitting.Result, error) {
+	c := fitting.Calibration{FlowScale: 1, PressureScale: 1, OutflowPressure: d.OutflowPressure}
 	to.to(&c)
-	b.OutflowPressure = c.OutflowPressure
-	b.Pressure = [][]float64{calibrated(pressure.Samples, c.PressureScale, c.PressureOffset)}
-	b.Flow = [][]float64{calibrated(later(flow.Samples, c.Delay*b.Rate), c.FlowScale, 0)}
-	return fitting.FitBeat(ctx, m, b, fitting.Settings{})
+	d.OutflowPressure = c.OutflowPressure
+	once := fitting.Settings{Replicates: 1}
+	move := func(pressure, flow []float64) ([]float64, []float64) {
+		return calibrated(pressure, c.PressureScale, c.PressureOffset), calibrated(flow, c.FlowScale, 0)
+	}
+	p, q := d.Average()
+	p.Samples, q.Samples = move(p.Samples, later(q.Samples, c.Delay*d.Rate))
+	d.Pressure, d.Flow = [][]float64{p.Samples}, [][]float64{q.Samples}
+	if was.Basis != fitting.BasisSpan {
+		return fitting.FitBeat(ctx, was.Model, d.Beats, once)
+	}
+	d.Runs = slices.Clone(d.Runs)
+	for i, r := range d.Runs {
+		d.Runs[i].Pressure, d.Runs[i].Flow = move(r.Pressure, laterInRun(r.Flow, c.Delay*d.Rate))
+	}
+	return fitting.FitSpan(ctx, was.Model, d, once)
+}
+
+// laterInRun is a run moved later by a number of samples, linear between them; at
+// its ends it stays as it is.
+func laterInRun(values []float64, shift float64) []float64 {
+	out := make([]float64, len(values))
+	for j := range out {
+		out[j] = readAt(values, max(0, min(float64(len(values)-1), float64(j)-shift)))
+	}
+	return out
 }
 
 // percent is the change of each parameter, in percent of what it was.

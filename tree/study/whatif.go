@@ -60,14 +60,13 @@ func (f Fit) moved(ctx context.Context, i int, all []move) ([]WhatIf, error) {
 	if err != nil {
 		return nil, err
 	}
-	was := f.Results[i]
+	was, d := f.Results[i], fitting.Span{Beats: b, Runs: f.Beats.Runs}
 	var out []WhatIf
 	for _, m := range all {
-		r, err := refit(ctx, was.Model, b, m)
+		r, err := refit(ctx, was, d, m)
 		if err != nil {
 			return out, err
 		}
-		r.Basis = was.Basis
 		out = append(out, WhatIf{m.effect(r, was), r})
 	}
 	return out, nil
