@@ -33,9 +33,9 @@ type Beats struct {
 	Delay          Delay
 	// Runs are the samples of the used beats, as the fit to the whole span takes
 	// them; empty without a pressure and a flow, and where one beat is all there is.
-	Runs []fitting.Run
-	Reason         string // why there is no average beat; empty where there is one
-	Warnings       []data.Warning
+	Runs     []fitting.Run
+	Reason   string // why there is no average beat; empty where there is one
+	Warnings []data.Warning
 }
 
 // FlowInfo says where the flow of the average beat comes from.
@@ -195,7 +195,7 @@ func (b *Beats) cut(pressure, flow []float64) {
 	} else {
 		b.Ensemble = beat.Cut(b.Beats, t.Grid.Rate, delayed(signals, b.Delay.Value)...)
 		if len(signals) > 1 {
-			b.Runs = runs(b.Ensemble.Used, pressure, flow, b.Delay.Value*t.Grid.Rate)
+			b.Runs = stretches(b.Ensemble.Used, pressure, flow, b.Delay.Value*t.Grid.Rate)
 		}
 	}
 	b.average(pressure != nil, flow != nil)

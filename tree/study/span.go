@@ -7,10 +7,10 @@ import (
 	"afterbeat/fitting"
 )
 
-// runs are the stretches of successive used beats, each with the sample at which
+// stretches are the runs of successive used beats, each with the sample at which
 // its last beat ends. The flow is read where the pressure, late by delay samples,
 // has it: delay samples earlier, linearly between samples.
-func runs(used []beat.Beat, pressure, flow []float64, delay float64) []fitting.Run {
+func stretches(used []beat.Beat, pressure, flow []float64, delay float64) []fitting.Run {
 	var out []fitting.Run
 	for i := 0; i < len(used); {
 		from := used[i].From
