@@ -9,6 +9,9 @@ import (
 const (
 	leastBlock   = 3 // beats
 	fewestBlocks = 4
+	// mostBlocks are enough to know a scatter to 5 %: in a longer recording blocks
+	// are longer instead, and drawing from an hour costs no more than from minutes.
+	mostBlocks = 200
 )
 
 // blockLength is the length of a block in beats: three beats or one breath,
@@ -19,6 +22,7 @@ func blockLength(beats int, breath, period float64) int {
 		breath = defaultBreath
 	}
 	want := math.Max(leastBlock, math.Ceil(breath/period-1e-9))
+	want = math.Max(want, math.Ceil(float64(beats)/mostBlocks))
 	return int(math.Max(1, math.Min(want, float64(beats/fewestBlocks))))
 }
 

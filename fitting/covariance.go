@@ -156,3 +156,30 @@ func correlationTime(residual []float64) float64 {
 	}
 	return time
 }
+
+// autocorrelation is that of a periodic residual, about its mean, at lags up to
+// half a period.
+func autocorrelation(residual []float64) []float64 {
+	n := len(residual)
+	mean, square := 0.0, 0.0
+	for _, v := range residual {
+		mean += v / float64(n)
+	}
+	for _, v := range residual {
+		square += (v - mean) * (v - mean)
+	}
+	if !(square > 0) {
+		return nil
+	}
+	twice := make([]float64, 2*n)
+	for j := range twice {
+		twice[j] = residual[j%n] - mean
+	}
+	out := make([]float64, n/2+1)
+	for lag := range out {
+		for j, v := range twice[:n] {
+			out[lag] += v * twice[j+lag] / square
+		}
+	}
+	return out
+}

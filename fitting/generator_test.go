@@ -43,6 +43,8 @@ func generateFrom(l Load, beats, n int, white float64, rng *rand.Rand) Beats {
 	return b
 }
 
+func newSeeded(seed uint64) *rand.Rand { return rand.New(rand.NewPCG(seed, 0)) }
+
 // noisy are beats of the generator with its usual noise of 1 mmHg.
 func noisy(n, beats int, seed uint64) Beats {
 	return generate(beats, n, 1, rand.New(rand.NewPCG(seed, 0)))

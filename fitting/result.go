@@ -30,10 +30,13 @@ type Result struct {
 	IntervalMethod  string
 	// Modelled is the pressure of the model, Residual measured less modelled,
 	// over the average beat, mmHg.
-	Modelled     data.Period
-	Residual     []float64
-	SumOfSquares float64 // of the residual, mmHg²
-	RMSE         float64 // mmHg
+	Modelled data.Period
+	Residual []float64
+	// Autocorrelation is that of the residual at lags of 0, 1, ... samples up to half
+	// a beat, counted round its end; nil where there is no residual.
+	Autocorrelation []float64
+	SumOfSquares    float64 // of the residual, mmHg²
+	RMSE            float64 // mmHg
 	// AICc and BIC compare models fitted to the same beats; NaN with a reason.
 	AICc, BIC       float64
 	CriterionReason string
@@ -109,6 +112,7 @@ func (r *Result) compare(measured, modelled data.Period) {
 		r.SumOfSquares += r.Residual[j] * r.Residual[j]
 	}
 	r.RMSE = math.Sqrt(r.SumOfSquares / float64(len(r.Residual)))
+	r.Autocorrelation = autocorrelation(r.Residual)
 }
 
 // plain is an estimate whose doubt is not known yet.

@@ -336,11 +336,16 @@ func (p *spanMoments) eliminateSlope(s int, b *beginnings, to *normal) {
 func (p *spanMoments) duration() float64 { return float64(p.samples) * p.h }
 
 // newSpanSearch searches shapes from half a sample to a thousand times the time
-// of a radian of the heart.
+// of a radian of the heart; the second one, L/Zc, to ten beats only: with a free
+// beginning it is no different from a drift of the pressure there, and would take
+// the total resistance along.
 func newSpanSearch(p *spanMoments, period float64) *search {
 	s := &search{problem: p, shapes: p.shapes, tolerance: sharp}
 	for i := range s.shapes {
 		s.low[i], s.high[i] = math.Log(p.h/2), math.Log(1000*period/(2*math.Pi))
+		if i > 0 {
+			s.high[i] = math.Log(10 * period)
+		}
 	}
 	return s
 }
