@@ -81,7 +81,8 @@ The periodic state of a ventricle, a load and a pump. SPEC.toml holds
   step = {from = 8, to = 9.5, beats = 40}   # may be absent
   modulation = "speed.csv"    # columns time_s,speed_1000_per_min: one period
   locked = 1                  # beats of its period; 0: free
-  tree = "tree.csv"           # in place of [load]: a table as of solve tree, with
+  tree = "tree.csv"           # in place of [load] (then no modulation): a table as
+                              # of solve tree, with
   density_g_mL = 1.06         # these three beside it
   viscosity_poise = 0.035
   outflow_pressure_mmHg = 5
