@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 
-	"afterbeat/data"
 	"afterbeat/data/casefile"
 	"afterbeat/tree/heart"
 )
@@ -92,12 +91,4 @@ func (o ownVentricle) into(v *heart.Ventricle) {
 	if total := v.Tes + v.Tr; total > v.Period { // of a drawn period, a little shorter
 		v.Tr = math.Max(0.01*v.Period, v.Period-v.Tes)
 	}
-}
-
-// origins of what the case gives and of what is solved for.
-func (o ownVentricle) origin() data.Origin {
-	if o.whole {
-		return data.Measured
-	}
-	return data.Estimated
 }
