@@ -32,6 +32,8 @@ const (
 	CodeIrregular     Code = "irregular-rhythm"
 	CodeFewBeats      Code = "few-beats"
 	CodeFaintPulse    Code = "faint-pulse"
+	CodeTwoRhythms    Code = "two-rhythms"
+	CodeTwoKinds      Code = "two-kinds-of-beat"
 	CodeOpenBeat      Code = "beat-not-closed"
 	CodeDelay         Code = "delay-unknown"
 	CodeOutflow       Code = "outflow-pressure-assumed"
@@ -112,6 +114,8 @@ func WarningCodes() []WarningCode {
 		{CodeIrregular, "the intervals between beats vary"},
 		{CodeFewBeats, "few beats carry the average and its intervals"},
 		{CodeFaintPulse, "the pulse is small beside the noise"},
+		{CodeTwoRhythms, "a second rhythm runs beside the heart's, or cannot be told from it"},
+		{CodeTwoKinds, "beats of two kinds follow in turns, or a beat holds two pulses"},
 		{CodeOpenBeat, "the average beat does not end where it began"},
 		{CodeDelay, "the delay between pressure and flow was not measured"},
 		{CodeOutflow, "the outflow pressure is an assumption"},

@@ -31,10 +31,22 @@ func Find(values []float64, rate float64, q unit.Quantity) Pulse {
 // FindBy is [Find] by other criteria. By those of [Support] it finds a pulse of
 // a few mmHg in noise; what is less than twice the noise is no pulse.
 func FindBy(c Criteria, values []float64, rate float64, q unit.Quantity) Pulse {
+	p := find(c, values, rate, q)
+	if p.Used() > 0 {
+		p.Breathing = p.breathing()
+		p.Alternation = p.alternation()
+		p.SecondPulse = p.twoPulses(values)
+		p.takeSecond(values)
+	}
+	return p
+}
+
+// find is FindBy with one rhythm.
+func find(c Criteria, values []float64, rate float64, q unit.Quantity) Pulse {
 	if !(rate > 0) || math.IsInf(rate, 0) {
 		panic("beat: Find: rate must be positive")
 	}
-	p := Pulse{Criteria: c, Amplitude: math.NaN(), Noise: math.NaN(), Quantity: q, Rate: rate, Unusable: holes(values), Period: math.NaN(), PeriodCV: math.NaN()}
+	p := Pulse{Breathing: Breathing{math.NaN(), math.NaN()}, Criteria: c, Amplitude: math.NaN(), Noise: math.NaN(), Quantity: q, Rate: rate, Unusable: holes(values), Period: math.NaN(), PeriodCV: math.NaN()}
 	p.Systolic, p.Diastolic, p.Mean = math.NaN(), math.NaN(), math.NaN()
 	if p.Reason = unfit(values, rate, q); p.Reason != "" {
 		return p

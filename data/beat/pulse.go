@@ -30,8 +30,18 @@ type Pulse struct {
 	// the standard deviation of single beats about it, both in the unit of the
 	// channel; NaN with fewer than two used beats.
 	Amplitude, Noise float64
-	// Rhythms has one entry where a pulse was found.
-	Rhythms []Rhythm
+	// Rhythms has one entry where a pulse was found, and a second one where a
+	// strictly periodic wave runs beside it. The pulse of the first is then that
+	// of the trace freed of the wave.
+	Rhythms   []Rhythm
+	Breathing Breathing
+	// Alternation is by how much every other beat is larger (pulsus alternans), a
+	// part of the amplitude; SecondPulse the size of a second pulse within the
+	// beat, a part of the first, as a lasting bigeminy makes. 0 where there is none.
+	Alternation, SecondPulse float64
+	// Overlap says why a wave beside the heart's cannot be told from it; empty
+	// where there is none.
+	Overlap string
 }
 
 // Rhythm is one periodic component.
@@ -50,6 +60,41 @@ func (p Pulse) HeartRate() float64 { return 60 / p.Period }
 
 // PulseToNoise is Amplitude over Noise; NaN with fewer than two used beats.
 func (p Pulse) PulseToNoise() float64 { return p.Amplitude / p.Noise }
+
+// takeSecond adds a second rhythm, where there is one.
+func (p *Pulse) takeSecond(values []float64) {
+	wave, cleaned, overlap := p.second(values)
+	p.Overlap = overlap
+	if cleaned == nil {
+		return
+	}
+	heart := *p
+	for range 2 { // onsets lie better without the wave, and so does the wave
+		alone := find(p.Criteria, cleaned, p.Rate, p.Quantity)
+		if alone.Used() <= p.Used()/2 {
+			break
+		}
+		again, freed, _ := alone.separate(values, wave.Frequency)
+		if freed == nil {
+			break
+		}
+		heart, wave, cleaned = alone, again, freed
+	}
+	amplitude, _ := pulseAndNoise(heart.Beats, cleaned)
+	p.Rhythms[0] = Rhythm{Frequency: 1 / heart.Period, PulseAmplitude: amplitude}
+	p.Rhythms = append(p.Rhythms, wave)
+}
+
+// BeatsNeeded is how many beats bring the standard error of the mean amplitude
+// to 2 %, by the scatter of the used beats: (CV/0.02)², rounded up; 0 with fewer
+// than two used beats.
+func (p Pulse) BeatsNeeded() int {
+	cv := variation(each(used(p.Beats), Beat.Amplitude))
+	if !(cv > 0) {
+		return 0
+	}
+	return int(math.Ceil(cv * cv / (0.02 * 0.02)))
+}
 
 // none is p without a pulse, and why.
 func (p Pulse) none(reason string) Pulse {

@@ -35,6 +35,13 @@ func (p Pulse) Section(channel data.Text, unit string) casenote.Section {
 	if !math.IsNaN(p.PulseToNoise()) {
 		s.Rows = append(s.Rows, casenote.Words("pulse over noise", fmt.Sprintf("%.2g (average beat over what single beats differ from it)", p.PulseToNoise())))
 	}
+	if b := p.Breathing; !math.IsNaN(b.Period) {
+		s.Rows = append(s.Rows, casenote.Words("breathing", fmt.Sprintf("%.2g s a breath; pulse varies with it by %.2g %%", b.Period, 100*b.Variation)))
+	}
+	for _, r := range p.Rhythms[min(1, len(p.Rhythms)):] {
+		s.Rows = append(s.Rows, casenote.Words("second rhythm", fmt.Sprintf("%.3g Hz, %.3g %s; the heart's alone: %.3g Hz, %.3g %s",
+			r.Frequency, r.PulseAmplitude, unit, p.Rhythms[0].Frequency, p.Rhythms[0].PulseAmplitude, unit)))
+	}
 	row("heart rate", p.heartRate(good), "1/min")
 	row("systolic", medianOf(good, func(b Beat) float64 { return b.Max }), unit)
 	row("diastolic", medianOf(good, func(b Beat) float64 { return b.Min }), unit)

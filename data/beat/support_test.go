@@ -78,7 +78,7 @@ func TestRipplesAreFound(t *testing.T) {
 				}
 				for i, heartRate := range []float64{40, 60, 80, 110, 150} {
 					for _, seconds := range []float64{30, 60} {
-						if (rate == 1000 || testing.Short()) && (i%2 == 1 || seconds == 60) {
+						if (rate > 60 || testing.Short()) && (i%2 == 1 || seconds == 60) || seconds == 60 && i%2 == 0 {
 							continue
 						}
 						v := ripple{shape, noise, rate, seconds, heartRate, 5, 1}
@@ -101,7 +101,7 @@ func TestRipplesAreFound(t *testing.T) {
 		}
 	}
 	t.Logf("%d traces, %d failed", tried, failed)
-	if tried < 200 || failed > tried/50 {
+	if tried < 100 || failed > tried/50 {
 		t.Errorf("%d of %d failed", failed, tried)
 	}
 }

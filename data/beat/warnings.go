@@ -47,7 +47,33 @@ func (p Pulse) Warnings(channel data.Text) []data.Warning {
 			spread = fmt.Sprintf("%.0f %% in the used beats and by %s", 100*p.PeriodCV, spread)
 		}
 		warn(data.CodeIrregular, "take a span of steady rhythm; an average beat of an irregular one is no beat of the patient",
-			"the intervals vary by %s (standard deviation over mean)", spread)
+			"the intervals vary by %s (standard deviation over mean); for an average pulse within 2 %%, %d beats are needed by their scatter here (in atrial fibrillation 13 on average, up to 17: J Am Soc Echocardiogr 1997;10:67)",
+			spread, p.BeatsNeeded())
+	}
+	return append(out, p.rhythmWarnings(channel)...)
+}
+
+// rhythmWarnings speak of a second rhythm and of beats of two kinds.
+func (p Pulse) rhythmWarnings(channel data.Text) []data.Warning {
+	var out []data.Warning
+	warn := func(code data.Code, cure, format string, args ...any) {
+		out = append(out, data.Warning{Code: code, Channel: channel, Text: fmt.Sprintf(format, args...), Cure: cure})
+	}
+	if len(p.Rhythms) > 1 {
+		warn(data.CodeTwoRhythms, "hold the pump's speed steady, or take a span that holds many of its cycles",
+			"beside the pulse of %.3g at %.3g Hz a steady wave of %.3g at %.3g Hz runs, as a pump makes that changes its speed; it is in the values of single beats",
+			p.Rhythms[0].PulseAmplitude, p.Rhythms[0].Frequency, p.Rhythms[1].PulseAmplitude, p.Rhythms[1].Frequency)
+	}
+	if p.Overlap != "" {
+		warn(data.CodeTwoRhythms, "hold the pump's speed steady, or record at another heart rate", "%s", p.Overlap)
+	}
+	if p.Alternation > 0 {
+		warn(data.CodeTwoKinds, "mind that the average beat is the mean of two kinds",
+			"every other beat is larger by %.0f %% (pulsus alternans, or a pump locked to every other beat)", 100*p.Alternation)
+	}
+	if p.SecondPulse > 0 {
+		warn(data.CodeTwoKinds, "look at the beats: where each holds two pulses, heart rate is twice what is said",
+			"a second pulse of %.0f %% of the first stands within the beat: a bigeminy that is counted once, or a deep dicrotic wave", 100*p.SecondPulse)
 	}
 	return out
 }

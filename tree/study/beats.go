@@ -92,7 +92,7 @@ func FindBeats(ctx context.Context, t Intake) (Beats, error) {
 func pulse(ch data.Channel, rate float64, by beat.Criteria, oneBeat bool) beat.Pulse {
 	switch {
 	case !pulsatile(ch.Quantity):
-		return beat.Pulse{Reason: "not a pressure, flow or velocity"}
+		return beat.Pulse{Amplitude: math.NaN(), Breathing: beat.Breathing{Period: math.NaN(), Variation: math.NaN()}, Reason: "not a pressure, flow or velocity"}
 	case oneBeat:
 		return onePulse(ch, rate)
 	}
@@ -109,17 +109,17 @@ const leastSamples = 4
 // onePulse takes all of a channel as one beat.
 func onePulse(ch data.Channel, rate float64) beat.Pulse {
 	if n := len(ch.Values); n < leastSamples {
-		return beat.Pulse{Reason: fmt.Sprintf("one period of %d samples, and at least %d are needed", n, leastSamples)}
+		return beat.Pulse{Amplitude: math.NaN(), Breathing: beat.Breathing{Period: math.NaN(), Variation: math.NaN()}, Reason: fmt.Sprintf("one period of %d samples, and at least %d are needed", n, leastSamples)}
 	}
 	if slices.ContainsFunc(ch.Values, math.IsNaN) {
-		return beat.Pulse{Reason: "one period needs every sample, and some are missing"}
+		return beat.Pulse{Amplitude: math.NaN(), Breathing: beat.Breathing{Period: math.NaN(), Variation: math.NaN()}, Reason: "one period needs every sample, and some are missing"}
 	}
 	whole := data.Period{Samples: ch.Values, Rate: rate}
 	low, high := whole.Extremes()
 	return beat.Pulse{
 		Found: true, Quantity: ch.Quantity, Rate: rate,
 		Beats:  []beat.Beat{{From: 0, To: len(ch.Values), Max: high, Min: low, Mean: whole.Mean()}},
-		Period: whole.Duration(), PeriodCV: math.NaN(), Amplitude: math.NaN(), Noise: math.NaN(),
+		Period: whole.Duration(), PeriodCV: math.NaN(), Amplitude: math.NaN(), Noise: math.NaN(), Breathing: beat.Breathing{Period: math.NaN(), Variation: math.NaN()},
 		Systolic: high, Diastolic: low, Mean: whole.Mean(),
 		Rhythms: []beat.Rhythm{{Frequency: 1 / whole.Duration(), PulseAmplitude: high - low}},
 	}

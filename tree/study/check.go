@@ -39,6 +39,9 @@ type PulseReport struct {
 	// PulseToNoise is the amplitude of the average beat over the standard
 	// deviation of single beats about it.
 	PulseToNoise Number `json:"pulse_to_noise"`
+	// BreathPeriod and PulseVariation are null where no breath was found.
+	BreathPeriod   Number `json:"breath_period_s"`
+	PulseVariation Number `json:"pulse_pressure_variation"`
 }
 
 // ChannelReport describes a channel. Systolic and diastolic are medians over
@@ -145,6 +148,7 @@ var nan = Number(math.NaN())
 func pulseReport(p beat.Pulse) PulseReport {
 	r := PulseReport{
 		Found: p.Found, Reason: reason(p.Reason), HeartRate: nan, Period: nan, PeriodCV: nan, PulseToNoise: Number(p.PulseToNoise()),
+		BreathPeriod: Number(p.Breathing.Period), PulseVariation: Number(p.Breathing.Variation),
 		BeatsUsed: p.Used(), BeatsRejected: p.Rejected(), Rhythms: []RhythmReport{},
 	}
 	if !p.Found {

@@ -49,6 +49,7 @@ type signal struct {
 	diameter         string        // cm, of a velocity made into a flow
 	quantity         unit.Quantity // of the average beat
 	rows             []row
+	quality          []string // of its pulse: rhythm, second rhythm, noise, breathing
 }
 
 // readyMsg brings what request number asked for.
@@ -147,6 +148,7 @@ func channel(b study.Beats, i int, beats []beat.Beat, shift int) signal {
 		s.beats = append(s.beats, moved(x, shift, ch.Values))
 	}
 	s.source = trace.Source{Name: s.name, Unit: s.unit, Grid: grid, Values: ch.Values, Marks: marks(s.beats, grid)}
+	s.quality = quality(b.Pulses[i])
 	return s
 }
 

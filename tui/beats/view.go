@@ -180,6 +180,12 @@ func (m Model) summary() string {
 	}
 	if m.busy {
 		words = append(words, "(working)")
+	} else if len(m.ready.signals) > 0 {
+		for _, q := range m.signal().quality { // as many as there is room for
+			if line := strings.Join(append(words, q), "   "); len(line) <= m.area.Width {
+				words = append(words, q)
+			}
+		}
 	}
 	return strings.Join(words, "   ")
 }
