@@ -73,6 +73,14 @@ const (
 	CodeSlowWander    Code = "slow-wander"
 )
 
+// The codes of what was measured beside the recording.
+const (
+	CodeMeans          Code = "means-only"
+	CodeOutputDiffers  Code = "output-differs"
+	CodeOutputEstimate Code = "output-estimated"
+	CodeUnused         Code = "not-used"
+)
+
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
 type WarningCode struct {
 	Code    Code
@@ -127,6 +135,10 @@ func WarningCodes() []WarningCode {
 		{CodeDisagree, "two ways to the same parameter give values far apart"},
 		{CodeNotArterial, "the pressure chosen is, by its name, none of a systemic artery"},
 		{CodeNoFlow, "no flow was recorded: a fit is not possible"},
+		{CodeMeans, "R comes from mean values and C from the decay or the pulse pressure: no wave was fitted"},
+		{CodeOutputDiffers, "the flow recorded and the output given differ by more than 15 %"},
+		{CodeOutputEstimate, "the output given is an estimate, or it is not said how it was measured"},
+		{CodeUnused, "something measured beside the recording is not used"},
 		{CodeNoSupport, "native and supported state could not be compared"},
 		{CodeNotSettled, "no periodic state of ventricle, pump and load was found"},
 		{CodeBackFlow, "blood flows back through the pump within the beat"},

@@ -11,7 +11,7 @@ import (
 // both intervals, the residual, and how the intervals came about.
 func (r Result) Section() casenote.Section {
 	s := casenote.Section{Title: r.title()}
-	s.Words = append(s.Words, data.Clean(fmt.Sprintf("Model %s (%s), fitted to %s, outflow pressure %.4g mmHg.",
+	s.Words = append(s.Words, data.Clean(fmt.Sprintf("Model %s (%s), %s, outflow pressure %.4g mmHg.",
 		r.Model.Name, r.Model.Source(), r.basisWords(), r.OutflowPressure)))
 	for i, p := range r.Parameters {
 		label := fmt.Sprintf("%s, %s", p.Name, r.Model.Parameters()[i].Meaning)
@@ -21,8 +21,12 @@ func (r Result) Section() casenote.Section {
 	if r.PerArea {
 		unit = resistance.PerArea
 	}
+	s.Rows = append(s.Rows, casenote.Quantity("total resistance", r.TotalResistance, unit, data.Estimated))
+	if r.Basis == BasisMeans {
+		s.Rows = append(s.Rows, casenote.Words("residual", "none: "+r.CriterionReason), casenote.Words("intervals", r.intervalWords()))
+		return s
+	}
 	s.Rows = append(s.Rows,
-		casenote.Quantity("total resistance", r.TotalResistance, unit, data.Estimated),
 		casenote.Quantity("residual, rms", data.Estimate{Value: r.RMSE, Total: data.NoInterval(), Random: data.NoInterval(), Identified: true, Why: "of the fit as it stands"}, "mmHg", data.Estimated),
 		casenote.Words("intervals", r.intervalWords()))
 	return s
@@ -46,10 +50,13 @@ func (r Result) title() string {
 }
 
 func (r Result) basisWords() string {
-	if s := r.Span; s != nil {
-		return fmt.Sprintf("the whole span (%.4g s, runs without a gap: %d)", s.Duration, s.Runs)
+	if r.Basis == BasisMeans {
+		return "from mean values, and the decay of diastole or the pulse pressure"
 	}
-	return "the average beat"
+	if s := r.Span; s != nil {
+		return fmt.Sprintf("fitted to the whole span (%.4g s, runs without a gap: %d)", s.Duration, s.Runs)
+	}
+	return "fitted to the average beat"
 }
 
 // intervalWords names the method of the intervals, or why there are none.

@@ -35,6 +35,9 @@ type Case struct {
 
 	OutflowPressure *float64          `key:"outflow_pressure" value:"MMHG" help:"pressure that the outflow goes to"`
 	Delay           string            `key:"delay" value:"auto|S" amount:"true" help:"delay of the pressure behind the flow, or auto to estimate it; positive where pressure is late"`
+	CardiacOutput   *float64          `key:"cardiac_output" value:"L_PER_MIN" help:"cardiac output measured beside the recording"`
+	OutputBy        string            `key:"output_by" value:"HOW" help:"fick, thermodilution, assumed-fick, outflow-doppler, contour or pump"`
+	Cuff            string            `key:"cuff" value:"SYS/DIA[/MEAN]" help:"reading of a cuff beside the recording, mmHg"`
 	Error           map[string]string `key:"error" value:"WHAT=HALFWIDTH[%]" amount:"true" help:"95 % half-width of a systematic error"`
 
 	Drop []float64 `key:"drop" value:"S" help:"a time inside a beat to leave out, on the file's own clock"`

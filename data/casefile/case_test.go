@@ -61,6 +61,9 @@ basis = "span"
 error.flow = "10 %"
 error.cardiac-output = 0.5
 ventricle = { Pfill = 20, activation = "hill" }
+cardiac_output = 4.2
+output_by = "fick"
+cuff = "118/74"
 
 [site]
 abp = "root"
@@ -98,6 +101,7 @@ func fullCase() Case {
 		Rate:          ptr(125.0), From: ptr(-1.5), To: ptr(0.0), Exclude: "artefacts.csv",
 		DiameterCM: ptr(2.1), AngleDeg: ptr(20.0), Profile: "1",
 		OutflowPressure: ptr(0.0), Delay: "0.0125",
+		CardiacOutput: ptr(4.2), OutputBy: "fick", Cuff: "118/74",
 		Error: map[string]string{"flow": "10%", "cardiac-output": "0.5"},
 		Beats: "support", OneBeat: true, Model: "wk3", Basis: "span", Replicates: ptr(2000), Seed: ptr(-7), Share: []float64{0, 0.25, 1},
 		EDVML: ptr(210.0), EF: ptr(0.25), Pump: map[string]string{"set": "generic A"}, Speed: []float64{8, 9.5},
@@ -125,7 +129,7 @@ func TestReadEveryKey(t *testing.T) {
 	}
 	for key, line := range map[string]int{
 		"recording": 2, "invert": 8, "rate": 10, "share": 24, "error.flow": 36, "error.cardiac-output": 37, "ventricle.Pfill": 38, "pump": 27,
-		"site": 40, "site.abp": 41, "site.q.1": 42, "unit.na=me": 45, "offset.abp": 49, "modulation.low": 52, "site.other": 0, "": 0,
+		"site": 43, "site.abp": 44, "site.q.1": 45, "unit.na=me": 48, "offset.abp": 52, "modulation.low": 55, "site.other": 0, "": 0,
 	} {
 		if got := c.Line(key); got != line {
 			t.Errorf("line of %q is %d, want %d", key, got, line)

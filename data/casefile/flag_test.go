@@ -12,7 +12,7 @@ func TestArguments(t *testing.T) {
 	want := strings.Split("afterbeat study ./-a.csv --label pilot-07 --time t --pressure abp --flow q --velocity v "+
 		"--site abp=root --site q.1=lvot --unit na=me=mL/s --scale abp=1.05 --offset abp=-3 --calibrate abp=mean:93/80 --sensor-height-cm abp=12.5 --velocity-range v=128 --invert q --invert v "+
 		"--rate 125 --from -1.5 --to 0 --exclude artefacts.csv --diameter-cm 2.1 --angle-deg 20 --profile 1 "+
-		"--outflow-pressure 0 --delay 0.0125 --error cardiac-output=0.5 --error flow=10% --drop 3.5 --keep 7 --keep 8.25 --beats support --one-beat --model wk3 --basis span "+
+		"--outflow-pressure 0 --delay 0.0125 --cardiac-output 4.2 --output-by fick --cuff 118/74 --error cardiac-output=0.5 --error flow=10% --drop 3.5 --keep 7 --keep 8.25 --beats support --one-beat --model wk3 --basis span "+
 		"--replicates 2000 --seed -7 --share 0 --share 0.25 --share 1 --edv-ml 210 --ef 0.25", " ")
 	want = append(want, "--pump", "generic A", "--ventricle", "Pfill=20", "--ventricle", "activation=hill", "--speed", "8", "--speed", "9.5", "--quote", "8", "--match", "flow",
 		"--hold-resistance", "0.9", "--modulation", "locked=2", "--modulation", "low=7.5", "--modulation", "shape=square", "--remark", "worth a second look")
@@ -86,12 +86,12 @@ func TestOver(t *testing.T) {
 	if d := diff(want, got); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
-	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 42} {
+	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 45} {
 		if got.Line(key) != line {
 			t.Errorf("line of %q is %d, want %d", key, got.Line(key), line)
 		}
 	}
-	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 41 {
+	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 44 {
 		t.Errorf("the case below has changed (-want +got)\n%s", d)
 	}
 }

@@ -242,3 +242,30 @@ func TestDecayDependsOnItsStart(t *testing.T) {
 		}
 	}
 }
+
+// A cuff that reads the example's own mean and pulse gives the pulse-pressure method
+// and the index of the worked example; the rest needs the wave.
+func TestEstimatesOfACuff(t *testing.T) {
+	b := example("wk3", 1600, 0)
+	b.Pressure = data.Period{}
+	all := OfCuff(b, 91.875, 40.3701832)
+	if len(all) != 7 {
+		t.Fatalf("%d methods", len(all))
+	}
+	for _, e := range all {
+		switch e.Name {
+		case PulsePressure:
+			if math.Abs(e.C/1.125678-1) > 1e-3 || math.Abs(e.R-1.05) > 1e-4 {
+				t.Errorf("%+v", e)
+			}
+		case SVOverPP:
+			if math.Abs(e.Index/1.73395-1) > 1e-3 || !math.IsNaN(e.C) {
+				t.Errorf("%+v", e)
+			}
+		default:
+			if !strings.Contains(e.Reason, "wave of the pressure") || !math.IsNaN(e.R+e.C) {
+				t.Errorf("%+v", e)
+			}
+		}
+	}
+}

@@ -83,11 +83,29 @@ func (m *Matcher) Match(flow []float64, r, zc, pulse float64) (c float64, why st
 	case !(swing(high) < pulse):
 		return math.NaN(), "the pulse is smaller than that of the characteristic impedance alone"
 	}
-	for high-low > 1e-10 {
-		if middle := (low + high) / 2; swing(middle) > pulse {
-			low = middle
+	// Illinois: a secant between the ends; the value of an end that stays twice is
+	// halved.
+	above, below, stayed := math.Log(swing(low)/pulse), math.Log(swing(high)/pulse), 0
+	for range 100 {
+		next := (low*below - high*above) / (below - above)
+		if !(low < next && next < high) || high-low < 1e-10 {
+			break
+		}
+		v := math.Log(swing(next) / pulse)
+		if math.Abs(v) < 1e-12 {
+			low, high = next, next
+			break
+		}
+		if v > 0 {
+			if stayed < 0 {
+				below /= 2
+			}
+			low, above, stayed = next, v, -1
 		} else {
-			high = middle
+			if stayed > 0 {
+				above /= 2
+			}
+			high, below, stayed = next, v, 1
 		}
 	}
 	return math.Exp((low+high)/2) / r, ""

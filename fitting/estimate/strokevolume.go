@@ -1,5 +1,7 @@
 package estimate
 
+const indexRemark = "an index, not a compliance: 16 to 74 % above C on beats of known loads"
+
 // ByStrokeVolume is stroke volume over pulse pressure, an index and no
 // compliance: on half-sine beats of known loads it lies 16 to 74 % above C
 // (Chemla et al. 1998, Am J Physiol 274:H500, found it near the area method in 31
@@ -17,6 +19,6 @@ func ByStrokeVolume(b Beat) Estimate {
 		return e.without("the pressure has no pulse")
 	}
 	e.Index = q * b.Pressure.Duration() / (high - low)
-	e.Remark = "an index, not a compliance: 16 to 74 % above C on beats of known loads"
+	e.Remark = indexRemark
 	return e
 }

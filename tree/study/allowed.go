@@ -4,6 +4,7 @@ import (
 	"fmt"
 
 	"afterbeat/data"
+	"afterbeat/fitting/means"
 )
 
 // notFittable says why pressure and flow of the average beat carry no fit, with
@@ -14,7 +15,7 @@ func notFittable(b Beats) string {
 	flow, hasFlow := b.Intake.flowChannel()
 	switch {
 	case !hasPressure:
-		return "no arterial pressure: a fit needs one; name it with --pressure"
+		return b.withoutPressure()
 	case !pressure.Unit.Calibrated:
 		return uncalibrated(pressure, "mmHg")
 	case !hasFlow:
@@ -26,6 +27,35 @@ func notFittable(b Beats) string {
 		return w[0].Text + "; " + w[0].Cure
 	}
 	return ""
+}
+
+// withoutPressure says why a flow without a pressure carries no fit, with the
+// smallest thing that would cure it; empty where a cuff stands in for it.
+func (b Beats) withoutPressure() string {
+	flow, hasFlow := b.Intake.flowChannel()
+	switch {
+	case b.Intake.Case.Cuff == "":
+		return "no arterial pressure: a fit needs one; name it with --pressure, or give a reading of a cuff, --cuff SYS/DIA"
+	case !hasFlow:
+		return "a reading of a cuff and no flow: a fit needs the wave of one of the two"
+	case !flow.Unit.Calibrated:
+		return uncalibrated(flow, b.flowUnit())
+	case b.FlowInfo.PerArea:
+		return "a velocity and a cuff make no load without the diameter of the vessel: state it with --diameter-cm D"
+	}
+	if w := reversed(b); len(w) > 0 {
+		return w[0].Text + "; " + w[0].Cure
+	}
+	return ""
+}
+
+// cuff is the reading that the case states; nil where it has none.
+func (t Intake) cuff() (*means.Cuff, error) {
+	widths, err := halfWidths(t.Case)
+	if err != nil {
+		return nil, err
+	}
+	return cuffOf(t.Case, widths)
 }
 
 // reversed warns of a mean flow that is not positive.
@@ -53,7 +83,11 @@ func uncalibrated(ch data.Channel, unit string) string {
 // checkOutflow refuses an outflow pressure that the mean pressure does not
 // exceed: no resistance would be positive.
 func checkOutflow(b Beats) error {
-	if mean := b.Pressure.Period.Mean(); b.Pressure.Count > 0 && outflow(b) >= mean {
+	mean := b.Pressure.Period.Mean()
+	if cuff, err := b.Intake.cuff(); b.Pressure.Count == 0 && cuff != nil && err == nil {
+		mean = cuff.MeanPressure()
+	}
+	if outflow(b) >= mean {
 		return &ChoiceError{
 			Key:  "outflow_pressure",
 			What: fmt.Sprintf("%g mmHg is not below the mean pressure of %.4g mmHg", outflow(b), mean),

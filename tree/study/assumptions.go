@@ -15,7 +15,8 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 	// An error of flow that was given is all of it, those of its parts included.
 	parts := b.FlowInfo.Conversion != nil && b.Intake.Case.Error["flow"] == ""
 	delay := data.Estimate{Value: b.Delay.Value, Total: around(b.Delay.Value, b.Delay.Error), Random: data.NoInterval(), Identified: true}
-	if hasFlow {
+	s.Rows = append(s.Rows, b.besideRows()...)
+	if hasFlow && b.Pressure.Count > 0 {
 		s.Rows = append(s.Rows, casenote.Quantity("delay of pressure", delay, "s", b.Delay.origin()))
 	}
 	pv := outflow(b)
@@ -29,17 +30,22 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 			w = b.Delay.Error
 		}
 		switch k.name {
+		case "cardiac-output":
+			if hasFlow || b.Intake.Case.CardiacOutput == nil {
+				continue
+			}
 		case "flow":
-			w = b.FlowInfo.Error
-			fallthrough
+			if w = b.FlowInfo.Error; !hasFlow {
+				continue
+			}
 		case "delay":
-			if !hasFlow {
+			if !hasFlow || b.Pressure.Count == 0 {
 				continue
 			}
 		case "filling-slope": // stands with the ventricle
 			continue
 		case "cuff":
-			if !pressure.FromCuff {
+			if !pressure.FromCuff && b.Pressure.Count > 0 {
 				continue
 			}
 		case "pressure-scale":
@@ -48,6 +54,9 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 				continue
 			}
 		case "pressure-offset":
+			if b.Pressure.Count == 0 {
+				continue
+			}
 			if pressure.FromCuff {
 				s.Rows = append(s.Rows, casenote.Words("95 % error, "+k.name, fmt.Sprintf("+-%.3g mmHg (from the cuff's)", pressure.Offset)))
 				continue
@@ -59,7 +68,7 @@ func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
 		}
 		s.Rows = append(s.Rows, casenote.Words("95 % error, "+k.name, k.words(w)+stated(b.Intake.Case.Error[k.name] != "")))
 	}
-	if b.Pressure.Count >= 2 {
+	if b.some().Count >= 2 {
 		s.Rows = append(s.Rows, casenote.Words("replicates", fmt.Sprintf("%d, seed %d", replicates, seed)))
 	}
 	return s

@@ -70,6 +70,7 @@ func (k errorKind) example() string {
 // errorKinds lists the systematic errors that this stage of the work uses.
 func errorKinds() []errorKind {
 	return []errorKind{
+		{"cardiac-output", true, "%", unknownOutputError},
 		{"flow", true, "%", defaultFlowError},
 		{"pressure-scale", true, "%", defaultScaleError},
 		{"pressure-offset", false, "mmHg", defaultOffsetError},
@@ -91,6 +92,7 @@ func halfWidths(c casefile.Case) (map[string]float64, error) {
 		widths[k.name] = k.standard
 		known = append(known, k.name)
 	}
+	widths["cardiac-output"] = outputError(c)
 	for _, name := range sorted(c.Error) {
 		written := c.Error[name]
 		i := slices.Index(known, name)

@@ -55,6 +55,8 @@ func notComparable(f Fit) string {
 		return "nothing was fitted to the beats"
 	case f.Chosen < 0:
 		return f.Recommended.Why + "; name a model with --model to go on all the same"
+	case f.Beats.Flow.Count == 0:
+		return "an output has a mean and no wave, and what a pump leaves of a pulse needs the wave: record a flow, or a velocity with its diameter"
 	case f.Beats.FlowInfo.PerArea:
 		return "the fit is per unit area: state the diameter (--diameter-cm) to compare flows"
 	case !site.Systemic() && site != data.SiteOther:

@@ -13,10 +13,14 @@ import (
 // estimators are the ways of the literature to the load of the average beat,
 // each with the reason where it does not apply.
 func estimators(b Beats, impedance []harmonic.Harmonic) []estimate.Estimate {
+	output := 0.0
+	if b.Flow.Count == 0 {
+		output, _ = cardiacOutput(b.Intake.Case) // checked before the fit
+	}
 	return estimate.All(estimate.Beat{
 		Pressure: b.Pressure.Period, Flow: b.Flow.Period,
 		OutflowPressure: outflow(b), Rise: b.Pressure.EndMinusStart,
-		Harmonics: impedance,
+		Harmonics: impedance, Output: output,
 	})
 }
 

@@ -12,13 +12,20 @@ import (
 	"afterbeat/fitting/delay"
 	"afterbeat/fitting/estimate"
 	"afterbeat/fitting/harmonic"
+	"afterbeat/fitting/means"
 )
 
 // Fit is what the average beat says about the load.
 type Fit struct {
-	Beats      Beats
+	Beats Beats
+	Row   Row         // of the table of what the data allow
+	Cuff  *means.Cuff // the reading that stands for the pressure; nil where there is one
+
 	Results    []fitting.Result
 	Estimators []estimate.Estimate
+	// TimeConstant is that of diastole, s, where the pressure allows nothing else;
+	// the zero Estimate elsewhere.
+	TimeConstant data.Estimate
 	// Impedance is that of the beats, harmonic by harmonic; nil without a flow.
 	Impedance []harmonic.Harmonic
 	Waves     Waves
@@ -58,6 +65,13 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 	if err != nil {
 		return f, err
 	}
+	cuff, err := b.Intake.cuff()
+	if err != nil {
+		return f, err
+	}
+	if _, err := cardiacOutput(b.Intake.Case); err != nil {
+		return f, err
+	}
 	if b.Intake.Ambiguous != nil && b.NoPulse() == "" {
 		return f, b.Intake.Ambiguous
 	}
@@ -71,7 +85,14 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 		return f, err
 	}
 	if _, hasFlow := b.Intake.flowChannel(); !hasFlow {
-		return f.fromPressureAlone(), nil
+		return f.fromPressure(ctx, settings)
+	}
+	if b.Pressure.Count == 0 {
+		return f.fromCuff(ctx, settings, *cuff)
+	}
+	f.Row = RowAll
+	if b.FlowInfo.PerArea {
+		f.Row = RowPerArea
 	}
 	beats, err := fitData(b)
 	if err != nil {
@@ -87,6 +108,7 @@ func FitLoad(ctx context.Context, b Beats) (Fit, error) {
 // fromPressureAlone estimates the time constant of diastole, all that a
 // pressure without a flow allows.
 func (f Fit) fromPressureAlone() Fit {
+	f.Row = RowPressure
 	f.Estimators = estimators(f.Beats, nil)
 	if decay := f.Estimators[0]; decay.Reason != "" {
 		f.Reason = "no flow to fit with, and no time constant either: " + decay.Reason
@@ -95,7 +117,7 @@ func (f Fit) fromPressureAlone() Fit {
 	f.Warnings = append(f.Warnings, data.Warning{
 		Code: data.CodeNoFlow,
 		Text: "a pressure alone gives the time constant of diastole, and no R or C",
-		Cure: "a flow or a velocity recorded with it, or a cardiac output even within 20 %, would turn it into R and C",
+		Cure: "a flow or a velocity recorded with it, or a cardiac output even within 20 % (--cardiac-output L_PER_MIN), would turn it into R and C",
 	})
 	return f
 }
@@ -126,7 +148,7 @@ func (f Fit) conclude(ctx context.Context, d fitting.Span) (Fit, error) {
 	chosen := f.Results[f.Chosen]
 	f.Warnings = chosen.Warnings
 	f.Sensitivity, err = sensitivities(ctx, chosen, d)
-	f.Warnings = slices.Concat(f.Warnings, f.delayWarnings(), disagreements(f))
+	f.Warnings = slices.Concat(f.Warnings, f.delayWarnings(), disagreements(f), f.outputWarnings(), f.cuffWarnings())
 	return f, err
 }
 

@@ -323,14 +323,23 @@ const strokeVolumeRow = 2
 // mismatch sets the native state of the model beside the average beat.
 func (f *Forecast) mismatch() []Mismatch {
 	b, n := f.Comparison.Fit.Beats, &f.Native
-	low, high := b.Pressure.Period.Extremes()
+	mean, pulse := b.Pressure.Period.Mean(), measuredPulse(b)
+	if cuff := f.Comparison.Fit.Cuff; cuff != nil {
+		mean, pulse = cuff.MeanPressure(), cuff.Pulse()
+	}
 	period := b.Flow.Period.Duration()
 	return []Mismatch{
-		{"mean pressure", "mmHg", b.Pressure.Period.Mean(), n.Arterial.Mean},
-		{"pulse pressure", "mmHg", high - low, n.CoupledState.PulsePressure()},
+		{"mean pressure", "mmHg", mean, n.Arterial.Mean},
+		{"pulse pressure", "mmHg", pulse, n.CoupledState.PulsePressure()},
 		{"stroke volume", "mL", b.Flow.Period.Mean() * period, n.Flow() * period},
 		{"ejection time", "s", ejectionTime(b.Flow.Period), n.ValveOpen},
 	}
+}
+
+// measuredPulse is the pulse pressure of the average beat, mmHg.
+func measuredPulse(b Beats) float64 {
+	low, high := b.Pressure.Period.Extremes()
+	return high - low
 }
 
 // held lists what is the same at every speed. What is not identified keeps its

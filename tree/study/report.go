@@ -71,10 +71,14 @@ type RecommendedReport struct {
 // FitReport is what `fit --json` prints: what check prints, and the fits.
 type FitReport struct {
 	CheckReport
-	FlowUnit    *string            `json:"flow_unit"`
-	Beat        *BeatReport        `json:"beat"`
-	Fits        []ModelReport      `json:"fits"`
-	Estimators  []EstimatorReport  `json:"estimators"`
+	FlowUnit   *string           `json:"flow_unit"`
+	Beat       *BeatReport       `json:"beat"`
+	Fits       []ModelReport     `json:"fits"`
+	Estimators []EstimatorReport `json:"estimators"`
+	// TimeConstant is that of diastole where the pressure allows nothing else.
+	TimeConstant *EstimateReport `json:"time_constant_s"`
+	// Given is the row of what the data allow.
+	Given       *string            `json:"given"`
 	Impedance   []HarmonicReport   `json:"impedance"`
 	Waves       *WavesReport       `json:"waves"`
 	Recommended *RecommendedReport `json:"recommended"`

@@ -41,6 +41,11 @@ func (s Study) FitReport() FitReport {
 	for _, e := range f.Estimators {
 		r.Estimators = append(r.Estimators, estimatorReport(e))
 	}
+	r.Given = reason(string(f.Row))
+	if f.Row == RowPressure && f.Reason == "" {
+		tau := estimateReport(f.TimeConstant)
+		r.TimeConstant = &tau
+	}
 	r.Impedance, r.Waves = impedanceReport(f.Impedance), f.wavesReport()
 	if f.Recommended.Model != "" {
 		r.Recommended = &RecommendedReport{f.Recommended.Model, f.Recommended.Basis, f.Recommended.Why}

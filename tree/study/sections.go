@@ -45,6 +45,7 @@ func (f Fit) sections() []casenote.Section {
 	settings, _ := fitSettings(f.Beats.Intake.Case) // checked before the fit
 	settings = settings.WithDefaults()
 	out := []casenote.Section{f.Beats.assumptionSection(int(settings.Seed), settings.Replicates)}
+	out = append(out, f.rowSection())
 	for _, r := range f.Results {
 		if r.Basis == f.Results[len(f.Results)-1].Basis { // the table has those of the average beat beside
 			out = append(out, r.Section())
@@ -56,7 +57,9 @@ func (f Fit) sections() []casenote.Section {
 	if len(f.Sensitivity) > 0 {
 		out = append(out, f.sensitivitySection())
 	}
-	out = append(out, f.estimatorSection())
+	if len(f.Estimators) > 0 {
+		out = append(out, f.estimatorSection())
+	}
 	if f.Delay != nil {
 		out = append(out, f.delaySection())
 	}

@@ -38,6 +38,7 @@ func withoutFit(c casefile.Case) casefile.Case {
 	c = withoutForecast(c)
 	c.Basis = ""
 	c.Model, c.OutflowPressure, c.Replicates, c.Seed = "", nil, nil, nil
+	c.CardiacOutput, c.OutputBy, c.Cuff = nil, "", ""
 	return c
 }
 

@@ -29,6 +29,7 @@ func changes() map[string]struct {
 		"diameter_cm": {"2", StageIntake}, "angle_deg": {"10", StageIntake}, "profile": {"0.9", StageIntake},
 		"delay": {"0.01", StageIntake}, "error": {"flow=20%", StageIntake}, "one_beat": {"true", StageIntake}, "beats": {"support", StageIntake},
 		"model": {"wk2", StageFit}, "basis": {"beat", StageFit}, "outflow_pressure": {"8", StageFit}, "replicates": {"12", StageFit}, "seed": {"3", StageFit},
+		"cardiac_output": {"4.2", StageFit}, "output_by": {"fick", StageFit}, "cuff": {"118/74", StageFit},
 		"edv_ml": {"210", StageForecast}, "ef": {"0.25", StageForecast}, "pump": {"generic B", StageForecast}, "speed": {"3", StageForecast},
 		"ventricle": {"Pfill=15", StageForecast}, "match": {"flow", StageForecast}, "quote": {"4", StageForecast}, "hold_resistance": {"0.9", StageForecast}, "modulation": {"shape=sine", StageForecast},
 		"share": {"0.3", StageSupport}, "label": {"pilot-07", StageDone}, "remark": {"look again", StageDone},

@@ -18,6 +18,9 @@ type WhatIf struct {
 // WhatIfs moves the assumptions of [Fit.Sensitivity] about result i, and the
 // diameter by 5 % where a velocity was made into a flow.
 func (f Fit) WhatIfs(ctx context.Context, i int) ([]WhatIf, error) {
+	if f.Results[i].Basis == fitting.BasisMeans {
+		return f.movedMeans(i), nil
+	}
 	all := moves()
 	if f.Beats.FlowInfo.Conversion != nil {
 		for _, d := range []float64{-0.05, 0.05} {
@@ -29,7 +32,12 @@ func (f Fit) WhatIfs(ctx context.Context, i int) ([]WhatIf, error) {
 
 // Doubts moves each systematic error of result i to the upper end of its 95 %
 // interval: what the total interval is made of, beside random error.
+//
+// A load on the basis of means has none: [Fit.Sensitivity] says what moves it.
 func (f Fit) Doubts(ctx context.Context, i int) ([]WhatIf, error) {
+	if f.Results[i].Basis == fitting.BasisMeans {
+		return nil, nil
+	}
 	b, err := fitData(f.Beats)
 	if err != nil {
 		return nil, err
@@ -52,6 +60,22 @@ func (f Fit) Doubts(ctx context.Context, i int) ([]WhatIf, error) {
 		}
 	}
 	return f.moved(ctx, i, some)
+}
+
+// movedMeans is result i, on the basis of means, under each assumption of
+// [Fit.Sensitivity]; nothing for another than the chosen one.
+func (f Fit) movedMeans(i int) (out []WhatIf) {
+	if i != f.Chosen {
+		return nil
+	}
+	for _, s := range f.Sensitivity {
+		r := fitting.NewResult(f.Results[i].Model, fitting.BasisMeans, s.Values, f.Results[i].Site, f.Results[i].OutflowPressure, f.Results[i].CriterionReason)
+		if f.Beats.Flow.Count > 0 {
+			r.Modelled = fitting.Respond(r.Load(), f.Beats.Flow.Period, r.OutflowPressure)
+		}
+		out = append(out, WhatIf{s, r})
+	}
+	return out
 }
 
 // moved fits result i anew under each move.

@@ -116,8 +116,10 @@ func (d drawing) whatIf(result int, all []study.WhatIf, i int) string {
 // over draws a modelled pressure over the measured one, and the residual below
 // where there is room.
 func (d drawing) over(main chart.Plot, name string, modelled, residual []float64, y chart.Axis, was string) string {
-	main.Series = append(main.Series, chart.Series{Name: name, Values: modelled})
-	if !d.plan.stacked {
+	if len(modelled) > 0 { // a load of mean values and a decay has no wave
+		main.Series = append(main.Series, chart.Series{Name: name, Values: modelled})
+	}
+	if !d.plan.stacked || len(residual) == 0 {
 		return d.alone(main)
 	}
 	return d.stacked(chart.Stack{Main: main, Lower: d.residual(residual, y, was)})
@@ -130,10 +132,13 @@ const labelWidth = 5
 // pressure is the measured one.
 func (d drawing) pressure(title string) chart.Plot {
 	p := d.fit.Beats.Pressure.Period
-	return chart.Plot{
-		Title: title, X: timeAxis(p), Y: d.pressureAxis, LabelWidth: labelWidth,
-		Series: []chart.Series{{Name: "measured", Values: p.Samples}},
+	plot := chart.Plot{Title: title, X: timeAxis(p), Y: d.pressureAxis, LabelWidth: labelWidth}
+	if len(p.Samples) == 0 { // a cuff has no wave
+		plot.X = timeAxis(d.fit.Beats.Flow.Period)
+		return plot
 	}
+	plot.Series = []chart.Series{{Name: "measured", Values: p.Samples}}
+	return plot
 }
 
 // residual is what is left over about the line of 0, in the range of its own
