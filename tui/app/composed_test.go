@@ -19,6 +19,7 @@ import (
 	"afterbeat/tui/intake"
 	"afterbeat/tui/note"
 	"afterbeat/tui/support"
+	"afterbeat/tui/tree"
 )
 
 // composed is a driver over the screens of the program and the demo case,
@@ -27,7 +28,7 @@ func composed(t testing.TB, compute bool, more ...func(*Options)) *driver {
 	t.Helper()
 	d := newDriver(t, func(o *Options) {
 		o.Screens = map[tui.Stage]tui.Screen{
-			tui.Intake: intake.New(), tui.Beats: beats.New(), tui.Fit: fit.New(), tui.Support: support.New(), tui.Note: note.New(),
+			tui.Intake: intake.New(), tui.Beats: beats.New(), tui.Fit: fit.New(), tui.Tree: tree.New(), tui.Support: support.New(), tui.Note: note.New(),
 		}
 		if !compute {
 			return
@@ -49,7 +50,7 @@ func composed(t testing.TB, compute bool, more ...func(*Options)) *driver {
 
 // keysOfScreens are keys that the screens answer, beside those of nobody.
 var keysOfScreens = strings.Fields(
-	"left right up down h j k l g G H L 0 + - = t n p N P d c o O e i w f [ ] x m r / v enter esc pgup pgdown home end " +
+	"left right up down h j k l g G H L 0 + - = t n p N P d c o O e i w f [ ] x m r / b z v enter esc pgup pgdown home end " +
 		"1 2 3 4 5 6 tab ? A u ctrl+r backspace 7 .")
 
 // TestNoKeyHasTwoMeanings holds the keys of every screen against those of the
