@@ -49,7 +49,7 @@ func composed(t testing.TB, compute bool, more ...func(*Options)) *driver {
 
 // keysOfScreens are keys that the screens answer, beside those of nobody.
 var keysOfScreens = strings.Fields(
-	"left right up down h j k l g G H L 0 + - = t n p N P d c o O e i w f [ ] x m r / v enter esc pgup pgdown home end " +
+	"left right up down h j k l g G H L 0 + - = t n p N P d c o O e i w f z b [ ] x m r / v enter esc pgup pgdown home end " +
 		"1 2 3 4 5 6 tab ? A u ctrl+r backspace 7 .")
 
 // TestNoKeyHasTwoMeanings holds the keys of every screen against those of the
