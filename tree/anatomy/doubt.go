@@ -8,9 +8,6 @@ import (
 	"afterbeat/data"
 )
 
-// doubts are the half-widths of the logarithms of something: random and total.
-type doubts struct{ random, total []float64 }
-
 // changes are ways in which the residuals may be off, each with its change of
 // the solution.
 type changes struct {
