@@ -69,6 +69,8 @@ const (
 	CodeAliased       Code = "aliased-velocity"
 	CodeWallFilter    Code = "wall-filter"
 	CodeSlowWander    Code = "slow-wander"
+	CodeTreeStretched Code = "tree-stretched"
+	CodeNoTree        Code = "no-tree"
 )
 
 // WarningCode is a row of the table that `afterbeat help warnings` prints.
@@ -132,6 +134,8 @@ func WarningCodes() []WarningCode {
 		{CodePublished, "a number of the forecast lies outside the range that is published of patients"},
 		{CodeNativeMiss, "the native state of the model differs from what was measured"},
 		{CodeFewDraws, "few of the drawn ventricles meet the native state, so that intervals are unsure"},
+		{CodeTreeStretched, "the tree had to be changed far from its table to meet what was measured"},
+		{CodeNoTree, "no tree of arteries could be made"},
 		{CodeBeyondPump, "a speed lies outside the range in which the pump's coefficients make sense"},
 		{CodeNotMatched, "the mean flow or pressure that was to be matched cannot be met at a speed"},
 		{CodeSlowWander, "the residual wanders too slowly for the length of the recording: the interval of R is too narrow"},

@@ -27,14 +27,14 @@ func (s Stage) String() string {
 // come; empty where it can.
 func (s Stage) Missing(st study.Study) string {
 	switch {
-	case s == Tree:
-		return "the tree of arteries comes with a later version; the fit is a lumped load"
 	case s == Intake && st.Inputs.Recording == nil:
 		return "the recording has not been read yet"
 	case s == Beats && st.Beats == nil:
 		return "the beats have not been looked for yet"
 	case s == Fit && st.Fit == nil:
 		return "the fit has not been computed yet"
+	case s == Tree && st.Tree == nil:
+		return "the tree has not been computed yet"
 	case (s == Support || s == Note) && st.Comparison == nil:
 		return "native and supported state have not been computed yet"
 	}

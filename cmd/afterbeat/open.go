@@ -105,7 +105,7 @@ func (s source) spare(target string, c casefile.Case) error {
 	if target == "" || err != nil {
 		return nil
 	}
-	for _, name := range []string{s.file, c.Recording, c.Exclude, c.Modulation["file"]} {
+	for _, name := range []string{s.file, c.Recording, c.Exclude, c.Tree, c.Modulation["file"]} {
 		if name == "" {
 			continue
 		}

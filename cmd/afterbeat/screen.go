@@ -26,6 +26,7 @@ import (
 	"afterbeat/tui/note"
 	"afterbeat/tui/state"
 	"afterbeat/tui/support"
+	"afterbeat/tui/tree"
 )
 
 // screenFlags are the flags that only the screens have.
@@ -129,7 +130,7 @@ func screenOptions(ctx context.Context, path string, s stream, o *options, f *sc
 // screens are those of the stages that exist.
 func screens() map[tui.Stage]tui.Screen {
 	return map[tui.Stage]tui.Screen{
-		tui.Intake: intake.New(), tui.Beats: beats.New(), tui.Fit: fit.New(), tui.Support: support.New(), tui.Note: note.New(),
+		tui.Intake: intake.New(), tui.Beats: beats.New(), tui.Fit: fit.New(), tui.Tree: tree.New(), tui.Support: support.New(), tui.Note: note.New(),
 	}
 }
 

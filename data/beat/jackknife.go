@@ -17,6 +17,15 @@ const jackknifeSeconds = 4
 // is longer, and a single beat where that leaves fewer than four blocks. Fewer
 // than two beats have none.
 func (e Ensemble) LeaveOut(signal int) []Measures {
+	var out []Measures
+	for _, p := range e.LeaveOutAverages(signal) {
+		out = append(out, Measure(p))
+	}
+	return out
+}
+
+// LeaveOutAverages are the average beats that [Ensemble.LeaveOut] measures.
+func (e Ensemble) LeaveOutAverages(signal int) []data.Period {
 	n := len(e.Used)
 	if n < 2 {
 		return nil
@@ -26,7 +35,7 @@ func (e Ensemble) LeaveOut(signal int) []Measures {
 		block = 1
 	}
 	all := sum(e.Beats[signal], e.N)
-	var out []Measures
+	var out []data.Period
 	for from := 0; from+block <= n; from += block {
 		to := from + block
 		if n-to < block {
@@ -37,7 +46,7 @@ func (e Ensemble) LeaveOut(signal int) []Measures {
 		for j := range p.Samples {
 			p.Samples[j] = (all[j] - left[j]) / float64(n-(to-from))
 		}
-		out = append(out, Measure(p))
+		out = append(out, p)
 	}
 	return out
 }

@@ -56,6 +56,14 @@ match = "flow"
 hold_resistance = 0.9
 drop = [3.5]
 keep = [7, 8.25]
+height_cm = 172
+weight_kg = 80
+age = 63
+sex = "female"
+pwv_m_s = 8.5
+tree = "arteries.csv"
+brain_flow_ml_min = 660
+hold_out = "radial"
 remark = "worth a second look"
 basis = "span"
 error.flow = "10 %"
@@ -103,7 +111,9 @@ func fullCase() Case {
 		EDVML: ptr(210.0), EF: ptr(0.25), Pump: map[string]string{"set": "generic A"}, Speed: []float64{8, 9.5},
 		Quote: ptr(8.0), Match: "flow", HoldResistance: ptr(0.9), Ventricle: map[string]string{"Pfill": "20", "activation": "hill"},
 		Modulation: map[string]string{"shape": "square", "low": "7.5", "locked": "2"},
-		Drop:       []float64{3.5}, Keep: []float64{7, 8.25}, Remark: "worth a second look",
+		Drop:       []float64{3.5}, Keep: []float64{7, 8.25},
+		HeightCM: ptr(172.0), WeightKG: ptr(80.0), Age: ptr(63.0), Sex: "female", PWV: ptr(8.5),
+		Tree: "arteries.csv", BrainFlow: ptr(660.0), HoldOut: "radial", Remark: "worth a second look",
 	}
 }
 
@@ -124,8 +134,8 @@ func TestReadEveryKey(t *testing.T) {
 		}
 	}
 	for key, line := range map[string]int{
-		"recording": 2, "invert": 8, "rate": 10, "share": 24, "error.flow": 36, "error.cardiac-output": 37, "ventricle.Pfill": 38, "pump": 27,
-		"site": 40, "site.abp": 41, "site.q.1": 42, "unit.na=me": 45, "offset.abp": 49, "modulation.low": 52, "site.other": 0, "": 0,
+		"recording": 2, "invert": 8, "rate": 10, "share": 24, "error.flow": 44, "error.cardiac-output": 45, "ventricle.Pfill": 46, "pump": 27,
+		"site": 48, "site.abp": 49, "site.q.1": 50, "unit.na=me": 53, "offset.abp": 57, "modulation.low": 60, "site.other": 0, "": 0,
 	} {
 		if got := c.Line(key); got != line {
 			t.Errorf("line of %q is %d, want %d", key, got, line)

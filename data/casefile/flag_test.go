@@ -15,7 +15,8 @@ func TestArguments(t *testing.T) {
 		"--outflow-pressure 0 --delay 0.0125 --error cardiac-output=0.5 --error flow=10% --drop 3.5 --keep 7 --keep 8.25 --beats support --one-beat --model wk3 --basis span "+
 		"--replicates 2000 --seed -7 --share 0 --share 0.25 --share 1 --edv-ml 210 --ef 0.25", " ")
 	want = append(want, "--pump", "generic A", "--ventricle", "Pfill=20", "--ventricle", "activation=hill", "--speed", "8", "--speed", "9.5", "--quote", "8", "--match", "flow",
-		"--hold-resistance", "0.9", "--modulation", "locked=2", "--modulation", "low=7.5", "--modulation", "shape=square", "--remark", "worth a second look")
+		"--hold-resistance", "0.9", "--modulation", "locked=2", "--modulation", "low=7.5", "--modulation", "shape=square",
+		"--height-cm", "172", "--weight-kg", "80", "--age", "63", "--sex", "female", "--pwv-m-s", "8.5", "--tree", "arteries.csv", "--brain-flow-ml-min", "660", "--hold-out", "radial", "--remark", "worth a second look")
 	if d := cmp.Diff(want, fullCase().Command("study", "-a.csv")); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
@@ -86,12 +87,12 @@ func TestOver(t *testing.T) {
 	if d := diff(want, got); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}
-	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 42} {
+	for key, line := range map[string]int{"pressure": 0, "site.abp": 0, "share": 0, "flow": 6, "site.q.1": 50} {
 		if got.Line(key) != line {
 			t.Errorf("line of %q is %d, want %d", key, got.Line(key), line)
 		}
 	}
-	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 41 {
+	if d := diff(fullCase(), base); d != "" || base.Line("site.abp") != 49 {
 		t.Errorf("the case below has changed (-want +got)\n%s", d)
 	}
 }

@@ -3,6 +3,7 @@
 // warnings.
 //
 //	Inputs -> TakeIn -> FindBeats -> FitLoad -> Compare -> Predict -> Note
+//	                                    \-> GrowTree
 //
 // It is the only place that knows the order of the steps, and everything that a
 // screen shows or a report prints comes out of it. [Run] does all of them. The

@@ -7,6 +7,7 @@ import (
 
 	"afterbeat/data"
 	"afterbeat/data/casefile"
+	"afterbeat/tree"
 	"afterbeat/tree/support"
 )
 
@@ -18,6 +19,7 @@ type Inputs struct {
 	Excluded  []data.Span
 	// Modulation is what the file of a modulated speed holds; nil: none is named.
 	Modulation *support.Modulation
+	Arteries   *tree.Network // the case's own table of arteries; nil where it names none
 }
 
 // Read reads the files that a case names. read returns the bytes of a file by
@@ -53,14 +55,25 @@ func Read(c casefile.Case, read func(name string) ([]byte, error)) (Inputs, erro
 		}
 		in.Modulation = &m
 	}
-	if c.Exclude == "" {
-		return in, nil
+	if c.Exclude != "" {
+		if content, err = read(c.Exclude); err != nil {
+			return in, err
+		}
+		if in.Excluded, err = data.ReadSpans(baseName(c.Exclude), bytes.NewReader(content)); err != nil {
+			return in, err
+		}
 	}
-	if content, err = read(c.Exclude); err != nil {
-		return in, err
+	if c.Tree != "" {
+		if content, err = read(c.Tree); err != nil {
+			return in, err
+		}
+		n, err := tree.Read(baseName(c.Tree), bytes.NewReader(content))
+		if err != nil {
+			return in, err
+		}
+		in.Arteries = &n
 	}
-	in.Excluded, err = data.ReadSpans(baseName(c.Exclude), bytes.NewReader(content))
-	return in, err
+	return in, nil
 }
 
 // baseName is the file name without its folder: a note carries no path.

@@ -12,6 +12,7 @@ import (
 	"afterbeat/data/casefile"
 	"afterbeat/data/fault"
 	"afterbeat/data/unit"
+	"afterbeat/tree"
 	"afterbeat/tree/support"
 )
 
@@ -42,13 +43,15 @@ type Intake struct {
 	Excluded []data.Span
 	// Modulation is that of the inputs.
 	Modulation *support.Modulation
-	Warnings   []data.Warning
+	// Arteries is the case's own table of arteries; nil where it names none.
+	Arteries *tree.Network
+	Warnings []data.Warning
 }
 
 // TakeIn makes a recording ready. It never changes the recording.
 func TakeIn(in Inputs) (Intake, error) {
 	c := in.Case
-	out := Intake{Recording: in.Recording, Case: c, Clock: in.Recording.Clock(), Excluded: in.Excluded, Modulation: in.Modulation}
+	out := Intake{Recording: in.Recording, Case: c, Clock: in.Recording.Clock(), Excluded: in.Excluded, Modulation: in.Modulation, Arteries: in.Arteries}
 	channels, err := corrected(in.Recording.Channels, c)
 	if err != nil {
 		return out, err

@@ -26,6 +26,9 @@ func (s Study) Note() casenote.Note {
 	if s.Fit != nil {
 		n.Sections = append(n.Sections, s.Fit.sections()...)
 	}
+	if s.Tree != nil {
+		n.Sections = append(n.Sections, s.Tree.sections()...)
+	}
 	if s.Forecast != nil {
 		n.Sections = append(n.Sections, s.Forecast.sections()...)
 	} else if s.Comparison != nil {
@@ -79,6 +82,9 @@ func (s Study) reproduce(command string) []string {
 	if file := c.Modulation["file"]; file != "" {
 		c.Modulation = maps.Clone(c.Modulation)
 		c.Modulation["file"] = beside(c.Recording, file)
+	}
+	if c.Tree != "" {
+		c.Tree = beside(c.Recording, c.Tree)
 	}
 	return c.Command(command, baseName(c.Recording))
 }

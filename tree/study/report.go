@@ -197,5 +197,9 @@ type Report struct {
 	Pump             *PumpReport         `json:"pump"`
 	Forecast         *ForecastReport     `json:"forecast"`
 	Sensitivity      []SensitivityReport `json:"sensitivity"`
-	Note             string              `json:"note"`
+	Tree             *TreeReport         `json:"tree"`
+	// TreeReason says why there is no tree; null where there is one.
+	TreeReason *string         `json:"tree_reason"`
+	Response   *ResponseReport `json:"response"`
+	Note       string          `json:"note"`
 }

@@ -91,6 +91,9 @@ func (s Study) Report(o casenote.Options) Report {
 	for _, one := range s.Fit.Sensitivity {
 		r.Sensitivity = append(r.Sensitivity, sensitivityReport(one, s.Fit.Results[s.Fit.Chosen].Model))
 	}
+	if s.Tree != nil {
+		s.Tree.report(&r)
+	}
 	if s.Comparison != nil {
 		s.Comparison.report(&r)
 	}

@@ -14,6 +14,7 @@ type Study struct {
 	Intake     *Intake
 	Beats      *Beats
 	Fit        *Fit
+	Tree       *Tree
 	Comparison *Comparison
 	Forecast   *Forecast
 }
@@ -26,6 +27,7 @@ const (
 	StageIntake   Stage = "intake"
 	StageBeats    Stage = "beats"
 	StageFit      Stage = "fit"
+	StageTree     Stage = "tree"
 	StageSupport  Stage = "support"  // the yardsticks
 	StageForecast Stage = "forecast" // ventricle, pump and load
 	StageDone     Stage = ""
@@ -40,6 +42,8 @@ func (s Study) Pending() Stage {
 		return StageBeats
 	case s.Fit == nil:
 		return StageFit
+	case s.Tree == nil:
+		return StageTree
 	case s.Comparison == nil:
 		return StageSupport
 	case s.Forecast == nil:
@@ -59,10 +63,18 @@ func (s Study) Next(ctx context.Context) (Study, error) {
 		next.Beats, err = pointer(FindBeats(ctx, *s.Intake))
 	case StageFit:
 		next.Fit, err = pointer(FitLoad(ctx, *s.Beats))
+	case StageTree:
+		next.Tree, err = pointer(GrowTree(ctx, *s.Fit))
+		if err == nil && s.Forecast != nil { // nothing after it is computed any more
+			next.Tree, err = pointer(next.Tree.WithResponse(ctx))
+		}
 	case StageSupport:
 		next.Comparison, err = pointer(Compare(ctx, *s.Fit))
 	case StageForecast:
 		next.Forecast, err = pointer(Predict(ctx, *s.Comparison))
+		if err == nil {
+			next.Tree, err = pointer(s.Tree.WithResponse(ctx))
+		}
 	}
 	if err != nil {
 		return s, err
@@ -94,6 +106,7 @@ func Run(ctx context.Context, in Inputs, last Stage) (Study, error) {
 // otherwise how they are read, [Read] them and begin anew.
 func (s Study) With(c casefile.Case) Study {
 	touched := firstTouched(s.Inputs.Case, c)
+	beside := firstTouched(withoutTree(s.Inputs.Case), withoutTree(c)) // what is not of the tree
 	s.Inputs.Case = c
 	if touched == StageIntake {
 		return Study{Inputs: s.Inputs}
@@ -101,10 +114,13 @@ func (s Study) With(c casefile.Case) Study {
 	if touched == StageFit {
 		s.Fit = nil
 	}
-	if touched == StageFit || touched == StageSupport {
+	if touched == StageFit || touched == StageTree {
+		s.Tree = nil
+	}
+	if beside == StageFit || beside == StageSupport {
 		s.Comparison = nil
 	}
-	if touched != StageDone {
+	if beside != StageDone {
 		s.Forecast = nil
 	}
 	return s.carrying()
@@ -128,6 +144,11 @@ func (s Study) carrying() Study {
 		f.Beats = *s.Beats
 		s.Fit = &f
 	}
+	if s.Tree != nil {
+		t := *s.Tree
+		t.Fit = *s.Fit
+		s.Tree = &t
+	}
 	if s.Comparison != nil {
 		k := *s.Comparison
 		k.Fit = *s.Fit
@@ -149,6 +170,9 @@ func (s Study) Warnings() []data.Warning {
 	}
 	if s.Fit != nil {
 		all = append(all, s.Fit.Warnings...)
+	}
+	if s.Tree != nil {
+		all = append(all, s.Tree.Warnings...)
 	}
 	if s.Comparison != nil {
 		all = append(all, s.Comparison.Warnings...)

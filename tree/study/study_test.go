@@ -78,7 +78,7 @@ func TestAStageWithAnErrorIsNotComputed(t *testing.T) {
 func TestRunStopsAtAStage(t *testing.T) {
 	c, f := demoCase(t), demoFolder(t)
 	c.Replicates = ptr(fewest)
-	next := map[Stage]Stage{StageIntake: StageBeats, StageBeats: StageFit, StageFit: StageSupport, StageSupport: StageForecast, StageForecast: StageDone}
+	next := map[Stage]Stage{StageIntake: StageBeats, StageBeats: StageFit, StageFit: StageTree, StageTree: StageSupport, StageSupport: StageForecast, StageForecast: StageDone}
 	for last, want := range next {
 		s, err := try(c, f, last)
 		if err != nil || s.Pending() != want {

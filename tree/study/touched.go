@@ -20,6 +20,10 @@ func firstTouched(a, b casefile.Case) Stage {
 	if same(withoutForecast(a), withoutForecast(b)) {
 		return StageSupport
 	}
+	a, b = withoutTree(a), withoutTree(b)
+	if same(withoutForecast(a), withoutForecast(b)) {
+		return StageTree
+	}
 	if same(withoutFit(a), withoutFit(b)) {
 		return StageFit
 	}
@@ -55,6 +59,12 @@ func only(table map[string]string, name string) map[string]string {
 		return map[string]string{name: v}
 	}
 	return nil
+}
+
+// withoutTree is the case without the choices that bear on the tree alone.
+func withoutTree(c casefile.Case) casefile.Case {
+	c.HeightCM, c.WeightKG, c.Age, c.Sex, c.PWV, c.BrainFlow, c.HoldOut = nil, nil, nil, "", nil, nil, ""
+	return c
 }
 
 func same(a, b casefile.Case) bool { return reflect.DeepEqual(a, b) }

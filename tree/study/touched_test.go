@@ -19,7 +19,7 @@ func changes() map[string]struct {
 		value string
 		stage Stage
 	}{
-		"recording": {"b.csv", StageIntake}, "exclude": {"ex.csv", StageIntake}, "time": {"time_s", StageIntake}, "rate": {"100", StageIntake},
+		"recording": {"b.csv", StageIntake}, "exclude": {"ex.csv", StageIntake}, "tree": {"tree.csv", StageIntake}, "time": {"time_s", StageIntake}, "rate": {"100", StageIntake},
 		"unit": {"ao_mmHg=kPa", StageIntake}, "scale": {"ao_mmHg=1.1", StageIntake}, "offset": {"ao_mmHg=3", StageIntake}, "invert": {"lvot_velocity", StageIntake},
 		"calibrate":        {"ao_mmHg=120/80", StageIntake},
 		"velocity_range":   {"lvot_velocity=400", StageIntake},
@@ -31,6 +31,7 @@ func changes() map[string]struct {
 		"model": {"wk2", StageFit}, "basis": {"beat", StageFit}, "outflow_pressure": {"8", StageFit}, "replicates": {"12", StageFit}, "seed": {"3", StageFit},
 		"edv_ml": {"210", StageForecast}, "ef": {"0.25", StageForecast}, "pump": {"generic B", StageForecast}, "speed": {"3", StageForecast},
 		"ventricle": {"Pfill=15", StageForecast}, "match": {"flow", StageForecast}, "quote": {"4", StageForecast}, "hold_resistance": {"0.9", StageForecast}, "modulation": {"shape=sine", StageForecast},
+		"height_cm": {"180", StageTree}, "weight_kg": {"80", StageTree}, "age": {"60", StageTree}, "sex": {"male", StageTree}, "pwv_m_s": {"8", StageTree}, "brain_flow_ml_min": {"600", StageTree}, "hold_out": {"ao_mmHg", StageTree},
 		"share": {"0.3", StageSupport}, "label": {"pilot-07", StageDone}, "remark": {"look again", StageDone},
 	}
 }
@@ -77,7 +78,7 @@ func TestStudyAfterAChangeIsThatOfAFreshRun(t *testing.T) {
 	start := casefile.Case{Recording: "a.csv", Replicates: ptr(6), Share: []float64{0.5}, Speed: []float64{4}, DiameterCM: ptr(2.2)}
 	base := fitted(t, start, f)
 	before := said(t, base)
-	files := map[string]bool{"recording": true, "exclude": true, "time": true, "rate": true, "unit": true, "flow": true}
+	files := map[string]bool{"recording": true, "exclude": true, "tree": true, "hold_out": true, "time": true, "rate": true, "unit": true, "flow": true}
 	var keys []casefile.Key
 	for _, k := range casefile.Keys() {
 		if !files[k.Name] { // what names or reads a file begins anew

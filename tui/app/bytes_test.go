@@ -80,7 +80,9 @@ func holdBudget(t *testing.T, theme tui.Theme) {
 		{"z", 2000}, // another picture
 		{"left right", 600},
 		{"w w enter j esc", 2000},
-		{"4 5", 2000},
+		{"4", 2000},
+		{"j j k h l", 600},
+		{"5", 2000},
 		{"up down", 600},
 		{"6 j", 2000}, // j: every line of the note moves
 		{"s x", 100},

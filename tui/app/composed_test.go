@@ -19,6 +19,7 @@ import (
 	"afterbeat/tui/intake"
 	"afterbeat/tui/note"
 	"afterbeat/tui/support"
+	"afterbeat/tui/tree"
 )
 
 // composed is a driver over the screens of the program and the demo case,
@@ -27,7 +28,7 @@ func composed(t testing.TB, compute bool, more ...func(*Options)) *driver {
 	t.Helper()
 	d := newDriver(t, func(o *Options) {
 		o.Screens = map[tui.Stage]tui.Screen{
-			tui.Intake: intake.New(), tui.Beats: beats.New(), tui.Fit: fit.New(), tui.Support: support.New(), tui.Note: note.New(),
+			tui.Intake: intake.New(), tui.Beats: beats.New(), tui.Fit: fit.New(), tui.Tree: tree.New(), tui.Support: support.New(), tui.Note: note.New(),
 		}
 		if !compute {
 			return

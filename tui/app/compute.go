@@ -98,7 +98,7 @@ func (r reading) fits(c casefile.Case) bool { return r.done && same(files(r.of),
 
 // files is the part of a case that bears on how its files are read.
 func files(c casefile.Case) casefile.Case {
-	return casefile.Case{Recording: c.Recording, Time: c.Time, Rate: c.Rate, Unit: c.Unit, Exclude: c.Exclude, Modulation: modulationFile(c)}
+	return casefile.Case{Recording: c.Recording, Time: c.Time, Rate: c.Rate, Unit: c.Unit, Exclude: c.Exclude, Tree: c.Tree, Modulation: modulationFile(c)}
 }
 
 // loaded takes over the files.
@@ -213,10 +213,10 @@ func (m Model) progress(msg tickMsg) (Model, tea.Cmd) {
 
 func (j job) words() string {
 	if j.stage == study.StageDone {
-		return "reading the recording 1/6, esc cancels"
+		return "reading the recording 1/7, esc cancels"
 	}
-	at := map[study.Stage]int{study.StageIntake: 2, study.StageBeats: 3, study.StageFit: 4, study.StageSupport: 5, study.StageForecast: 6}[j.stage]
-	return fmt.Sprintf("computing %s %d/6, esc cancels", j.stage, at)
+	at := map[study.Stage]int{study.StageIntake: 2, study.StageBeats: 3, study.StageFit: 4, study.StageTree: 5, study.StageSupport: 6, study.StageForecast: 7}[j.stage]
+	return fmt.Sprintf("computing %s %d/7, esc cancels", j.stage, at)
 }
 
 // modulationFile is the part of a modulation that names a file.

@@ -22,7 +22,9 @@ type missing struct {
 func (m missing) Update(tea.Msg) (tui.Screen, tea.Cmd) { return m, nil }
 
 func (m missing) Show(s study.Study) (tui.Screen, tea.Cmd) {
-	m.words = m.stage.Missing(s)
+	if m.words = m.stage.Missing(s); m.words == "" {
+		m.words = "this program has no screen for it; the note has its numbers"
+	}
 	return m, nil
 }
 

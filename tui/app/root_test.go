@@ -21,12 +21,9 @@ import (
 func TestStartsOnTheFit(t *testing.T) {
 	d := started(t, nil)
 	d.wantView("[3 Fit]")
-	d.wantView("(4 Tree)")
+	d.wantView(" 4 Tree ")
 	d.wantStatus("used: ")
 	for _, s := range tui.Stages() {
-		if s == tui.Tree {
-			continue
-		}
 		if got := d.screen(s); got.shown < 5 || got.study.Comparison == nil || got.area != (tui.Area{Width: 80, Height: 20}) {
 			t.Errorf("%s: shown %d times, area %v", s, got.shown, got.area)
 		}
@@ -123,9 +120,6 @@ func TestStages(t *testing.T) {
 		d.keys(step.key)
 		d.wantView(step.want)
 	}
-	d.keys("4")
-	d.wantStatus("Tree: the tree of arteries comes")
-	d.wantView("\nthe tree of arteries comes")
 	d.keys("2 n")
 	d.wantView("[6 Note]")
 	if d.screen(tui.Beats).study.Comparison == nil {
@@ -323,13 +317,13 @@ func TestProgressAndCancel(t *testing.T) {
 		t.Error("progress in the first moments")
 	}
 	d.send(tickMsg{d.m.job.number})
-	d.wantStatus("reading the recording 1/6, esc cancels")
+	d.wantStatus("reading the recording 1/7, esc cancels")
 	for d.m.study.Beats == nil {
 		d.step(0)
 	}
 	d.wantStatus("reading") // no sooner than the next tick
 	d.send(tickMsg{d.m.job.number})
-	d.wantStatus("computing fit 4/6, esc cancels")
+	d.wantStatus("computing fit 4/7, esc cancels")
 	ctx := d.m.job.ctx
 	d.keys("esc")
 	if ctx.Err() == nil || d.m.job.running {
@@ -546,7 +540,7 @@ func TestStoppedForecastGoesOn(t *testing.T) {
 			d.step(0)
 		}
 		d.send(tickMsg{d.m.job.number})
-		d.wantStatus("computing forecast 6/6, esc cancels")
+		d.wantStatus("computing forecast 7/7, esc cancels")
 		d.keys("esc")
 		d.wantStatus("5 or 6 computes the forecast")
 		d.hold = false

@@ -66,6 +66,8 @@ func revealed(ctx context.Context, s study.Study) (study.Study, error) {
 		s.Beats = whole.Beats
 	case study.StageFit:
 		s.Fit = whole.Fit
+	case study.StageTree:
+		s.Tree = whole.Tree
 	case study.StageSupport:
 		s.Comparison = whole.Comparison
 	case study.StageForecast:
@@ -254,9 +256,7 @@ func newDriver(t testing.TB, change func(*Options)) *driver {
 		Screens: map[tui.Stage]tui.Screen{},
 	}
 	for _, s := range tui.Stages() {
-		if s != tui.Tree {
-			o.Screens[s] = stub{name: strings.ToLower(s.String())}
-		}
+		o.Screens[s] = stub{name: strings.ToLower(s.String())}
 	}
 	if change != nil {
 		change(&o)

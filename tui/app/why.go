@@ -28,7 +28,7 @@ type await struct {
 func (m Model) why(s tui.Stage) cause {
 	c := cause{stage: s, words: s.Missing(m.study)}
 	switch {
-	case c.words == "", s == tui.Tree:
+	case c.words == "":
 	case m.defect != nil:
 		c.words, c.hint, c.ended = m.defect.text.String(), m.defect.hint.String(), true
 		if s != tui.Intake && m.defect.atStart == "" {
