@@ -41,7 +41,7 @@ func TestEveryStageIsShownAtOnce(t *testing.T) {
 			seen = append(seen, p)
 		}
 	}
-	want := []study.Stage{study.StageIntake, study.StageBeats, study.StageFit, study.StageSupport, study.StageForecast, study.StageDone}
+	want := []study.Stage{study.StageIntake, study.StageBeats, study.StageFit, study.StageTree, study.StageSupport, study.StageForecast, study.StageDone}
 	if len(seen) != len(want) {
 		t.Errorf("shown with pending %v, want %v", seen, want)
 	}
@@ -288,9 +288,10 @@ func TestOnlyWhatAChangeBearsOnIsComputed(t *testing.T) {
 		stages int
 	}{
 		{func(c *casefile.Case) { c.Share = []float64{0.3} }, 0, 2},
-		{func(c *casefile.Case) { c.Model = "wk2" }, 0, 3},
-		{func(c *casefile.Case) { c.Invert = []string{"x"} }, 0, 5},
-		{func(c *casefile.Case) { c.Unit = map[string]string{"x": "kPa"} }, 1, 5},
+		{func(c *casefile.Case) { c.Model = "wk2" }, 0, 4},
+		{func(c *casefile.Case) { c.Invert = []string{"x"} }, 0, 6},
+		{func(c *casefile.Case) { c.Unit = map[string]string{"x": "kPa"} }, 1, 6},
+		{func(c *casefile.Case) { c.HeightCM = new(float64) }, 0, 1},
 		{func(c *casefile.Case) { c.Label = "p-1" }, 0, 0},
 	} {
 		loads, stages = 0, nil
@@ -466,7 +467,7 @@ func TestHelpIsMadeFromTheKeys(t *testing.T) {
 	if d.m.scroll != bottom || bottom == 0 {
 		t.Errorf("scrolled to %d and %d", bottom, d.m.scroll)
 	}
-	d.wantView("the tree of arteries comes")
+	d.wantView("  used: ")
 	d.keys("pgup home k")
 	d.wantView("Keys of 2 Beats")
 	d.keys("i")
