@@ -318,7 +318,7 @@ func TestTmuxHelp(t *testing.T) {
 	p.keys("?")
 	p.wait("Keys of 3 Fit")
 	p.keys("G")
-	p.wait("What is used, and what was assumed")
+	p.wait("leave at once")
 	p.keys("Escape")
 	p.wait("[3 Fit]")
 	p.until("the help stays", func(shown string) bool { return !strings.Contains(shown, "Keys") })
