@@ -63,14 +63,17 @@ type Case struct {
 	HoldResistance *float64          `key:"hold_resistance" value:"FACTOR" help:"resistance on support over the native one; then a matched pressure is met by the filling pressure"`
 	Modulation     map[string]string `key:"modulation" value:"FILE" plain:"file" entries:"file=text,shape=text,low,high,rise_s,duty,phase,period_s,locked" help:"speed over one period: a file with time_s,speed_1000_per_min; or shape=sine or square, low=, high= (1000/min), rise_s=, duty=, phase=, locked= (beats; 0: free, of period_s=)"`
 
-	HeightCM  *float64 `key:"height_cm" value:"CM" help:"height of the patient"`
-	WeightKG  *float64 `key:"weight_kg" value:"KG" help:"weight of the patient"`
-	Age       *float64 `key:"age" value:"YEARS" help:"age of the patient"`
-	Sex       string   `key:"sex" value:"female|male" help:"sex of the patient"`
-	PWV       *float64 `key:"pwv_m_s" value:"V" help:"measured carotid-femoral pulse-wave velocity, m/s"`
-	Tree      string   `key:"tree" value:"TABLE.csv" help:"the patient's own table of arteries, relative to the case file"`
-	BrainFlow *float64 `key:"brain_flow_ml_min" value:"ML_PER_MIN" help:"flow of the brain, in place of its share of the output"`
-	HoldOut   string   `key:"hold_out" value:"NAME" help:"a distal pressure or velocity that the tree is tested by, not refined to"`
+	HeightCM *float64 `key:"height_cm" value:"CM" help:"height of the patient"`
+	WeightKG *float64 `key:"weight_kg" value:"KG" help:"weight of the patient"`
+	Age      *float64 `key:"age" value:"YEARS" help:"age of the patient"`
+	Sex      string   `key:"sex" value:"female|male" help:"sex of the patient"`
+	PWV      *float64 `key:"pwv_m_s" value:"V" help:"measured carotid-femoral pulse-wave velocity, m/s"`
+	// VesselCM are inner diameters measured of arteries, by the site that lies in
+	// them.
+	VesselCM  map[string]float64 `key:"vessel_cm" value:"SITE=CM" help:"measured inner diameter of the artery of a site: root, carotid, brachial, radial, femoral, renal"`
+	Tree      string             `key:"tree" value:"TABLE.csv" help:"the patient's own table of arteries, relative to the case file"`
+	BrainFlow *float64           `key:"brain_flow_ml_min" value:"ML_PER_MIN" help:"flow of the brain, in place of its share of the output"`
+	HoldOut   string             `key:"hold_out" value:"NAME" help:"a distal pressure or velocity that the tree is tested by, not refined to"`
 
 	Remark string `key:"remark" value:"TEXT" help:"a remark at the end of the note"`
 

@@ -93,6 +93,8 @@ abp = "mean:93/80"
 abp = 12.5
 [velocity_range]
 v = 128
+[vessel_cm]
+carotid = 0.65
 `
 
 func fullCase() Case {
@@ -104,7 +106,7 @@ func fullCase() Case {
 		Scale:     map[string]float64{"abp": 1.05},
 		Offset:    map[string]float64{"abp": -3},
 		Calibrate: map[string]string{"abp": "mean:93/80"}, SensorHeightCM: map[string]float64{"abp": 12.5},
-		VelocityRange: map[string]float64{"v": 128},
+		VelocityRange: map[string]float64{"v": 128}, VesselCM: map[string]float64{"carotid": 0.65},
 		Invert:        []string{"q", "v"},
 		Rate:          ptr(125.0), From: ptr(-1.5), To: ptr(0.0), Exclude: "artefacts.csv",
 		DiameterCM: ptr(2.1), AngleDeg: ptr(20.0), Profile: "1",
@@ -252,7 +254,7 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		Time:      word.Draw(t, "time"), Pressure: word.Draw(t, "pressure"), Flow: word.Draw(t, "flow"), Velocity: word.Draw(t, "velocity"),
 		Site: rapid.MapOfN(word, value, 0, 3).Draw(t, "site"), Unit: rapid.MapOfN(word, value, 0, 3).Draw(t, "unit"),
 		Scale: rapid.MapOfN(word, num, 0, 3).Draw(t, "scale"), Offset: rapid.MapOfN(word, num, 0, 3).Draw(t, "offset"),
-		Calibrate: rapid.MapOfN(word, value, 0, 2).Draw(t, "calibrate"), SensorHeightCM: rapid.MapOfN(word, num, 0, 2).Draw(t, "height"), VelocityRange: rapid.MapOfN(word, num, 0, 2).Draw(t, "range"),
+		Calibrate: rapid.MapOfN(word, value, 0, 2).Draw(t, "calibrate"), SensorHeightCM: rapid.MapOfN(word, num, 0, 2).Draw(t, "height"), VelocityRange: rapid.MapOfN(word, num, 0, 2).Draw(t, "range"), VesselCM: rapid.MapOfN(word, num, 0, 2).Draw(t, "vessels"),
 		Invert: rapid.SliceOfN(word, 0, 3).Draw(t, "invert"),
 		Rate:   optional("rate"), From: optional("from"), To: optional("to"), Exclude: word.Draw(t, "exclude"),
 		DiameterCM: optional("diameter"), AngleDeg: optional("angle"), Profile: amount.Draw(t, "profile"),

@@ -16,7 +16,7 @@ func TestArguments(t *testing.T) {
 		"--replicates 2000 --seed -7 --share 0 --share 0.25 --share 1 --edv-ml 210 --ef 0.25", " ")
 	want = append(want, "--pump", "generic A", "--ventricle", "Pfill=20", "--ventricle", "activation=hill", "--speed", "8", "--speed", "9.5", "--quote", "8", "--match", "flow",
 		"--hold-resistance", "0.9", "--modulation", "locked=2", "--modulation", "low=7.5", "--modulation", "shape=square",
-		"--height-cm", "172", "--weight-kg", "80", "--age", "63", "--sex", "female", "--pwv-m-s", "8.5", "--tree", "arteries.csv", "--brain-flow-ml-min", "660", "--hold-out", "radial", "--remark", "worth a second look")
+		"--height-cm", "172", "--weight-kg", "80", "--age", "63", "--sex", "female", "--pwv-m-s", "8.5", "--vessel-cm", "carotid=0.65", "--tree", "arteries.csv", "--brain-flow-ml-min", "660", "--hold-out", "radial", "--remark", "worth a second look")
 	if d := cmp.Diff(want, fullCase().Command("study", "-a.csv")); d != "" {
 		t.Errorf("(-want +got)\n%s", d)
 	}

@@ -2,7 +2,12 @@ package anatomy
 
 import (
 	"fmt"
+	"maps"
 	"math"
+	"slices"
+
+	"afterbeat/data"
+	"afterbeat/tree"
 )
 
 // Body is what is known of the patient's build. NaN is unknown.
@@ -12,12 +17,15 @@ type Body struct {
 	Age          float64 // years
 	PulseWave    float64 // measured carotid-femoral velocity, m/s
 	RootDiameter float64 // measured, cm
+	// Diameters are inner diameters measured of other arteries, cm, by the site
+	// that lies in them.
+	Diameters map[data.Site]float64
 }
 
 // Unknown is a body of which nothing is known.
 func Unknown() Body {
 	n := math.NaN()
-	return Body{n, n, n, n, n}
+	return Body{n, n, n, n, n, nil}
 }
 
 // The body that the table is taken to be of: an assumption.
@@ -68,6 +76,31 @@ func (b Body) radii() Scale {
 // small arteries, whose resistance goes with the fourth power.
 func (b Body) calibre(root float64) (Scale, bool) {
 	return Scale{"calibre of the root", b.RootDiameter / 2 / root, fmt.Sprintf("diameter %g cm measured at the root over %.3g cm", b.RootDiameter, 2*root), true}, !math.IsNaN(b.RootDiameter)
+}
+
+// measured gives the arteries of the sites their measured diameters, on both sides
+// of the body.
+func (b Body) measured(n tree.Network) ([]Scale, error) {
+	var all []Scale
+	for _, site := range slices.Sorted(maps.Keys(b.Diameters)) {
+		at, ok := Find(n, site)
+		if !ok || at.Segment == 0 {
+			return nil, &RefusedError{
+				What: fmt.Sprintf("a diameter was given of %s, which is no artery of the tree", site),
+				Cure: "a site that is one: carotid, mca, brachial, radial, femoral, renal; or the root",
+			}
+		}
+		s := n.Segments[at.Segment]
+		factor := b.Diameters[site] / 2 / s.Radius
+		name := bothSides(s.Name)
+		for i := range n.Segments {
+			if bothSides(n.Segments[i].Name) == name {
+				n.Segments[i].Radius *= factor
+			}
+		}
+		all = append(all, Scale{"calibre of the " + string(site) + " artery", factor, fmt.Sprintf("diameter %g cm measured over %.3g cm, on both sides", b.Diameters[site], 2*s.Radius), true})
+	}
+	return all, nil
 }
 
 // velocityOfAge are medians of the carotid-femoral velocity of healthy people,

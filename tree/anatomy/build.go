@@ -67,6 +67,11 @@ func Systemic(b Body, l Load, brain float64) (Tree, error) {
 		}
 		t.Calibre, t.Scales = measuredRadius, append(t.Scales, calibre)
 	}
+	vessels, err := b.measured(n)
+	if err != nil {
+		return t, err
+	}
+	t.Scales = append(t.Scales, vessels...)
 	speed, warnings := t.speeds(b, n, l.Compliance)
 	for i := range n.Segments {
 		n.Segments[i].WaveSpeed *= speed.Factor

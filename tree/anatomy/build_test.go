@@ -3,10 +3,13 @@ package anatomy
 import (
 	"errors"
 	"math"
+	"slices"
+	"strings"
 	"testing"
 
 	"pgregory.net/rapid"
 
+	"afterbeat/data"
 	"afterbeat/tree"
 )
 
@@ -61,6 +64,46 @@ func TestTreeHasTheFittedLoad(t *testing.T) {
 			}
 		}
 	})
+}
+
+// Measured diameters are those of the tree, on both sides, and the load stays the
+// fitted one; a site that is no artery is refused.
+func TestMeasuredDiameters(t *testing.T) {
+	l := Load{Resistance: 1, Compliance: 1.5, MeanFlow: 80}
+	b := Unknown()
+	b.Height, b.Weight, b.RootDiameter = 160, 60, 3.1
+	b.Diameters = map[data.Site]float64{data.SiteCarotid: 0.62, data.SiteFemoral: 0.7}
+	built, err := Systemic(b, l, 0)
+	if err != nil {
+		t.Fatal(err)
+	}
+	n := built.Network
+	for name, want := range map[string]float64{"Ascending aorta": 3.1, "R. common carotid": 0.62, "L. common carotid": 0.62, "R. femoral": 0.7, "L. femoral": 0.7} {
+		i := slices.IndexFunc(n.Segments, func(s tree.Segment) bool { return s.Name == name })
+		if i < 0 || math.Abs(2*n.Segments[i].Radius/want-1) > 1e-12 {
+			t.Errorf("%s: segment %d of %+v", name, i, n.Segments[max(i, 0)])
+		}
+	}
+	load, err := tree.NewLoad(n)
+	if err != nil || math.Abs(load.Resistance()-1) > 1e-9 || math.Abs(load.Compliance()-1.5) > 1e-9 {
+		t.Errorf("%v: R %v, C %v", err, load.Resistance(), load.Compliance())
+	}
+	said := 0
+	for _, s := range built.Scales {
+		if s.Given && strings.Contains(s.Why, "measured") {
+			said++
+		}
+	}
+	if said != 3 {
+		t.Errorf("scales %+v", built.Scales)
+	}
+	for _, site := range []data.Site{data.SitePump, data.SiteLVOT} {
+		b.Diameters = map[data.Site]float64{site: 2}
+		var refused *RefusedError
+		if _, err := Systemic(b, l, 0); !errors.As(err, &refused) {
+			t.Errorf("%s: %v", site, err)
+		}
+	}
 }
 
 // A measured velocity is that of the tree, unless the walls would take all of

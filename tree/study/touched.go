@@ -64,7 +64,7 @@ func only(table map[string]string, name string) map[string]string {
 
 // withoutTree is the case without the choices that bear on the tree alone.
 func withoutTree(c casefile.Case) casefile.Case {
-	c.HeightCM, c.WeightKG, c.Age, c.Sex, c.PWV, c.BrainFlow, c.HoldOut = nil, nil, nil, "", nil, nil, ""
+	c.HeightCM, c.WeightKG, c.Age, c.Sex, c.PWV, c.VesselCM, c.BrainFlow, c.HoldOut = nil, nil, nil, "", nil, nil, nil, ""
 	return c
 }
 

@@ -3,6 +3,7 @@ package study
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"afterbeat/data"
 	"afterbeat/data/casefile"
@@ -37,10 +38,42 @@ func bodyOf(b Beats) (anatomy.Body, error) {
 	if c.Sex != "" && c.Sex != "female" && c.Sex != "male" {
 		return body, &ChoiceError{Key: "sex", What: fmt.Sprintf("%q is neither", data.Clean(c.Sex)), Hint: "--sex female or --sex male"}
 	}
+	if err := vesselsOf(c, &body); err != nil {
+		return body, err
+	}
 	if v := b.FlowInfo.Conversion; v != nil && b.FlowInfo.Site == data.SiteRoot && c.DiameterCM != nil {
 		body.RootDiameter = *c.DiameterCM
 	}
 	return body, nil
+}
+
+// vesselsOf reads the diameters that were measured beside the recording.
+func vesselsOf(c casefile.Case, body *anatomy.Body) error {
+	if c.Tree != "" && len(c.VesselCM) > 0 {
+		return &ChoiceError{Key: "vessel_cm", What: "the table of --tree has radii of its own", Hint: "write the radius into the table, or leave --tree out"}
+	}
+	for _, name := range sorted(c.VesselCM) {
+		refused := func(what string) error {
+			return &ChoiceError{Key: "vessel_cm", What: what, Hint: "an inner diameter in cm, for instance --vessel-cm carotid=0.65"}
+		}
+		site := data.Site(name)
+		if !slices.Contains(data.Sites(), site) {
+			return refused(fmt.Sprintf("%q is no site", data.Clean(name)))
+		}
+		v := c.VesselCM[name]
+		if !(v >= 0.05 && v <= 6) {
+			return refused(fmt.Sprintf("%v is not between 0.05 and 6 cm", v))
+		}
+		if site == data.SiteRoot {
+			body.RootDiameter = v
+			continue
+		}
+		if body.Diameters == nil {
+			body.Diameters = map[data.Site]float64{}
+		}
+		body.Diameters[site] = v
+	}
+	return nil
 }
 
 // brainFlow is the flow that the case gives the brain, mL/s; 0 where its share
