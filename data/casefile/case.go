@@ -75,6 +75,7 @@ type Case struct {
 	BrainFlow *float64           `key:"brain_flow_ml_min" value:"ML_PER_MIN" help:"flow of the brain, in place of its share of the output"`
 	HoldOut   string             `key:"hold_out" value:"NAME" help:"a distal pressure or velocity that the tree is tested by, not refined to"`
 
+	Brief  bool   `key:"brief" help:"a note of what matters most: in short, the recording, what was given and assumed, the forecast, what is held, the warnings"`
 	Remark string `key:"remark" value:"TEXT" help:"a remark at the end of the note"`
 
 	lines map[string]int

@@ -64,6 +64,7 @@ pwv_m_s = 8.5
 tree = "arteries.csv"
 brain_flow_ml_min = 660
 hold_out = "radial"
+brief = true
 remark = "worth a second look"
 basis = "span"
 error.flow = "10 %"
@@ -107,8 +108,8 @@ func fullCase() Case {
 		Offset:    map[string]float64{"abp": -3},
 		Calibrate: map[string]string{"abp": "mean:93/80"}, SensorHeightCM: map[string]float64{"abp": 12.5},
 		VelocityRange: map[string]float64{"v": 128}, VesselCM: map[string]float64{"carotid": 0.65},
-		Invert:        []string{"q", "v"},
-		Rate:          ptr(125.0), From: ptr(-1.5), To: ptr(0.0), Exclude: "artefacts.csv",
+		Invert: []string{"q", "v"},
+		Rate:   ptr(125.0), From: ptr(-1.5), To: ptr(0.0), Exclude: "artefacts.csv",
 		DiameterCM: ptr(2.1), AngleDeg: ptr(20.0), Profile: "1",
 		OutflowPressure: ptr(0.0), Delay: "0.0125",
 		CardiacOutput: ptr(4.2), OutputBy: "fick", Cuff: "118/74",
@@ -119,7 +120,7 @@ func fullCase() Case {
 		Modulation: map[string]string{"shape": "square", "low": "7.5", "locked": "2"},
 		Drop:       []float64{3.5}, Keep: []float64{7, 8.25},
 		HeightCM: ptr(172.0), WeightKG: ptr(80.0), Age: ptr(63.0), Sex: "female", PWV: ptr(8.5),
-		Tree: "arteries.csv", BrainFlow: ptr(660.0), HoldOut: "radial", Remark: "worth a second look",
+		Tree: "arteries.csv", BrainFlow: ptr(660.0), HoldOut: "radial", Brief: true, Remark: "worth a second look",
 	}
 }
 
@@ -140,8 +141,8 @@ func TestReadEveryKey(t *testing.T) {
 		}
 	}
 	for key, line := range map[string]int{
-		"recording": 2, "invert": 8, "rate": 10, "share": 24, "error.flow": 44, "error.cardiac-output": 45, "ventricle.Pfill": 46, "pump": 27,
-		"site": 51, "site.abp": 52, "site.q.1": 53, "unit.na=me": 56, "offset.abp": 60, "modulation.low": 63, "site.other": 0, "": 0,
+		"recording": 2, "invert": 8, "rate": 10, "share": 24, "error.flow": 45, "error.cardiac-output": 46, "ventricle.Pfill": 47, "pump": 27,
+		"site": 52, "site.abp": 53, "site.q.1": 54, "unit.na=me": 57, "offset.abp": 61, "modulation.low": 64, "site.other": 0, "": 0,
 	} {
 		if got := c.Line(key); got != line {
 			t.Errorf("line of %q is %d, want %d", key, got, line)
@@ -260,7 +261,7 @@ var anyCase = rapid.Custom(func(t *rapid.T) Case {
 		DiameterCM: optional("diameter"), AngleDeg: optional("angle"), Profile: amount.Draw(t, "profile"),
 		OutflowPressure: optional("outflow"), Delay: amount.Draw(t, "delay"),
 		Error: rapid.MapOfN(rapid.SampledFrom(Errors()), amount, 0, 3).Draw(t, "error"),
-		Beats: word.Draw(t, "beats"), OneBeat: rapid.Bool().Draw(t, "one beat"), Model: word.Draw(t, "model"), Basis: word.Draw(t, "basis"),
+		Beats: word.Draw(t, "beats"), OneBeat: rapid.Bool().Draw(t, "one beat"), Brief: rapid.Bool().Draw(t, "brief"), Model: word.Draw(t, "model"), Basis: word.Draw(t, "basis"),
 		Replicates: rapid.Ptr(rapid.Int(), true).Draw(t, "replicates"), Seed: rapid.Ptr(rapid.Int(), true).Draw(t, "seed"),
 		Share: rapid.SliceOfN(rapid.Float64Range(0, 1), 0, 4).Draw(t, "share"),
 		EDVML: optional("volume"), EF: optional("fraction"), Pump: owned("pump", "set", "a", "b", "Rc", "lowest"), Speed: rapid.SliceOfN(num, 0, 3).Draw(t, "speed"),

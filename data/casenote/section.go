@@ -8,6 +8,8 @@ const Caution = "Research use only. Not a medical device. Not for decisions abou
 // Section is a titled part of a note.
 type Section struct {
 	Title string
+	// Chief tells that it stands in a brief note too.
+	Chief bool
 	// Words are paragraphs above the rows; they are wrapped on rendering.
 	Words  []data.Text
 	Rows   []Row

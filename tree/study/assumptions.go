@@ -10,7 +10,7 @@ import (
 // assumptionSection lists what was given or assumed beside the recording, with
 // the systematic errors that the total intervals carry.
 func (b Beats) assumptionSection(seed, replicates int) casenote.Section {
-	s := casenote.Section{Title: "Given and assumed"}
+	s := casenote.Section{Title: "Given and assumed", Chief: true}
 	hasFlow := b.FlowInfo.Channel >= 0
 	// An error of flow that was given is all of it, those of its parts included.
 	parts := b.FlowInfo.Conversion != nil && b.Intake.Case.Error["flow"] == ""

@@ -16,6 +16,7 @@ func (f Forecast) sections() []casenote.Section {
 	if f.Reason != "" {
 		return []casenote.Section{{
 			Title: "Forecast with a ventricle and a pump",
+			Chief: true,
 			Words: []data.Text{data.Clean(fmt.Sprintf("There is no forecast: %s.", f.Reason))},
 		}}
 	}
@@ -137,6 +138,7 @@ func (f Forecast) pumpSection() casenote.Section {
 func (f Forecast) sweepSection() casenote.Section {
 	s := casenote.Section{
 		Title: "Forecast: native and supported, coupled",
+		Chief: true,
 		Words: words(
 			fmt.Sprintf("Ventricle, pump and load settle among themselves what each does; a forecast as far as arteries, heart rate and contractility stay as they are. Speed 0 is the native state of the model. Total intervals: %d draws of the fit's replicates, the ranges of the ventricle and the filling slope together; random ones: the replicates of random error alone, at the nominal ventricle.", f.Draws),
 			f.match.words(),

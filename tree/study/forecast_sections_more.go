@@ -50,7 +50,7 @@ func (f Forecast) heldSection() casenote.Section {
 	if f.own.rar == 0 {
 		notModelled += ", aortic regurgitation"
 	}
-	s := casenote.Section{Title: "What is held, natively and on support", Words: words(
+	s := casenote.Section{Title: "What is held, natively and on support", Chief: true, Words: words(
 		"The forecast: "+f.match.words(),
 		"The yardsticks: only the shape of the flow changes; mean flow is matched, and mean pressure, which follows from what is held, is the same.",
 		notModelled+". Real implants change everything at once: in 8 patients measured before and after, mean pressure rose by 16 mmHg, pulse pressure fell by 25 mmHg and output rose by 1.3 L/min (Eur J Heart Fail 2021;23:1955). The doubt of what is held stands with the fit.",
@@ -93,5 +93,5 @@ func (f Forecast) modulatedSection() casenote.Section {
 	if m.Locked == 0 {
 		words = append(words, data.Clean("The window was doubled until the measures changed by less than 1 %. A free modulation is not drawn: it has no intervals."))
 	}
-	return casenote.Section{Title: "Forecast: modulated speed", Words: words, Tables: []casenote.Table{t}}
+	return casenote.Section{Title: "Forecast: modulated speed", Chief: true, Words: words, Tables: []casenote.Table{t}}
 }

@@ -32,13 +32,24 @@ func (s Study) Note() casenote.Note {
 	if s.Forecast != nil {
 		n.Sections = append(n.Sections, s.Forecast.sections()...)
 	} else if s.Comparison != nil {
-		n.Sections = append(n.Sections, casenote.Section{Title: "Forecast", Words: []data.Text{data.Clean("Not computed when this note was made.")}})
+		n.Sections = append(n.Sections, casenote.Section{Title: "Forecast", Chief: true, Words: []data.Text{data.Clean("Not computed when this note was made.")}})
 	}
 	if s.Comparison != nil {
 		n.Sections = append(n.Sections, s.Comparison.sections(s.Forecast)...)
 	}
 	n.Reproduce = s.reproduce("study")
+	if s.Inputs.Case.Brief {
+		n.Sections = chief(n.Sections)
+	}
 	return n
+}
+
+// chief are the sections of a brief note, and how many it lacks.
+func chief(all []casenote.Section) []casenote.Section {
+	kept := slices.DeleteFunc(slices.Clone(all), func(s casenote.Section) bool { return !s.Chief })
+	left := len(all) - len(kept)
+	return append(kept, casenote.Section{Title: "Left out", Words: words(fmt.Sprintf(
+		"A brief note: %d sections of the beats, the fits, the tree and the forecast are left out; without --brief they stand here.", left))})
 }
 
 // CheckNote is what `check` prints for a person to read.
@@ -132,7 +143,7 @@ func recordingSection(t Intake) casenote.Section {
 			rows = append(rows, casenote.Words("filled", fmt.Sprintf("%d samples of %s, in holes of up to 20 ms, by straight lines", n, t.Channels[i].Name)))
 		}
 	}
-	return casenote.Section{Title: "Recording", Rows: rows, Tables: []casenote.Table{channelTable(t)}}
+	return casenote.Section{Title: "Recording", Chief: true, Rows: rows, Tables: []casenote.Table{channelTable(t)}}
 }
 
 func spanWords(t Intake) string {

@@ -190,3 +190,31 @@ func TestNoteOfAnUnfinishedStudy(t *testing.T) {
 		}
 	}
 }
+
+// A brief note has the chief sections, all warnings and the way to have it again,
+// and says that it lacks the rest.
+func TestBriefNote(t *testing.T) {
+	s := sharedDemo(t)
+	whole := Text(s.Note(), casenote.Options{})
+	s.Inputs.Case.Brief = true
+	brief := Text(s.With(s.Inputs.Case).Note(), casenote.Options{})
+	if lines := strings.Count(brief, "\n"); lines > 250 || lines < 100 {
+		t.Errorf("%d lines", lines)
+	}
+	for _, want := range []string{
+		"\nIn short\n", "\nRecording\n", "\nGiven and assumed\n", "\nForecast: native and supported, coupled\n", "\nWhat is held, natively and on support\n",
+		"\nWarnings (", "--brief", "\nLeft out\n--------\nA brief note: ",
+	} {
+		if !strings.Contains(brief, want) {
+			t.Errorf("the brief note lacks %q", want)
+		}
+	}
+	for _, not := range []string{"\nFit of wk3", "\nInput impedance", "\nForecast: power\n"} {
+		if strings.Contains(brief, not) || !strings.Contains(whole, not) {
+			t.Errorf("%q stands in the brief note, or not in the whole one", not)
+		}
+	}
+	if strings.Contains(whole, "--brief") {
+		t.Error("the whole note asks for a brief one")
+	}
+}

@@ -31,7 +31,7 @@ func (b Beats) sections() []casenote.Section {
 		out = append(out, b.FlowInfo.Conversion.Section(b.FlowInfo.ConversionErrors))
 	}
 	if b.Reason != "" {
-		return append(out, casenote.Section{Title: "Average beat", Words: []data.Text{data.Clean("There is none: " + b.Reason + ".")}})
+		return append(out, casenote.Section{Title: "Average beat", Chief: true, Words: []data.Text{data.Clean("There is none: " + b.Reason + ".")}})
 	}
 	return append(out, b.averageSection())
 }
@@ -40,7 +40,7 @@ func (b Beats) sections() []casenote.Section {
 // do, and the recommendation.
 func (f Fit) sections() []casenote.Section {
 	if f.Reason != "" {
-		return []casenote.Section{{Title: "Fit", Words: []data.Text{data.Clean("There is none: " + f.Reason + ".")}}}
+		return []casenote.Section{{Title: "Fit", Chief: true, Words: []data.Text{data.Clean("There is none: " + f.Reason + ".")}}}
 	}
 	settings, _ := fitSettings(f.Beats.Intake.Case) // checked before the fit
 	settings = settings.WithDefaults()
@@ -164,6 +164,7 @@ func (c Comparison) sections(f *Forecast) []casenote.Section {
 	if c.Reason != "" {
 		return []casenote.Section{{
 			Title: "Native against supported",
+			Chief: true,
 			Words: []data.Text{data.Clean(fmt.Sprintf("There is no comparison: %s.", c.Reason))},
 		}}
 	}

@@ -17,7 +17,7 @@ const litresPerMinute = 0.06
 
 // shortSection is the study in a few lines, each of which has its place below.
 func (s Study) shortSection() casenote.Section {
-	out := casenote.Section{Title: "In short"}
+	out := casenote.Section{Title: "In short", Chief: true}
 	if s.Beats == nil || s.Beats.Reason != "" {
 		return out
 	}

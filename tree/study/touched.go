@@ -32,7 +32,7 @@ func firstTouched(a, b casefile.Case) Stage {
 
 // withoutWords is the case without what changes no number.
 func withoutWords(c casefile.Case) casefile.Case {
-	c.Label, c.Remark = "", ""
+	c.Label, c.Remark, c.Brief = "", "", false
 	return c
 }
 

@@ -33,7 +33,7 @@ func changes() map[string]struct {
 		"edv_ml": {"210", StageForecast}, "ef": {"0.25", StageForecast}, "pump": {"generic B", StageForecast}, "speed": {"3", StageForecast},
 		"ventricle": {"Pfill=15", StageForecast}, "match": {"flow", StageForecast}, "quote": {"4", StageForecast}, "hold_resistance": {"0.9", StageForecast}, "modulation": {"shape=sine", StageForecast},
 		"height_cm": {"180", StageTree}, "weight_kg": {"80", StageTree}, "age": {"60", StageTree}, "sex": {"male", StageTree}, "pwv_m_s": {"8", StageTree}, "vessel_cm": {"carotid=0.7", StageTree}, "brain_flow_ml_min": {"600", StageTree}, "hold_out": {"ao_mmHg", StageTree},
-		"share": {"0.3", StageSupport}, "label": {"pilot-07", StageDone}, "remark": {"look again", StageDone},
+		"share": {"0.3", StageSupport}, "label": {"pilot-07", StageDone}, "brief": {"true", StageDone}, "remark": {"look again", StageDone},
 	}
 }
 

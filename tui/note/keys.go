@@ -14,6 +14,7 @@ import (
 type keyMap struct {
 	page           page.Keys
 	remark, search key.Binding
+	brief          key.Binding
 	next, previous key.Binding // of what was searched for
 	end            key.Binding // of the search
 	left, right    key.Binding
@@ -28,6 +29,7 @@ func newKeys() keyMap {
 		page:     page.NewKeys(),
 		remark:   bind("r", "remark", "r"),
 		search:   bind("/", "search", "/"),
+		brief:    bind("b", "brief", "b"),
 		next:     bind("n", "next match", "n"),
 		previous: bind("N", "match before", "N"),
 		end:      bind("esc", "end search", "esc"),
@@ -44,6 +46,10 @@ func (m Model) bindings() keyMap {
 	there := m.there()
 	k.remark.SetEnabled(there)
 	k.search.SetEnabled(there)
+	k.brief.SetEnabled(there)
+	if m.study.Inputs.Case.Brief {
+		k.brief.SetHelp("b", "all sections")
+	}
 	k.next.SetEnabled(len(m.matches) > 0)
 	k.previous.SetEnabled(len(m.matches) > 0)
 	k.end.SetEnabled(m.sought != "")
@@ -62,7 +68,7 @@ func (m Model) Keys() []key.Binding {
 		all = slices.Concat([]key.Binding{k.accept, k.cancel}, field.Keys())
 	case m.there():
 		all = []key.Binding{
-			tui.Pair("n/N", "match", k.next, k.previous), k.end, k.page.PageDown, k.remark, k.search,
+			tui.Pair("n/N", "match", k.next, k.previous), k.end, k.page.PageDown, k.remark, k.brief, k.search,
 			tui.Pair("j/k/up/down", "line", k.page.Down, k.page.Up), k.page.PageUp, k.page.First, k.page.Last,
 			tui.Pair("h/l/left/right", "sideways", k.left, k.right),
 		}

@@ -137,6 +137,9 @@ func (m Model) Update(msg tea.Msg) (tui.Screen, tea.Cmd) {
 		if m.typing != nothing {
 			return m.enter(msg)
 		}
+		if key.Matches(msg, m.bindings().brief) {
+			return m, m.shortened()
+		}
 		return m.press(msg), nil
 	}
 	return m, nil
@@ -193,6 +196,15 @@ func (m Model) enter(msg tea.KeyMsg) (tui.Screen, tea.Cmd) {
 		m.field = m.field.Update(msg)
 	}
 	return m, nil
+}
+
+// shortened asks for the note in brief, or whole again.
+func (m Model) shortened() tea.Cmd {
+	c := m.study.Inputs.Case
+	if c.Brief = !c.Brief; c.Brief {
+		return tui.Change("a brief note: b has all sections again", c)
+	}
+	return tui.Change("a note of all sections", c)
 }
 
 // remarked puts the remark into the case.

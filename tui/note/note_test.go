@@ -313,3 +313,26 @@ func BenchmarkView(b *testing.B) {
 		})
 	}
 }
+
+func TestBrief(t *testing.T) {
+	b := open(computed(t), "b")
+	var asked []bool
+	for _, m := range b.Told {
+		if c, ok := m.(tui.ChangeMsg); ok {
+			asked = append(asked, c.Case.Brief)
+		}
+	}
+	if len(asked) != 1 || !asked[0] {
+		t.Fatalf("asked for %v", asked)
+	}
+	b.Show(screentest.Demo(t, func(c *casefile.Case) { c.Brief = true }))
+	if v := b.View(); !strings.Contains(v, "lines 1-") {
+		t.Errorf("view:\n%s", v)
+	}
+	for _, k := range b.Screen.Keys() {
+		if k.Help().Desc == "all sections" {
+			return
+		}
+	}
+	t.Error("no key brings the sections back")
+}
