@@ -31,31 +31,27 @@ func recording(rate float64) []byte {
 	return []byte(b.String())
 }
 
-// folder holds recordings and counts how often each is read.
-type folder struct {
-	files map[string][]byte
-	reads map[string]int
-}
+// folder holds recordings.
+type folder map[string][]byte
 
-func (f *folder) read(name string) ([]byte, error) {
-	f.reads[name]++
-	if content, ok := f.files[name]; ok {
+func (f folder) read(name string) ([]byte, error) {
+	if content, ok := f[name]; ok {
 		return content, nil
 	}
 	return nil, &data.FileError{File: name, What: "cannot be read", Err: fs.ErrNotExist}
 }
 
-func (f *folder) source(name string) Source {
+func (f folder) source(name string) Source {
 	n := 10
 	return Source{Name: name, Case: casefile.Case{Recording: name, Replicates: &n}, Read: f.read}
 }
 
 // ward has three recordings, one that is none, and one that is not there.
-func ward() (*folder, []Source) {
-	f := &folder{reads: map[string]int{}, files: map[string][]byte{
+func ward() (folder, []Source) {
+	f := folder{
 		"here/a.csv": recording(62), "here/b.csv": recording(80), "here/c.csv": recording(97),
 		"here/flat.csv": []byte("time_s,ao_mmHg\n" + strings.Repeat("0,80\n", 3)),
-	}}
+	}
 	var all []Source
 	for _, name := range []string{"here/c.csv", "here/a.csv", "here/gone.csv", "here/flat.csv", "here/b.csv"} {
 		all = append(all, f.source(name))
@@ -158,10 +154,10 @@ func TestOtherSettingsAreOtherRows(t *testing.T) {
 		t.Errorf("%d computed, %d others", done.Computed, done.Others)
 	}
 	// What a file named by the case holds is a setting too.
-	f.files["ex.csv"] = []byte("start_s,end_s\n2,3\n")
+	f["ex.csv"] = []byte("start_s,end_s\n2,3\n")
 	changed[0].Case.Exclude = "ex.csv"
 	first := run(t, changed, Settings{}).Rows[0].Key()
-	f.files["ex.csv"] = []byte("start_s,end_s\n2,4\n")
+	f["ex.csv"] = []byte("start_s,end_s\n2,4\n")
 	if second := run(t, changed, Settings{}).Rows[0].Key(); first == second || first.SHA256 != second.SHA256 {
 		t.Errorf("keys %v and %v", first, second)
 	}
