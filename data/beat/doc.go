@@ -78,8 +78,10 @@
 // # What it cannot do
 //
 // A lasting bigeminy, or pulses of which every other one is weaker than half,
-// count as one beat of two pulses. A pump that changes its speed in a cycle of
-// 0.25 to 2.5 s by more than the heart's own pulse is taken for the pulse. With a
+// count as one beat of two pulses: Pulse.SecondPulse tells it, and a warning says
+// so. A pump that changes its speed in a cycle of 0.25 to 2.5 s by more than the
+// heart's own pulse is taken for the pulse. Of two rhythms in a ratio of small
+// numbers neither can be told from the other's harmonics: Pulse.Overlap. With a
 // balloon that lifts diastole as high as systole nearly every beat is rejected.
 // A trace that is upside down has onsets, in the wrong places.
 package beat
