@@ -292,7 +292,7 @@ func (f Forecast) leaningSection() casenote.Section {
 			fmt.Sprintf("Retained pulse at %.4g (1000/min), nominally %.3g, when one assumption is moved and the native state is met again; \"on support\" moves it on support only. The largest effect comes first.", middle.Speed, middle.RetainedPulse.Value),
 			"What matters most: "+f.heaviestWords()+".",
 			"What would prove it wrong: "+f.Disproof,
-			fmt.Sprintf("C at another mean pressure follows the aorta's curve (Langewouters 1984) at %d years of age, an assumption and an upper bound.", assumedAge),
+			"C at another mean pressure follows the aorta's curve (Langewouters 1984) of "+ageOf(f.caseOf()).words()+": an upper bound.",
 		),
 		Tables: []casenote.Table{t},
 	}

@@ -7,6 +7,7 @@ import (
 	"math"
 	"slices"
 
+	"afterbeat/data/casefile"
 	"afterbeat/fitting"
 	"afterbeat/tree/support"
 )
@@ -112,7 +113,7 @@ func (f *Forecast) forecastMoves(d *drawing, nominal support.Coupling) []forecas
 	}
 	mean := f.Speeds[f.Middle].Arterial.Mean
 	move("compliance", fmt.Sprintf("C at %.0f mmHg", mean), func(m *forecastMove) {
-		m.supported = func(k *support.Coupling) { k.Load.C *= complianceRatio(f.Native.Arterial.Mean, mean) }
+		m.supported = func(k *support.Coupling) { k.Load.C *= complianceRatio(f.Native.Arterial.Mean, mean, ageOf(f.caseOf())) }
 	})
 	return all
 }
@@ -166,18 +167,49 @@ func flowTimes(p patient, factor float64) patient {
 
 func square(x float64) float64 { return x * x }
 
-// assumedAge is the age at which compliance falls with pressure, years, of a man:
-// an assumption.
+// years is an age, and the sex, with which compliance falls with pressure.
+type years struct {
+	age     float64
+	female  bool
+	assumed bool // no age is given
+}
+
+// assumedAge is taken where the case has none: an assumption.
 const assumedAge = 60
+
+// ageOf is what the case says; a man of assumedAge where it says nothing. The
+// regression is of 20 to 90 years.
+func ageOf(c casefile.Case) years {
+	y := years{age: assumedAge, female: c.Sex == "female", assumed: c.Age == nil}
+	if c.Age != nil {
+		y.age = min(max(*c.Age, 20), 90)
+	}
+	return y
+}
+
+func (y years) words() string {
+	who := "a man"
+	if y.female {
+		who = "a woman"
+	}
+	text := fmt.Sprintf("%s of %g years", who, y.age)
+	if y.assumed {
+		text += " (assumed: --age, --sex)"
+	}
+	return text
+}
 
 // complianceRatio is C at a mean pressure over C at another, mmHg, by the
 // pressure-area relation of the aorta (Langewouters 1984; with p0 and p1 of
-// Wesseling 1993, from memory):
+// Wesseling 1993, from memory; g is 1 for women, 0 for men):
 //
-//	C(P)/C(Pref) = (1 + ((Pref-p0)/p1)²)/(1 + ((P-p0)/p1)²),  p0 = 76 - 0.89 a,  p1 = 57 - 0.44 a
+//	C(P)/C(Pref) = (1 + ((Pref-p0)/p1)²)/(1 + ((P-p0)/p1)²),  p0 = 76 - 4 g - 0.89 a,  p1 = 57 - 0.44 a
 //
 // A regression of the aorta, applied to the whole tree: an upper bound.
-func complianceRatio(from, to float64) float64 {
-	const p0, p1 = 76 - 0.89*assumedAge, 57 - 0.44*assumedAge
+func complianceRatio(from, to float64, y years) float64 {
+	p0, p1 := 76-0.89*y.age, 57-0.44*y.age
+	if y.female {
+		p0 -= 4
+	}
 	return (1 + square((from-p0)/p1)) / (1 + square((to-p0)/p1))
 }

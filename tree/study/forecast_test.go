@@ -340,11 +340,28 @@ func TestSensitivitiesAreRanked(t *testing.T) {
 // p0 = 22.6 and p1 = 30.6 mmHg, so that from 80 to 90 mmHg
 // (1 + (57.4/30.6)²)/(1 + (67.4/30.6)²) = 4.5187/5.8515.
 func TestComplianceFallsWithPressure(t *testing.T) {
-	if got := complianceRatio(80, 90); math.Abs(got-4.5187/5.8515) > 1e-4 {
+	if got := complianceRatio(80, 90, ageOf(casefile.Case{})); math.Abs(got-4.5187/5.8515) > 1e-4 {
 		t.Errorf("%v", got)
 	}
-	if got := complianceRatio(85, 85); got != 1 {
+	// A woman of 30: p0 = 45.3 and p1 = 43.8 mmHg.
+	if got := complianceRatio(80, 90, ageOf(casefile.Case{Age: ptr(30.0), Sex: "female"})); math.Abs(got-1.62766/2.04149) > 1e-4 {
+		t.Errorf("%v", got)
+	}
+	if got := complianceRatio(85, 85, years{age: 35, female: true}); got != 1 {
 		t.Errorf("%v at the same pressure", got)
+	}
+}
+
+// Age and sex are of the tree and of the forecast.
+func TestForecastFollowsTheAge(t *testing.T) {
+	s := sharedDemo(t)
+	c := s.Inputs.Case
+	c.Age, c.Sex = ptr(82.0), "female"
+	if now := s.With(c); now.Forecast != nil || now.Tree != nil || now.Comparison == nil {
+		t.Error("what an age bears on stays")
+	}
+	if words := ageOf(c).words(); words != "a woman of 82 years" {
+		t.Errorf("%q", words)
 	}
 }
 
