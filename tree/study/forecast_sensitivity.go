@@ -113,7 +113,9 @@ func (f *Forecast) forecastMoves(d *drawing, nominal support.Coupling) []forecas
 	}
 	mean := f.Speeds[f.Middle].Arterial.Mean
 	move("compliance", fmt.Sprintf("C at %.0f mmHg", mean), func(m *forecastMove) {
-		m.supported = func(k *support.Coupling) { k.Load.C *= complianceRatio(f.Native.Arterial.Mean, mean, ageOf(f.caseOf())) }
+		m.supported = func(k *support.Coupling) {
+			k.Load.C *= complianceRatio(f.Native.Arterial.Mean, mean, ageOf(f.caseOf()))
+		}
 	})
 	return all
 }

@@ -107,7 +107,7 @@ func Run(ctx context.Context, in Inputs, last Stage) (Study, error) {
 func (s Study) With(c casefile.Case) Study {
 	touched := firstTouched(s.Inputs.Case, c)
 	beside := firstTouched(withoutTree(s.Inputs.Case), withoutTree(c)) // what is not of the tree
-	aged := ageOf(s.Inputs.Case) != ageOf(c) // of the tree and of the forecast
+	aged := ageOf(s.Inputs.Case) != ageOf(c)                           // of the tree and of the forecast
 	s.Inputs.Case = c
 	if touched == StageIntake {
 		return Study{Inputs: s.Inputs}
