@@ -25,10 +25,11 @@ const solveLoadHelp = casenote.Caution + `
 
 Evaluates a lumped load for one period of flow. SPEC.toml holds
 
-  model = "wk3"           # wk2 or wk3
+  model = "wk3"           # wk2, wk3, wk4s or wk4p
   R = 1.0                 # mmHg s/mL
   C = 1.5                 # mL/mmHg
-  Zc = 0.05               # mmHg s/mL (wk3)
+  Zc = 0.05               # mmHg s/mL (not of wk2)
+  L = 0.005               # mmHg s²/mL (wk4s and wk4p only)
   Pv = 0                  # outflow pressure, mmHg
   inflow = "flow.csv"     # columns time_s,flow_mL_s: one period, even steps
   posing = "late-valve"   # or "scaled"; may be absent
@@ -36,12 +37,35 @@ Evaluates a lumped load for one period of flow. SPEC.toml holds
 
 // solveLoadCommand is `afterbeat solve load SPEC.toml`.
 func solveLoadCommand(s stream) *cobra.Command {
-	c := &cobra.Command{
+	return solvePart(s, &cobra.Command{
 		Use:   "load SPEC.toml",
 		Short: "Pressure, power and retained pulse of a lumped load",
 		Long:  solveLoadHelp,
-		Args:  exactly(1, "one SPEC.toml"),
-	}
+	}, func(name string, content []byte) (solution, error) {
+		spec, err := study.ReadLoadSpec(name, content)
+		if err != nil {
+			return solution{}, err
+		}
+		solved, err := study.SolveLoad(name, spec, besides(name))
+		if err != nil {
+			return solution{}, err
+		}
+		return solution{solved.Report(), solved.Note(), solved.Reason()}, nil
+	})
+}
+
+// solution is what a part of solve answers: a report, a note, and why it is no
+// answer where it is none.
+type solution struct {
+	report any
+	note   casenote.Note
+	reason *string
+}
+
+// solvePart gives a part of solve its argument, its flags and its run; solve
+// answers the content of a spec.
+func solvePart(s stream, c *cobra.Command, solve func(name string, content []byte) (solution, error)) *cobra.Command {
+	c.Args = exactly(1, "one SPEC.toml")
 	o := &options{flags: c.Flags()}
 	o.flags.BoolVar(&o.json, "json", false, "print one JSON object")
 	o.flags.BoolVar(&o.ascii, "ascii", false, "print ASCII only")
@@ -50,15 +74,11 @@ func solveLoadCommand(s stream) *cobra.Command {
 		if err != nil {
 			return err
 		}
-		spec, err := study.ReadLoadSpec(args[0], content)
+		solved, err := solve(args[0], content)
 		if err != nil {
 			return err
 		}
-		solved, err := study.SolveLoad(args[0], spec, besides(args[0]))
-		if err != nil {
-			return err
-		}
-		return o.print(s, solved.Report(), solved.Note(), solved.Reason())
+		return o.print(s, solved.report, solved.note, solved.reason)
 	}
 	return c
 }
@@ -118,29 +138,19 @@ The periodic state of a ventricle, a load and a pump. SPEC.toml holds
 
 // solveSupportCommand is `afterbeat solve support SPEC.toml`.
 func solveSupportCommand(s stream) *cobra.Command {
-	c := &cobra.Command{
+	return solvePart(s, &cobra.Command{
 		Use:   "support SPEC.toml",
 		Short: "The state of a ventricle, a load and a pump at each speed",
 		Long:  solveSupportHelp,
-		Args:  exactly(1, "one SPEC.toml"),
-	}
-	o := &options{flags: c.Flags()}
-	o.flags.BoolVar(&o.json, "json", false, "print one JSON object")
-	o.flags.BoolVar(&o.ascii, "ascii", false, "print ASCII only")
-	c.RunE = func(_ *cobra.Command, args []string) error {
-		content, err := readFile(args[0])
+	}, func(name string, content []byte) (solution, error) {
+		spec, err := study.ReadSupportSpec(name, content)
 		if err != nil {
-			return err
+			return solution{}, err
 		}
-		spec, err := study.ReadSupportSpec(args[0], content)
+		solved, err := study.SolveSupport(name, spec, besides(name))
 		if err != nil {
-			return err
+			return solution{}, err
 		}
-		solved, err := study.SolveSupport(args[0], spec, besides(args[0]))
-		if err != nil {
-			return err
-		}
-		return o.print(s, solved.Report(), solved.Note(), solved.Reason())
-	}
-	return c
+		return solution{solved.Report(), solved.Note(), solved.Reason()}, nil
+	})
 }

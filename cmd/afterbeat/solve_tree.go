@@ -34,29 +34,19 @@ wave_speed_m_s), poisson, bed.`
 
 // solveTreeCommand is `afterbeat solve tree SPEC.toml`.
 func solveTreeCommand(s stream) *cobra.Command {
-	c := &cobra.Command{
+	return solvePart(s, &cobra.Command{
 		Use:   "tree SPEC.toml",
 		Short: "Pressure, flow, losses and response in a tree of arteries",
 		Long:  solveTreeHelp,
-		Args:  exactly(1, "one SPEC.toml"),
-	}
-	o := &options{flags: c.Flags()}
-	o.flags.BoolVar(&o.json, "json", false, "print one JSON object")
-	o.flags.BoolVar(&o.ascii, "ascii", false, "print ASCII only")
-	c.RunE = func(_ *cobra.Command, args []string) error {
-		content, err := readFile(args[0])
+	}, func(name string, content []byte) (solution, error) {
+		spec, err := study.ReadTreeSpec(name, content)
 		if err != nil {
-			return err
+			return solution{}, err
 		}
-		spec, err := study.ReadTreeSpec(args[0], content)
+		solved, err := study.SolveTree(name, spec, besides(name))
 		if err != nil {
-			return err
+			return solution{}, err
 		}
-		solved, err := study.SolveTree(args[0], spec, besides(args[0]))
-		if err != nil {
-			return err
-		}
-		return o.print(s, solved.Report(), solved.Note(), solved.Reason())
-	}
-	return c
+		return solution{solved.Report(), solved.Note(), solved.Reason()}, nil
+	})
 }
